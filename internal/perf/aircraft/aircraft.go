@@ -1,0 +1,133 @@
+package aircraft
+
+import (
+	"errors"
+	"fmt"
+
+	"legwright/internal/perf/input"
+	"legwright/internal/perf/polar"
+	"legwright/internal/perf/powerplant"
+	"legwright/internal/perf/units"
+)
+
+// A Config names a setting of flaps and gear.
+type Config int
+
+// The configurations.
+const (
+	Clean Config = iota
+	TakeOff
+	Landing
+	configs
+)
+
+// String is the configuration in words.
+func (c Config) String() string { return [configs]string{"clean", "take-off", "landing"}[c] }
+
+// An Aircraft is a Spec checked and assembled. It is immutable and safe for concurrent use.
+type Aircraft struct {
+	area, span, height float64
+	polars             [configs]polar.Polar
+	clMax              [configs]float64
+	groundCL           float64
+	neverExceed        float64
+	empty, payload     float64
+	maxTakeOff         float64
+	plant              powerplant.Powerplant
+	stores             powerplant.Stores
+}
+
+// Build returns the aircraft, or every input error joined, with paths relative to s.
+func (s *Spec) Build() (*Aircraft, error) {
+	if s.Powerplant.Model == nil {
+		return nil, errors.Join(input.Check(s), &input.Error{Path: "powerplant.kind", Accepts: "a powerplant", Err: input.ErrRequired})
+	}
+	if err := input.Check(s); err != nil {
+		return nil, err
+	}
+	base, err := s.Airframe.polar()
+	plant, plantErr := s.Powerplant.Model.Build()
+	if err := errors.Join(input.Within("airframe", err), input.Within("powerplant.values", plantErr)); err != nil {
+		return nil, err
+	}
+	f, w := s.Airframe, s.Weights
+	a := &Aircraft{area: f.WingArea, span: f.Span, height: f.WingHeight, groundCL: f.GroundCL, neverExceed: f.NeverExceed,
+		empty: w.Empty + s.Powerplant.Model.InstalledMass(), payload: w.PayloadMass(), maxTakeOff: w.MaxTakeOff,
+		plant: plant, stores: s.Powerplant.Model.Stores()}
+	for c, cfg := range [configs]Configuration{f.Clean, f.TakeOff, f.Landing} {
+		a.polars[c] = base.Configured(cfg.DeltaCD, cfg.DeltaCLM)
+		a.clMax[c] = cfg.CLMax
+	}
+	return a, nil
+}
+
+func (f *Airframe) polar() (polar.Polar, error) {
+	if f.DragGiven != ByTable {
+		aspect := f.Span * f.Span / f.WingArea
+		return polar.Parabolic(f.CDMin, polar.InducedFactor(aspect, f.Efficiency, nil), f.CLMinDrag), nil
+	}
+	cl, cd := make([]float64, len(f.Polar)), make([]float64, len(f.Polar))
+	for i, r := range f.Polar {
+		cl[i], cd[i] = r[0], r[1]
+	}
+	p, err := polar.Tabulated(cl, cd)
+	if err != nil {
+		return p, &input.Error{Path: "polar", Text: err.Error(), Accepts: "rows with rising CL", Err: input.ErrOrder}
+	}
+	return p, f.reach(cl[0], cl[len(cl)-1])
+}
+
+// reach checks that a tabulated polar covers every lift coefficient that is flown.
+func (f *Airframe) reach(low, high float64) error {
+	var errs []error
+	names := [configs]string{"clean", "take_off", "landing"}
+	for i, c := range [configs]Configuration{f.Clean, f.TakeOff, f.Landing} {
+		if c.CLMax-c.DeltaCLM > high+1e-9 || -c.DeltaCLM < low-1e-9 {
+			errs = append(errs, &input.Error{Path: names[i] + ".cl_max", Spec: &clMax, Text: units.Plain(c.CLMax), Err: input.ErrConflict,
+				Accepts: fmt.Sprintf("the drag polar runs from CL %s to %s and must reach from 0 to CLmax, less the shift", units.Plain(low), units.Plain(high))})
+		}
+	}
+	return errors.Join(errs...)
+}
+
+// WingArea is the reference area in m².
+func (a *Aircraft) WingArea() float64 { return a.area }
+
+// Span is the wing span in m.
+func (a *Aircraft) Span() float64 { return a.span }
+
+// WingHeight is the height of the wing above the ground on its wheels in m.
+func (a *Aircraft) WingHeight() float64 { return a.height }
+
+// Polar is the drag polar in a configuration.
+func (a *Aircraft) Polar(c Config) *polar.Polar { return &a.polars[c] }
+
+// CLMax is the maximum lift coefficient in a configuration, dimensionless.
+func (a *Aircraft) CLMax(c Config) float64 { return a.clMax[c] }
+
+// GroundCL is the lift coefficient held in the take-off run, dimensionless.
+func (a *Aircraft) GroundCL() float64 { return a.groundCL }
+
+// NeverExceed is the never-exceed calibrated airspeed in m/s.
+func (a *Aircraft) NeverExceed() float64 { return a.neverExceed }
+
+// EmptyMass is the mass with the powerplant, without payload and fuel, in kg.
+func (a *Aircraft) EmptyMass() float64 { return a.empty }
+
+// Payload is the mass of the items in kg.
+func (a *Aircraft) Payload() float64 { return a.payload }
+
+// DryMass is the mass with payload and unusable fuel, without usable fuel, in kg.
+func (a *Aircraft) DryMass() float64 { return a.empty + a.payload + a.stores.Trapped }
+
+// StartMass is the mass with everything aboard in kg.
+func (a *Aircraft) StartMass() float64 { return a.DryMass() + a.stores.Fuel }
+
+// MaxTakeOff is the designer's greatest take-off mass in kg.
+func (a *Aircraft) MaxTakeOff() float64 { return a.maxTakeOff }
+
+// Plant is the powerplant.
+func (a *Aircraft) Plant() powerplant.Powerplant { return a.plant }
+
+// Stores is the energy aboard at the start.
+func (a *Aircraft) Stores() powerplant.Stores { return a.stores }

@@ -1,0 +1,139 @@
+package mission
+
+import (
+	"math"
+
+	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/numeric"
+	"legwright/internal/perf/pointperf"
+	"legwright/internal/perf/units"
+)
+
+// A schedule gives the true airspeed in m/s of a leg at a pressure altitude in m and a mass in kg.
+type schedule func(hp, mass float64) (float64, error)
+
+// schedule builds the speed of a leg. Speeds that are optima are found exactly
+// at a few altitudes or masses and interpolated between: an optimum is flat, so
+// the merit lost by the interpolation is of second order (a test bounds it).
+func (f *flier) schedule(l *Leg, day atmos.Day) (schedule, error) {
+	switch l.SpeedRule {
+	case ByTAS:
+		return func(_, _ float64) (float64, error) { return l.Speed, nil }, nil
+	case ByCAS, ByMach:
+		return func(hp, _ float64) (float64, error) {
+			air, err := day.At(hp, nil)
+			if err != nil {
+				return 0, err
+			}
+			if l.SpeedRule == ByMach {
+				return air.FromMach(atmos.Mach(l.Mach)), nil
+			}
+			return air.FromCAS(atmos.CAS(l.Speed)), nil
+		}, nil
+	case BestRate, BestAngle:
+		return f.climbSchedule(l, day)
+	}
+	return f.levelSchedule(l, day)
+}
+
+const climbNodes = 5
+
+// climbSchedule finds the best climb speed at a few altitudes between here and
+// the top, with the mass that a first estimate of the climb's fuel leaves.
+func (f *flier) climbSchedule(l *Leg, day atmos.Day) (schedule, error) {
+	from, to := f.now.Altitude, l.Altitude
+	if to-from < 1 {
+		to = from + 1
+	}
+	x, y := make([]float64, climbNodes), make([]float64, climbNodes)
+	mass := f.now.Mass
+	for i := range x {
+		x[i] = from + (to-from)*float64(i)/(climbNodes-1)
+		air, err := day.At(x[i], nil)
+		if err != nil {
+			return nil, err
+		}
+		p := &pointperf.Point{Air: air, Mass: mass}
+		best := pointperf.BestRate(f.a, p)
+		if l.SpeedRule == BestAngle {
+			best = pointperf.BestAngle(f.a, p)
+		}
+		if best.Err != nil {
+			return nil, best.Err
+		}
+		y[i] = best.TAS
+		if out, err := pointperf.ThrustAvailable(f.a, p, best.TAS, nil); err == nil {
+			seconds := (to - from) / (climbNodes - 1) / math.Max(0.3, best.Value)
+			mass = math.Max(f.a.DryMass(), mass-out.FuelFlow*seconds)
+		}
+	}
+	t, err := numeric.NewTable(x, y)
+	if err != nil {
+		return nil, err
+	}
+	return func(hp, _ float64) (float64, error) { v, _ := t.At(hp); return v, nil }, nil
+}
+
+const levelNodes = 3
+
+// levelSchedule finds the level speed at masses between now and the leg's end.
+func (f *flier) levelSchedule(l *Leg, day atmos.Day) (schedule, error) {
+	hp := f.now.Altitude
+	air, err := day.At(hp, nil)
+	if err != nil {
+		return nil, err
+	}
+	find := func(mass float64) (pointperf.Level, error) {
+		p := &pointperf.Point{Air: air, Mass: mass}
+		switch l.SpeedRule {
+		case BestRange:
+			return pointperf.BestRange(f.a, p, l.HeadWind)
+		case BestEndurance:
+			return pointperf.BestEndurance(f.a, p)
+		case PercentPower:
+			return pointperf.AtFraction(f.a, p, l.Power)
+		}
+		s := pointperf.AllSpeeds(f.a, p)
+		best := s.Carson
+		if l.SpeedRule == Maximum {
+			best = s.LevelMax
+			best.TAS *= 1 - 1e-9
+		}
+		return pointperf.Level{TAS: best.TAS}, best.Err
+	}
+	first, err := find(f.now.Mass)
+	if err != nil {
+		return nil, err
+	}
+	here, err := pointperf.LevelAt(f.a, &pointperf.Point{Air: air, Mass: f.now.Mass}, first.TAS)
+	if err != nil {
+		return nil, err
+	}
+	seconds := l.Time
+	if l.byDistance() {
+		seconds = l.Distance / math.Max(1, first.TAS-l.HeadWind)
+	}
+	last := math.Max(f.a.DryMass(), f.now.Mass-1.05*here.Output.FuelFlow*seconds)
+	if f.now.Mass-last < 1e-6*f.now.Mass {
+		return func(_, _ float64) (float64, error) { return first.TAS, nil }, nil
+	}
+	x, y := make([]float64, levelNodes), make([]float64, levelNodes)
+	for i := range x {
+		x[i] = last + (f.now.Mass-last)*float64(i)/(levelNodes-1)
+		level, err := find(x[i])
+		if err != nil {
+			return nil, err
+		}
+		y[i] = level.TAS
+	}
+	t, err := numeric.NewTable(x, y)
+	if err != nil {
+		return nil, err
+	}
+	return func(_, mass float64) (float64, error) { v, _ := t.At(mass); return v, nil }, nil
+}
+
+// belowStall says that a commanded speed cannot be flown.
+func belowStall(tas, stall float64) error {
+	return units.Errorf(nil, "its speed of {} is below the stall at {}", units.Of(units.Speed, tas), units.Of(units.Speed, stall))
+}

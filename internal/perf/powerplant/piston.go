@@ -1,0 +1,147 @@
+package powerplant
+
+import (
+	"encoding/json"
+	"errors"
+
+	"legwright/internal/perf/input"
+	"legwright/internal/perf/propeller"
+	"legwright/internal/perf/units"
+)
+
+// The propellers that a piston engine may turn. The names are stored.
+const (
+	FixedPitch    = "fixed-pitch"
+	ConstantSpeed = "constant-speed"
+)
+
+// A PistonPropeller is a piston engine with its propeller and fuel, as the user describes it.
+type PistonPropeller struct {
+	Mass      float64      `json:"mass"` // engine, propeller, mount and systems installed, dry, in kg
+	Engine    PistonEngine `json:"engine"`
+	Propeller Propeller    `json:"propeller"`
+	Fuel      FuelTank     `json:"fuel"`
+}
+
+// A Propeller is a propeller as the user describes it.
+type Propeller struct {
+	Kind         string      `json:"kind"`         // FixedPitch or ConstantSpeed
+	Diameter     float64     `json:"diameter"`     // in m
+	Coefficients [][]float64 `json:"coefficients"` // advance ratio, thrust coefficient, power coefficient
+	Speed        float64     `json:"speed"`        // governed propeller speed in rev/s
+	LossFactor   float64     `json:"loss_factor"`  // of the loaded disc, dimensionless, 0 to 1
+}
+
+// A FuelTank is the fuel aboard.
+type FuelTank struct {
+	Volume   float64 `json:"volume"`   // aboard at the start, in m³
+	Capacity float64 `json:"capacity"` // of the tanks, in m³
+	Unusable float64 `json:"unusable"` // of the volume aboard, in m³
+	Density  float64 `json:"density"`  // in kg/m³
+}
+
+var (
+	plantMass  = input.Spec{Name: "mass", Label: "Powerplant mass", Quantity: units.Mass, Min: 0, Max: 5000, Note: "Engine, propeller, mount, exhaust and oil, installed, without fuel."}
+	diameter   = input.Spec{Name: "diameter", Label: "Propeller diameter", Quantity: units.Length, Min: 0.05, Max: 6}
+	propSpeed  = input.Spec{Name: "speed", Label: "Governed propeller speed", Quantity: units.Rotation, Min: 3, Max: 500}
+	lossFactor = input.Spec{Name: "loss_factor", Label: "Loss factor of the disc", Quantity: units.Coefficient, Min: 0.6, Max: 0.95,
+		Note: "Share of the shaft power that reaches the slipstream.", Typical: &input.Typical{Low: 0.78, High: 0.9, Source: input.CommonPractice}}
+	columnJ      = input.Spec{Name: "j", Label: "Advance ratio", Quantity: units.Coefficient, Min: 0, Max: 10}
+	columnCT     = input.Spec{Name: "ct", Label: "CT", Quantity: units.Coefficient, Min: -1, Max: 1}
+	columnCP     = input.Spec{Name: "cp", Label: "CP", Quantity: units.Coefficient, Min: -1, Max: 1}
+	fuelVolume   = input.Spec{Name: "volume", Label: "Fuel aboard", Quantity: units.Volume, Min: 0, Max: 20}
+	tankCapacity = input.Spec{Name: "capacity", Label: "Tank capacity", Quantity: units.Volume, Min: 1e-5, Max: 20}
+	unusable     = input.Spec{Name: "unusable", Label: "Unusable fuel", Quantity: units.Volume, Min: 0, Max: 2}
+	fuelDensity  = input.Spec{Name: "density", Label: "Fuel density", Quantity: units.Density, Min: 600, Max: 900,
+		Typical: &input.Typical{Low: 710, High: 775, Source: "aviation gasoline 0.71 to 0.72, motor gasoline (EN 228) 0.72 to 0.775 kg/L, from memory"}}
+)
+
+// Inputs describes what belongs to the powerplant as a whole.
+func (p *PistonPropeller) Inputs() []input.Entry {
+	return []input.Entry{input.Num(&plantMass, &p.Mass)}
+}
+
+// Inputs describes the propeller.
+func (p *Propeller) Inputs() []input.Entry {
+	fixed := p.Kind != ConstantSpeed
+	return []input.Entry{
+		input.Pick("kind", "Propeller", &p.Kind,
+			input.Option{Value: FixedPitch, Label: "fixed pitch, measured coefficients"}, input.Option{Value: ConstantSpeed, Label: "constant speed, loaded disc"}),
+		input.Num(&diameter, &p.Diameter),
+		input.Rows(input.Table{Name: "coefficients", Label: "Coefficients", MinRows: 3, Columns: []*input.Spec{&columnJ, &columnCT, &columnCP},
+			Note: "Advance ratio, CT, CP; one row a line; J from 0 (at rest) to where the thrust has gone."}, &p.Coefficients).If(fixed),
+		input.Num(&propSpeed, &p.Speed).If(!fixed),
+		input.Num(&lossFactor, &p.LossFactor).If(!fixed),
+	}
+}
+
+// Inputs describes the fuel.
+func (t *FuelTank) Inputs() []input.Entry {
+	return []input.Entry{
+		input.Num(&fuelVolume, &t.Volume),
+		input.Num(&tankCapacity, &t.Capacity),
+		input.Num(&unusable, &t.Unusable),
+		input.Num(&fuelDensity, &t.Density),
+	}
+}
+
+// InstalledMass is the dry mass of the powerplant in kg.
+func (p *PistonPropeller) InstalledMass() float64 { return p.Mass }
+
+// Weighs lists the inputs that decide mass.
+func (p *PistonPropeller) Weighs() []string { return []string{"mass", "fuel"} }
+
+// Stores is the fuel aboard.
+func (p *PistonPropeller) Stores() Stores {
+	f := p.Fuel
+	return Stores{
+		Fuel:     max(0, f.Volume-f.Unusable) * f.Density,
+		Trapped:  min(f.Volume, f.Unusable) * f.Density,
+		Capacity: max(0, f.Capacity-f.Unusable) * f.Density,
+	}
+}
+
+// Build assembles the powerplant. Its errors are input errors with paths relative to p.
+func (p *PistonPropeller) Build() (Powerplant, error) {
+	var errs []error
+	if p.Fuel.Volume > p.Fuel.Capacity {
+		errs = append(errs, &input.Error{Path: "fuel.volume", Spec: &fuelVolume, Text: units.Metric.Format(units.Volume, p.Fuel.Volume),
+			Accepts: "the tanks hold " + units.Metric.Format(units.Volume, p.Fuel.Capacity), Err: input.ErrConflict})
+	}
+	e, err := p.Engine.build()
+	errs = append(errs, input.Within("engine", err))
+	if err != nil {
+		return nil, errors.Join(errs...)
+	}
+	plant, err := p.assemble(e)
+	errs = append(errs, err)
+	return plant, errors.Join(errs...)
+}
+
+func (p *PistonPropeller) assemble(e *engine) (Powerplant, error) {
+	if p.Propeller.Kind == ConstantSpeed {
+		if n := p.Propeller.Speed * p.Engine.GearRatio; n > p.Engine.Redline*(1+1e-9) {
+			return nil, &input.Error{Path: "propeller.speed", Spec: &propSpeed, Text: units.Metric.Format(units.Rotation, p.Propeller.Speed), Err: input.ErrConflict,
+				Accepts: "it turns the engine at " + units.Metric.Format(units.Rotation, n) + ", above its greatest speed"}
+		}
+		return &constantSpeed{engine: e, disc: propeller.Disc{Diameter: p.Propeller.Diameter, Loss: p.Propeller.LossFactor}, speed: p.Propeller.Speed}, nil
+	}
+	prop, err := propeller.NewFixed(p.Propeller.Diameter, p.Propeller.Coefficients)
+	if err != nil {
+		return nil, &input.Error{Path: "propeller.coefficients", Text: err.Error(), Accepts: "rising J, at least three rows", Err: input.ErrOrder}
+	}
+	return &fixedPitch{engine: e, prop: prop}, nil
+}
+
+// clone copies p so that the copy shares no table with it.
+func (p *PistonPropeller) clone() Model {
+	var c PistonPropeller
+	text, err := json.Marshal(p)
+	if err == nil {
+		err = json.Unmarshal(text, &c)
+	}
+	if err != nil {
+		panic("powerplant: " + err.Error())
+	}
+	return &c
+}

@@ -1,0 +1,152 @@
+package project
+
+import (
+	"errors"
+	"fmt"
+	"strings"
+
+	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/input"
+	"legwright/internal/perf/mission"
+	"legwright/internal/perf/runway"
+)
+
+// A Project is a Spec checked and resolved: immutable and safe for concurrent use.
+type Project struct {
+	Spec      *Spec
+	Aircraft  []*aircraft.Aircraft // one for each variant, in order
+	Plan      mission.Plan
+	Departure runway.Place // the strip of the first take-off, or the first strip
+	Arrival   runway.Place // the strip of the last landing, or the first strip
+}
+
+// Build checks the whole document and returns the project, or every input error
+// joined, with full paths. It keeps no reference into s that a later edit of s could reach.
+func (s *Spec) Build() (*Project, error) {
+	s = s.Clone()
+	errs := []error{s.head(), input.Check(s), s.references()}
+	if err := errors.Join(errs...); err != nil {
+		return nil, err
+	}
+	p := &Project{Spec: s, Plan: mission.Plan{Legs: s.Legs, Technique: s.Technique}}
+	errs = []error{s.resolve(p)}
+	for i := range s.Variants {
+		a, err := s.Variants[i].Aircraft.Build()
+		errs = append(errs, input.Within(fmt.Sprintf("variants[%d].aircraft", i), err))
+		p.Aircraft = append(p.Aircraft, a)
+	}
+	if err := errors.Join(errs...); err != nil {
+		return nil, err
+	}
+	return p, nil
+}
+
+// head checks what says how to read the document.
+func (s *Spec) head() error {
+	var errs []error
+	if s.Format != Format {
+		errs = append(errs, &input.Error{Path: "format", Text: fmt.Sprint(s.Format), Accepts: fmt.Sprint(Format), Err: input.ErrChoice})
+	}
+	if s.Units != "SI" {
+		errs = append(errs, &input.Error{Path: "units", Text: s.Units, Accepts: "SI", Err: input.ErrChoice})
+	}
+	return errors.Join(errs...)
+}
+
+// references checks lists and what one part of the document says of another.
+func (s *Spec) references() error {
+	var errs []error
+	if len(s.Strips) == 0 {
+		errs = append(errs, &input.Error{Path: "strips", Accepts: "at least one strip", Err: input.ErrRequired})
+	}
+	if len(s.Variants) == 0 {
+		errs = append(errs, &input.Error{Path: "variants", Accepts: "at least one variant", Err: input.ErrRequired})
+	}
+	seen := map[string]bool{}
+	for i := range s.Variants {
+		v := &s.Variants[i]
+		path := fmt.Sprintf("variants[%d]", i)
+		if v.ID == "" || seen[v.ID] || strings.ContainsAny(v.ID, "/?#% ") {
+			errs = append(errs, &input.Error{Path: path + ".id", Text: v.ID, Accepts: "an identifier of its own, without blanks and / ? # %", Err: input.ErrConflict})
+		}
+		seen[v.ID] = true
+		errs = append(errs, v.checkBasis(path))
+	}
+	for i := range s.Requirements {
+		r := &s.Requirements[i]
+		if r.Bound != AtLeast && r.Bound != AtMost {
+			errs = append(errs, &input.Error{Path: fmt.Sprintf("requirements[%d].bound", i), Text: r.Bound, Accepts: AtLeast + ", " + AtMost, Err: input.ErrChoice})
+		}
+	}
+	return errors.Join(errs...)
+}
+
+func (v *Variant) checkBasis(path string) error {
+	var errs []error
+	for key, b := range v.Basis {
+		where := path + ".basis." + key
+		if !isBasis(b.Kind) {
+			errs = append(errs, &input.Error{Path: where + ".kind", Text: b.Kind, Accepts: "measured, maker, calculated, estimated, placeholder", Err: input.ErrChoice})
+		}
+		if !(b.PlusMinus >= 0 && b.PlusMinus < 1e12) {
+			errs = append(errs, &input.Error{Path: where + ".plus_minus", Text: fmt.Sprint(b.PlusMinus), Accepts: "0 or more", Err: input.ErrRange})
+		}
+	}
+	return errors.Join(errs...)
+}
+
+func isBasis(kind string) bool {
+	for _, o := range BasisKinds {
+		if o.Value == kind {
+			return true
+		}
+	}
+	return false
+}
+
+// resolve puts the strips and legs on their day.
+func (s *Spec) resolve(p *Project) error {
+	var errs []error
+	for i, strip := range s.Strips {
+		place, err := strip.On(s.Day)
+		if err != nil {
+			errs = append(errs, &input.Error{Path: fmt.Sprintf("strips[%d].elevation", i), Text: err.Error(), Accepts: "an elevation and QNH inside the atmosphere model", Err: input.ErrConflict})
+			continue
+		}
+		p.Plan.Places = append(p.Plan.Places, place)
+	}
+	if len(errs) > 0 {
+		return errors.Join(errs...)
+	}
+	var err error
+	if p.Plan.Day, err = s.Day.Day(p.Plan.Places[0].Air.PressureAltitude); err != nil {
+		return err
+	}
+	p.Departure, p.Arrival = p.Plan.Places[0], p.Plan.Places[0]
+	first := true
+	for i, l := range s.Legs {
+		if l.Kind != mission.TakeOff && l.Kind != mission.Landing {
+			continue
+		}
+		place, ok := p.place(l.Strip)
+		if !ok {
+			errs = append(errs, &input.Error{Path: fmt.Sprintf("legs[%d].strip", i), Text: l.Strip, Accepts: "the name of one of the project's strips, or nothing for the first", Err: input.ErrChoice})
+			continue
+		}
+		if l.Kind == mission.Landing {
+			p.Arrival = place
+		} else if first {
+			p.Departure, first = place, false
+		}
+	}
+	return errors.Join(errs...)
+}
+
+func (p *Project) place(name string) (runway.Place, bool) {
+	for _, place := range p.Plan.Places {
+		if name == "" || place.Strip.Name == name {
+			return place, true
+		}
+	}
+	return runway.Place{}, false
+}

@@ -1,0 +1,175 @@
+package study
+
+import (
+	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/mission"
+	"legwright/internal/perf/pointperf"
+	"legwright/internal/perf/powerplant"
+	"legwright/internal/perf/runway"
+	"legwright/internal/perf/units"
+)
+
+// A Level is how grave a warning is.
+type Level string
+
+// The levels.
+const (
+	Info    Level = "info"
+	Caution Level = "caution"
+	Stop    Level = "stop"
+)
+
+// A Warning is something that the reader must know beside a figure.
+type Warning struct {
+	Code  string // stable
+	Level Level
+	About string // what it concerns: weights, strip, mission, powerplant, inputs
+	Text  units.Message
+	Clear string // how to clear it
+}
+
+// Thresholds of the warnings.
+const (
+	tipMachCaution  = 0.82  // common practice, no source: efficiency falls beyond
+	tipMachStop     = 0.90  // the propeller models hold no compressibility
+	leastGradient   = 0.083 // 14 CFR 23.65, 2003 text: 8.3 % for landplanes
+	leastStallRatio = 1.2   // 14 CFR 23.51, 2003 text, over the stall at 50 ft
+	staticShare     = 0.75  // of rated power at rest, common practice, no source
+)
+
+func (s *Study) add(code string, level Level, about, clear string, text units.Message) {
+	s.Warnings = append(s.Warnings, Warning{code, level, about, text, clear})
+}
+
+// warn gathers every warning, the gravest first within each subject.
+func (s *Study) warn(a *aircraft.Aircraft) {
+	s.warnWeights()
+	s.warnStrip("take-off", s.TakeOff)
+	s.warnStrip("landing", s.Landing)
+	s.warnMission(a)
+	s.warnPlant()
+	if n := len(s.Placeholders()); n > 0 {
+		s.add("placeholders", Caution, "inputs", "Give each its measured, maker's, calculated or estimated value and basis.",
+			units.Say("{} inputs are still placeholders", units.Of(units.Coefficient, float64(n))))
+	}
+	if s.Project.Spec.Day.Humidity == 0 {
+		s.add("dry-air", Info, "inputs", "Give the day's relative humidity.", units.Say("the air is taken as dry; on a humid day engine power is a few per cent lower"))
+	}
+}
+
+func (s *Study) warnWeights() {
+	m := s.Masses
+	if m.Start > m.MaxTakeOff {
+		s.add("overweight", Stop, "weights", "Take something out, or show that the structure bears more.",
+			units.Say("{} at the start is {} above the designer's greatest take-off mass; structural margin is not checked here",
+				units.Of(units.Mass, m.Start), units.Of(units.Mass, m.Start-m.MaxTakeOff)))
+	}
+}
+
+func (s *Study) warnStrip(what string, strip Strip) {
+	run, length := strip.Run, strip.Place.Strip.Length
+	switch {
+	case strip.Err != nil:
+		s.add(what+"-impossible", Stop, "strip", "Do not plan it: more power, less mass, a longer or harder strip.",
+			units.Say("no {}: {}", units.Text(what), units.Text(units.Explain(strip.Err).In(s.Project.Spec.System()))))
+		return
+	case run.Total > length:
+		s.add(what+"-too-long", Stop, "strip", "Do not plan it: less mass, more power, a longer strip.",
+			units.Say("{} needs {} and the strip has {}, before any safety factor", units.Text(what), units.Of(units.FieldLength, run.Total), units.Of(units.FieldLength, length)))
+	case run.Factored > length:
+		s.add(what+"-no-margin", Stop, "strip", "Do not plan it: less mass, more power, a longer strip.",
+			units.Say("{} with its safety factor needs {} and the strip has {}", units.Text(what), units.Of(units.FieldLength, run.Factored), units.Of(units.FieldLength, length)))
+	}
+	if what == "take-off" {
+		if g := s.Figure("climb_gradient"); g.Has() && g.Value < leastGradient {
+			s.add("weak-climb-out", Stop, "strip", "Less mass or more power.",
+				units.Say("after take-off it climbs at a gradient of {}, below the {} of 14 CFR 23.65 (2003): ground effect can mask how weak that is",
+					units.Of(units.Fraction, g.Value), units.Of(units.Fraction, leastGradient)))
+		}
+	}
+}
+
+func (s *Study) warnMission(a *aircraft.Aircraft) {
+	f := &s.Flight
+	if f.Failure != nil {
+		s.add("mission-ends", Stop, "mission", "Lower the demand of the leg, or give the aircraft more power or fuel.",
+			units.Say("the mission ends in “{}”: {}", units.Text(f.Failure.Name), units.Text(f.Failure.Reason.In(s.Project.Spec.System()))))
+	}
+	if r := f.Reserve; f.Failure == nil {
+		switch {
+		case !r.Asked:
+			s.add("no-reserve", Stop, "mission", "Add a reserve leg: rules ask for 30 minutes by day, 45 by night (14 CFR 91.151).", units.Say("the mission keeps no reserve"))
+		case !r.Met:
+			s.add("reserve-short", Stop, "mission", "More fuel, or a shorter mission.",
+				units.Say("the reserve is not met: {} of {} flown; {}", units.Of(units.Duration, r.Flown), units.Of(units.Duration, r.Wanted), units.Text(r.Reason.In(s.Project.Spec.System()))))
+		}
+	}
+	for i := range f.Legs {
+		for _, n := range f.Legs[i].Notes {
+			s.add("leg-note", Info, "mission", "Change the leg if that is not meant.", units.Say("{}: {}", units.Text(s.legName(i)), units.Text(n.In(s.Project.Spec.System()))))
+		}
+	}
+	s.warnStall(a)
+}
+
+// warnStall names each leg flown closer to the stall than the published margin.
+func (s *Study) warnStall(a *aircraft.Aircraft) {
+	seen := -1
+	for i := range s.Flight.Trace {
+		t := &s.Flight.Trace[i]
+		kind := s.Project.Spec.Legs[t.Leg].Kind
+		if t.Leg == seen || kind == mission.Taxi || kind == mission.TakeOff || kind == mission.Landing {
+			continue
+		}
+		air, err := s.airOf(t)
+		if err != nil {
+			continue
+		}
+		stall := pointperf.Stall(a, &pointperf.Point{Air: air, Mass: t.Mass}, nil)
+		if t.TAS < leastStallRatio*stall {
+			seen = t.Leg
+			s.add("stall-margin", Caution, "mission", "Give the leg a speed of its own.",
+				units.Say("{} is flown at {}, {} times the stall; below 1.2 the margin is thin", units.Text(s.legName(t.Leg)), units.Of(units.Speed, t.TAS), units.Of(units.Coefficient, roundTo(t.TAS/stall, 100))))
+		}
+	}
+}
+
+func roundTo(v, per float64) float64 { return float64(int64(v*per+0.5)) / per }
+
+// airOf is the air around a sample of the mission.
+func (s *Study) airOf(t *mission.Sample) (atmos.Air, error) {
+	day := s.Project.Plan.Day
+	if l := s.Project.Spec.Legs[t.Leg]; l.DayGiven == mission.OwnDay {
+		day.Deviation = l.Deviation
+	}
+	return day.At(t.Altitude, nil)
+}
+
+func (s *Study) warnPlant() {
+	if m := s.Figure("tip_mach"); m.Has() {
+		switch {
+		case m.Value >= tipMachStop:
+			s.add("tip-mach", Stop, "powerplant", "A smaller diameter or a lower speed of rotation.",
+				units.Say("the propeller tips reach Mach {}: the thrust shown leaves compressibility out and is not to be relied on", units.Of(units.Coefficient, roundTo(m.Value, 1000))))
+		case m.Value >= tipMachCaution:
+			s.add("tip-mach", Caution, "powerplant", "A smaller diameter or a lower speed of rotation.",
+				units.Say("the propeller tips reach Mach {}: efficiency falls and noise rises above 0.82", units.Of(units.Coefficient, roundTo(m.Value, 1000))))
+		}
+	}
+	if s.staticErr != nil {
+		s.add("static", Caution, "powerplant", "Add rows to the propeller table.", units.Say("no static thrust: {}", units.Text(units.Explain(s.staticErr).In(s.Project.Spec.System()))))
+		return
+	}
+	lapse := s.TakeOff.Place.Air.Density / atmos.SeaLevelDensity
+	if s.Static.Fraction > 0 && s.Static.Fraction < staticShare*lapse {
+		s.add("static-power", Caution, "powerplant", "Less propeller pitch or diameter.",
+			units.Say("at rest the engine makes only {} of its rated power: the propeller holds it down", units.Of(units.Fraction, s.Static.Fraction)))
+	}
+	if s.Static.Limits&powerplant.Extrapolated != 0 {
+		s.add("power-curve", Caution, "powerplant", "Add a row to the power table.", units.Say("at rest the engine turns slower than the first row of its power table; torque is taken as constant below"))
+	}
+	if s.TakeOff.Err == nil && s.TakeOff.Place.Strip.Obstacle < runway.Screen-0.5 {
+		s.add("low-screen", Info, "strip", "Give the height of what stands at the end.", units.Say("the distance is to {}; published distances go to {}", units.Of(units.Height, s.TakeOff.Place.Strip.Obstacle), units.Of(units.Height, runway.Screen)))
+	}
+}

@@ -1,0 +1,86 @@
+package units
+
+import (
+	"errors"
+	"strings"
+)
+
+// A Message is a sentence with quantities in it, which each reader sees in
+// their own units. Every "{}" of Format is filled by the next argument.
+type Message struct {
+	Format string
+	Args   []Arg
+}
+
+// An Arg is a quantity, or a plain text when Text is set.
+type Arg struct {
+	Quantity Quantity
+	SI       float64 // in the SI unit of Quantity
+	Text     string
+}
+
+// Of is an argument of the quantity q with the value si in its SI unit.
+func Of(q Quantity, si float64) Arg { return Arg{Quantity: q, SI: si} }
+
+// Text is an argument that is text already.
+func Text(s string) Arg { return Arg{Text: s} }
+
+// Say makes a message.
+func Say(format string, args ...Arg) Message { return Message{format, args} }
+
+// In writes the message with its quantities in the units of sys.
+func (m Message) In(sys System) string {
+	var b strings.Builder
+	rest := m.Format
+	for _, a := range m.Args {
+		before, after, found := strings.Cut(rest, "{}")
+		b.WriteString(before)
+		if !found {
+			return b.String()
+		}
+		if a.Text != "" {
+			b.WriteString(a.Text)
+		} else {
+			b.WriteString(sys.Format(a.Quantity, a.SI))
+		}
+		rest = after
+	}
+	b.WriteString(rest)
+	return b.String()
+}
+
+// Empty reports whether there is nothing to say.
+func (m Message) Empty() bool { return m.Format == "" }
+
+// Explained is an error that can say itself in any unit system.
+type Explained interface {
+	error
+	Message() Message
+}
+
+// Explain is the message of the first Explained error in err's tree, or err's
+// own text. A nil err gives the empty message.
+func Explain(err error) Message {
+	if err == nil {
+		return Message{}
+	}
+	var e Explained
+	if errors.As(err, &e) {
+		return e.Message()
+	}
+	return Message{Format: strings.ReplaceAll(err.Error(), "{}", "")}
+}
+
+// Errorf makes an Explained error that wraps cause, which may be nil.
+func Errorf(cause error, format string, args ...Arg) error {
+	return &messageError{Say(format, args...), cause}
+}
+
+type messageError struct {
+	message Message
+	cause   error
+}
+
+func (e *messageError) Error() string    { return e.message.In(Metric) }
+func (e *messageError) Message() Message { return e.message }
+func (e *messageError) Unwrap() error    { return e.cause }
