@@ -16,6 +16,7 @@ import (
 	"syscall"
 	"time"
 
+	"legwright/internal/perf/project"
 	"legwright/internal/store"
 	"legwright/web/handlers"
 )
@@ -55,7 +56,25 @@ func run(ctx context.Context, args []string, getenv func(string) string, stdout,
 	if err != nil {
 		return err
 	}
+	if err := begin(ctx, db); err != nil {
+		return errors.Join(err, db.Close())
+	}
 	return errors.Join(serve(ctx, o, db, log, stdout), db.Close())
+}
+
+// begin puts the demo project into a new database, so that the first page shows a full result.
+func begin(ctx context.Context, db *store.DB) error {
+	empty, err := db.Empty(ctx)
+	if err != nil || !empty {
+		return err
+	}
+	demo := project.Demo()
+	doc, err := demo.Encode()
+	if err != nil {
+		return err
+	}
+	_, err = db.Create(ctx, demo.Name, doc, "The demo project")
+	return err
 }
 
 func serve(ctx context.Context, o options, db *store.DB, log *slog.Logger, stdout io.Writer) error {

@@ -66,6 +66,16 @@ func (r bandRun) on(x, y scale) bandRun {
 	return bandRun{curve{r.lower}.on(x, y)[0], curve{r.upper}.on(x, y)[0]}
 }
 
+// clamped moves what lies above or below the box to its edge.
+func (r bandRun) clamped(b box) bandRun {
+	for _, side := range [][]point{r.lower, r.upper} {
+		for i := range side {
+			side[i].y = min(max(side[i].y, b.y0), b.y1)
+		}
+	}
+	return r
+}
+
 // measure returns the ends in x of the run and its area, to choose the run to label.
 func (r bandRun) measure() (x0, x1, area float64) {
 	x0, x1 = r.lower[0].x, r.lower[len(r.lower)-1].x

@@ -15,7 +15,9 @@ import (
 // A Series is one curve. The float64 slices hold display units of any finite range.
 type Series struct {
 	Name string
-	Unit string
+	// Label stands on the curve; empty means Name.
+	Label string
+	Unit  string
 	// X and Y are the points in display units; NaN, infinities and magnitudes
 	// above 1e30 split the curve.
 	X, Y []float64
@@ -85,6 +87,7 @@ type Panel struct {
 	Bands  []Band
 	Flags  []Flag
 	Lines  []HLine
+	Blank  string // said where there is nothing to draw; empty says "no data"
 }
 
 // A Chart is one drawing: panels over one x axis.

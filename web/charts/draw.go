@@ -1,6 +1,7 @@
 package charts
 
 import (
+	"cmp"
 	"math"
 
 	"gonum.org/v1/plot"
@@ -131,7 +132,20 @@ func (f *frame) drawGrid(c vg.Canvas, p *panelFrame, last bool) {
 	strokeLine(c, point{p.area.x0, p.area.y0}, point{p.area.x1, p.area.y0}, base, hairline)
 	p.heading.draw(c)
 	if p.empty() {
-		words{text: "no data", x: (p.area.x0 + p.area.x1) / 2, y: (p.area.y0+p.area.y1)/2 - middle*f.size,
+		f.drawBlank(c, p)
+	}
+}
+
+// drawBlank says in the middle of an empty panel why it is empty.
+func (f *frame) drawBlank(c vg.Canvas, p *panelFrame) {
+	text := p.spec.Blank
+	if text == "" {
+		text = "no data"
+	}
+	lines := wrapped(text, p.area.x1-p.area.x0-2*f.size, f.size+1)
+	y := (p.area.y0+p.area.y1)/2 - middle*f.size + f.rowPitch*float64(len(lines)-1)/2
+	for i, line := range lines {
+		words{text: line, x: (p.area.x0 + p.area.x1) / 2, y: y - f.rowPitch*float64(i),
 			anchor: 0.5, size: f.size + 1, class: "ink-3", extra: "halo"}.draw(c)
 	}
 }
@@ -216,6 +230,11 @@ func (f *frame) drawLabels(c vg.Canvas, p *panelFrame) {
 			s.levels = append(s.levels, p.y.at(l.Y))
 		}
 	}
+	for _, b := range p.spec.Bands {
+		for _, r := range bandRuns(b) {
+			s.bands = append(s.bands, r.on(f.x, p.y))
+		}
+	}
 	var flags []Flag
 	for _, fl := range p.spec.Flags {
 		if f.x.has(fl.X) && p.y.has(fl.Y) {
@@ -237,10 +256,11 @@ func (f *frame) drawLabels(c vg.Canvas, p *panelFrame) {
 		}
 	}
 	for i, sr := range p.spec.Series {
-		if sr.LabelAt < 0 || math.IsNaN(sr.LabelAt) || sr.Name == "" || len(p.drawn[i]) == 0 {
+		text := cmp.Or(sr.Label, sr.Name)
+		if sr.LabelAt < 0 || math.IsNaN(sr.LabelAt) || text == "" || len(p.drawn[i]) == 0 {
 			continue
 		}
-		w := words{text: sr.Name, size: f.size + 0.5, bold: true, class: textClass(sr.Class), extra: "halo"}
+		w := words{text: text, size: f.size + 0.5, bold: true, class: textClass(sr.Class), extra: "halo"}
 		if w, ok := s.alongCurve(p.drawn[i], w, sr.LabelAt); ok {
 			w.draw(c)
 		}
@@ -265,7 +285,7 @@ func (f *frame) drawBandLabels(c vg.Canvas, p *panelFrame, s *site) {
 		if b.Class == "short" {
 			w.class, w.extra = "required", "halo"
 		}
-		if w, ok := s.within(largest.on(f.x, p.y), w); ok {
+		if w, ok := s.within(largest.on(f.x, p.y).clamped(p.area), w); ok {
 			w.draw(c)
 		}
 	}

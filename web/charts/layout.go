@@ -32,7 +32,7 @@ const (
 	tickGap     = 6.0  // between a tick label and the data area
 	panelGap    = 10.0
 	headingLift = 9.0  // from the data area to the baseline of what stands on it
-	yTickSpace  = 23.0 // least distance between y ticks
+	yTickSpace  = 20.0 // least distance between y ticks
 	mostYTicks  = 5.0
 )
 

@@ -8,6 +8,7 @@ type site struct {
 	curves []curve
 	lines  []float64 // x of vertical lines in points
 	levels []float64 // y of horizontal lines in points
+	bands  []bandRun
 	taken  []box
 }
 
@@ -18,6 +19,7 @@ const (
 	onCurve   = 1e3
 	perHidden = 20.0 // for each point of a curve's length under the label
 	onLine    = 45.0
+	inBand    = 30.0 // for the label of a curve
 	nearness  = 14.0 // a curve nearer than this disturbs, in points
 )
 
@@ -50,6 +52,19 @@ func (s *site) cost(b box) float64 {
 		}
 	}
 	return sum
+}
+
+// bandCost rates the middle of a box lying in a band, whose ground is not a curve's own.
+func (s *site) bandCost(b box) float64 {
+	x, y := (b.x0+b.x1)/2, (b.y0+b.y1)/2
+	for _, r := range s.bands {
+		lower, below := curve{r.lower}.at(x)
+		upper, above := curve{r.upper}.at(x)
+		if below && above && y > lower && y < upper {
+			return inBand
+		}
+	}
+	return 0
 }
 
 // choice keeps the best of the places tried.
@@ -103,7 +118,7 @@ func (s *site) alongCurve(c curve, w words, wanted float64) (words, bool) {
 		far := 90 * math.Abs(share-wanted)
 		for _, place := range besides(c, sideways, w, point{px, py}, off, s.area) {
 			gap := pointDistance(place.box(), point{px, py})
-			best.try(place, far+2*max(gap-off, 0)+s.cost(place.box()))
+			best.try(place, far+2*max(gap-off, 0)+s.cost(place.box())+s.bandCost(place.box()))
 		}
 	}
 	return s.take(best, false)

@@ -110,6 +110,19 @@ func shortened(text string, width, size float64, bold bool) string {
 	return ""
 }
 
+// wrapped breaks text between words into lines of at most a width in points.
+func wrapped(text string, width, size float64) []string {
+	var lines []string
+	for _, word := range strings.Split(text, " ") {
+		if n := len(lines); n > 0 && textWidth(lines[n-1]+" "+word, size, false) <= width {
+			lines[n-1] += " " + word
+			continue
+		}
+		lines = append(lines, word)
+	}
+	return lines
+}
+
 // heading joins an axis label and its unit.
 func heading(label, unit string) string {
 	switch {

@@ -11,6 +11,7 @@ import (
 	"github.com/go-chi/chi/v5"
 
 	"legwright/internal/store"
+	"legwright/web/static"
 )
 
 // A Config is what the handlers need from outside. All fields are required.
@@ -20,15 +21,43 @@ type Config struct {
 	Hosts []string // values of Host that are answered, with the port: "127.0.0.1:8080"
 }
 
+// site holds what every page needs.
+type site struct {
+	db  *store.DB
+	log *slog.Logger
+}
+
 // New returns the whole site.
 func New(cfg Config) (http.Handler, error) {
 	if cfg.DB == nil || cfg.Log == nil || len(cfg.Hosts) == 0 {
 		return nil, errors.New("handlers: Config needs DB, Log and Hosts")
 	}
+	s := &site{db: cfg.DB, log: cfg.Log}
 	r := chi.NewRouter()
 	r.Use(guards(cfg.Hosts, cfg.Log)...)
+	r.NotFound(s.serve(func(http.ResponseWriter, *http.Request) error { return errNoPage }))
+
 	r.Get("/healthz", healthz)
-	r.NotFound(notFound)
+	r.Handle("/static/*", http.StripPrefix("/static/", cached(http.FileServerFS(static.Files))))
+
+	r.Get("/", s.serve(s.shelf))
+	r.Post("/projects", s.serve(s.createProject))
+	r.Route("/projects/{project}", func(r chi.Router) {
+		r.Get("/", s.serve(s.openProject))
+		r.Post("/copy", s.serve(s.copyProject))
+		r.Post("/archive", s.serve(s.archiveProject(true)))
+		r.Post("/unarchive", s.serve(s.archiveProject(false)))
+		r.Get("/variants/{variant}", s.serve(s.bench))
+		r.Post("/variants/{variant}", s.serve(s.edit))
+		r.Post("/variants/{variant}/units", s.serve(s.setUnits))
+		r.Post("/variants/{variant}/undo", s.serve(s.step(s.db.Undo, "undone")))
+		r.Post("/variants/{variant}/redo", s.serve(s.step(s.db.Redo, "done again")))
+		r.Get("/variants/{variant}/working", s.serve(s.working))
+	})
+
+	r.Post("/api/evaluate", s.serveJSON(s.evaluate))
+	r.Get("/api/schema", s.serveJSON(s.schema))
+	r.Get("/api/projects/{project}", s.serveJSON(s.document))
 	return r, nil
 }
 
@@ -37,6 +66,11 @@ func healthz(w http.ResponseWriter, _ *http.Request) {
 	io.WriteString(w, "ok")
 }
 
-func notFound(w http.ResponseWriter, _ *http.Request) {
-	http.Error(w, "There is no page at this address.", http.StatusNotFound)
+// cached lets the browser keep static files but ask each time whether they are
+// still the same: the program may have been replaced by a newer one.
+func cached(next http.Handler) http.Handler {
+	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
+		w.Header().Set("Cache-Control", "no-cache")
+		next.ServeHTTP(w, r)
+	})
 }

@@ -20,6 +20,8 @@ var (
 	ErrUnknown   = errors.New("not a field of this document")
 	ErrType      = errors.New("of the wrong type")
 	ErrConflict  = errors.New("does not agree with another input")
+	ErrMalformed = errors.New("not well-formed JSON")
+	ErrDuplicate = errors.New("given more than once")
 )
 
 // An Error reports one unacceptable input.
@@ -87,11 +89,16 @@ func lower(label string) string {
 	return label
 }
 
-// Within prefixes the path of every *Error in err; other errors are dropped into the list as they are.
+// Within prefixes the path of every *Error in err; other errors stay in the list as they are.
 func Within(prefix string, err error) error {
 	var out []error
-	for _, e := range Errors(err) {
-		c := *e
+	for _, e := range leaves(err) {
+		in, ok := e.(*Error)
+		if !ok {
+			out = append(out, e)
+			continue
+		}
+		c := *in
 		switch {
 		case c.Path == "":
 			c.Path = prefix
@@ -103,6 +110,28 @@ func Within(prefix string, err error) error {
 		out = append(out, &c)
 	}
 	return errors.Join(out...)
+}
+
+// leaves flattens err into its input errors and, whole, what contains none.
+func leaves(err error) []error {
+	switch e := err.(type) {
+	case nil:
+		return nil
+	case interface{ Unwrap() []error }:
+		var all []error
+		for _, sub := range e.Unwrap() {
+			all = append(all, leaves(sub)...)
+		}
+		return all
+	}
+	if found := Errors(err); len(found) > 0 {
+		all := make([]error, len(found))
+		for i, e := range found {
+			all[i] = e
+		}
+		return all
+	}
+	return []error{err}
 }
 
 // Errors flattens a tree of joined and wrapped errors into the input errors in it.

@@ -20,7 +20,9 @@ func (n *Number) Parse(text string, sys units.System) (float64, error) {
 	return v, n.Check(v)
 }
 
-// Parse reads text as a value of s without checking its range.
+// Parse reads text as a value of s without checking its range. What rounds to
+// a bound in the seven digits that a field shows is that bound, so that a
+// field holding it can be sent back.
 func (s *Spec) Parse(text string, sys units.System) (float64, error) {
 	fail := func(err error, accepts string) (float64, error) {
 		return 0, &Error{Path: s.Name, Spec: s, Text: strings.TrimSpace(text), Accepts: accepts, Err: err}
@@ -61,7 +63,19 @@ func (s *Spec) Parse(text string, sys units.System) (float64, error) {
 	if math.IsInf(total, 0) || math.IsNaN(total) {
 		return fail(ErrSyntax, "")
 	}
-	return total, nil
+	return s.snap(total), nil
+}
+
+// snap returns the bound that v, in SI, differs from by no more than the
+// rounding of units.Plain and the last bits of a conversion, else v.
+func (s *Spec) snap(v float64) float64 {
+	const rounding = 5.1e-7
+	for _, bound := range [2]float64{s.Min, s.Max} {
+		if math.Abs(v-bound) <= rounding*math.Abs(bound) {
+			return bound
+		}
+	}
+	return v
 }
 
 // spaces maps the blanks and minus signs that people paste to plain ones.

@@ -73,6 +73,13 @@ func (f *flier) path(l *Leg, r *LegResult) error {
 func (r *rider) run() error {
 	start := []float64{r.base.Distance, r.base.Altitude, 0, 0}
 	first, err := r.moment(start)
+	if limit := r.limits(start); limit != nil {
+		// A speed out of bounds says more than the thrust that it lacks there.
+		if err == nil {
+			r.keep(0, start, &first)
+		}
+		return limit
+	}
 	if err != nil {
 		return err
 	}
@@ -99,14 +106,26 @@ func cause(err error) error {
 	return err
 }
 
-// flyable checks what can be known before flying.
+// limits checks the scheduled speed of a state against the stall and the never-exceed speed.
+func (r *rider) limits(y []float64) error {
+	p, tas, err := r.where(y)
+	if err != nil {
+		return err
+	}
+	if stall := pointperf.Stall(r.f.a, &p, nil); tas < stall*(1-1e-9) {
+		return belowStall(tas, stall)
+	}
+	if top := r.top(&p); tas > top*(1+1e-9) {
+		return aboveNeverExceed(tas, top)
+	}
+	return nil
+}
+
+// top is the never-exceed speed as a true airspeed in m/s.
+func (r *rider) top(p *pointperf.Point) float64 { return p.Air.FromCAS(atmos.CAS(r.f.a.NeverExceed())) }
+
+// flyable checks what else can be known before flying.
 func (r *rider) flyable(m *moment) error {
-	if stall := pointperf.Stall(r.f.a, &m.point, nil); m.tas < stall*(1-1e-9) {
-		return belowStall(m.tas, stall)
-	}
-	if top := m.point.Air.FromCAS(atmos.CAS(r.f.a.NeverExceed())); m.tas > top*(1+1e-9) {
-		return units.Errorf(nil, "its speed of {} is above the never-exceed speed, here {}", units.Of(units.Speed, m.tas), units.Of(units.Speed, top))
-	}
 	if r.base.Fuel <= 0 && m.out.FuelFlow > 0 || r.base.Charge <= 0 && m.out.BusPower > 0 {
 		return emptied(m.point.Mass, m.point.Air.PressureAltitude)
 	}
@@ -131,6 +150,7 @@ const (
 	eventCharge
 	eventCeiling
 	eventStall
+	eventNeverExceed
 )
 
 // ending gives the longest time of the leg in s and the events that end it.
@@ -152,11 +172,12 @@ func (r *rider) ending() (float64, []numeric.Event) {
 		longest = l.Time
 	}
 	return longest, []numeric.Event{
-		eventEnd:     {Name: "end", Terminal: true, Direction: direction, G: target},
-		eventFuel:    {Name: "fuel used", Terminal: true, Direction: -1, G: func(_ float64, y []float64) float64 { return r.base.Fuel - y[atFuel] }},
-		eventCharge:  {Name: "charge used", Terminal: true, Direction: -1, G: func(_ float64, y []float64) float64 { return r.base.Charge - y[atEnergy] }},
-		eventCeiling: {Name: "ceiling", Terminal: true, Direction: -1, G: r.climbMargin},
-		eventStall:   {Name: "stall", Terminal: true, Direction: -1, G: r.stallMargin},
+		eventEnd:         {Name: "end", Terminal: true, Direction: direction, G: target},
+		eventFuel:        {Name: "fuel used", Terminal: true, Direction: -1, G: func(_ float64, y []float64) float64 { return r.base.Fuel - y[atFuel] }},
+		eventCharge:      {Name: "charge used", Terminal: true, Direction: -1, G: func(_ float64, y []float64) float64 { return r.base.Charge - y[atEnergy] }},
+		eventCeiling:     {Name: "ceiling", Terminal: true, Direction: -1, G: r.climbMargin},
+		eventStall:       {Name: "stall", Terminal: true, Direction: -1, G: r.stallMargin},
+		eventNeverExceed: {Name: "never-exceed speed", Terminal: true, Direction: -1, G: r.topMargin},
 	}
 }
 
@@ -184,6 +205,19 @@ func (r *rider) stallMargin(_ float64, y []float64) float64 {
 	return tas - pointperf.Stall(r.f.a, &p, nil)*(1-1e-9)
 }
 
+// topMargin is the speed below the never-exceed speed in m/s, for a descent on
+// which the true airspeed does not follow it by itself.
+func (r *rider) topMargin(_ float64, y []float64) float64 {
+	if r.l.Kind != Descent || r.l.SpeedRule == ByCAS {
+		return 1
+	}
+	p, tas, err := r.where(y)
+	if err != nil {
+		return 1
+	}
+	return r.top(&p)*(1+1e-9) - tas
+}
+
 // outcome says whether the leg ended as asked.
 func (r *rider) outcome(sol *numeric.Solution) error {
 	s := sol.Stopped
@@ -207,6 +241,9 @@ func (r *rider) outcome(sol *numeric.Solution) error {
 	}
 	if s.Event == eventCeiling {
 		return r.noClimb(&m)
+	}
+	if s.Event == eventNeverExceed {
+		return aboveNeverExceed(m.tas, r.top(&m.point))
 	}
 	return belowStall(m.tas, pointperf.Stall(r.f.a, &m.point, nil))
 }

@@ -55,15 +55,17 @@ func (f *flier) climbSchedule(l *Leg, day atmos.Day) (schedule, error) {
 		}
 		p := &pointperf.Point{Air: air, Mass: mass}
 		best := pointperf.BestRate(f.a, p)
+		rate := best.Value
 		if l.SpeedRule == BestAngle {
 			best = pointperf.BestAngle(f.a, p)
+			rate = best.TAS * math.Sin(best.Value)
 		}
 		if best.Err != nil {
 			return nil, best.Err
 		}
 		y[i] = best.TAS
 		if out, err := pointperf.ThrustAvailable(f.a, p, best.TAS, nil); err == nil {
-			seconds := (to - from) / (climbNodes - 1) / math.Max(0.3, best.Value)
+			seconds := (to - from) / (climbNodes - 1) * air.HeightRatio / math.Max(0.3, rate)
 			mass = math.Max(f.a.DryMass(), mass-out.FuelFlow*seconds)
 		}
 	}
@@ -136,4 +138,9 @@ func (f *flier) levelSchedule(l *Leg, day atmos.Day) (schedule, error) {
 // belowStall says that a commanded speed cannot be flown.
 func belowStall(tas, stall float64) error {
 	return units.Errorf(nil, "its speed of {} is below the stall at {}", units.Of(units.Speed, tas), units.Of(units.Speed, stall))
+}
+
+// aboveNeverExceed says that a commanded speed must not be flown.
+func aboveNeverExceed(tas, top float64) error {
+	return units.Errorf(nil, "its speed of {} is above the never-exceed speed, here {}", units.Of(units.Speed, tas), units.Of(units.Speed, top))
 }

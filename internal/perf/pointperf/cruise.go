@@ -29,12 +29,19 @@ func LevelAt(a *aircraft.Aircraft, p *Point, tas float64) (Level, error) {
 // BestRange is the level flight that goes farthest over the ground for the
 // energy drawn, against the head wind in m/s (negative: tail wind).
 func BestRange(a *aircraft.Aircraft, p *Point, headWind float64) (Level, error) {
-	return bestLevel(a, p, func(l Level) float64 {
+	best, err := bestLevel(a, p, func(l Level) float64 {
 		if l.TAS <= headWind {
 			return math.Inf(-1)
 		}
 		return (l.TAS - headWind) / l.Output.Drain()
 	})
+	if err != nil && headWind > 0 {
+		if _, fast := levelBounds(a, p, Stall(a, p, nil), topSpeed(a, p)); fast.Err == nil && fast.TAS <= headWind {
+			return Level{}, units.Errorf(err, "the head wind of {} leaves no way over the ground: the fastest level flight is {}",
+				units.Of(units.Speed, headWind), units.Of(units.Speed, fast.TAS))
+		}
+	}
+	return best, err
 }
 
 // BestEndurance is the level flight that draws least energy for the time.

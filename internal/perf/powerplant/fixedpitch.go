@@ -64,7 +64,8 @@ func (p *fixedPitch) Run(c Condition, setting float64, w *formula.Working) (Outp
 	} else {
 		// The highest balance is the stable one: below the lowest, accessories eat all the power.
 		r, err := numeric.LastRoot(surplus, low, top, balanceCells, 1e-12)
-		if errors.Is(err, numeric.ErrNoBracket) {
+		// No power and none absorbed, at the end of the table, balance too: that is idling.
+		if errors.Is(err, numeric.ErrNoBracket) || (err == nil && e.power(setting, phi, r.X, nil) <= 0) {
 			return p.lowest(c, setting, w)
 		}
 		if err != nil {
@@ -169,7 +170,9 @@ func (p *fixedPitch) Match(c Condition, want float64, w *formula.Working) (float
 	if setting > 1+1e-9 {
 		return 1, Output{}, p.short(c, want)
 	}
-	w.Note("Thrust match: at %.1f rpm the propeller gives the thrust required.", r.X*60)
+	if w != nil {
+		w.Note("Thrust match: at %.1f rpm the propeller gives the thrust required.", r.X*60)
+	}
 	return math.Min(1, setting), p.at(c, r.X, 0, w), nil
 }
 

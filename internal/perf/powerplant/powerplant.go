@@ -89,3 +89,17 @@ func (e *ThrustError) Error() string { return e.Message().In(units.Metric) }
 func (e *ThrustError) Message() units.Message {
 	return units.Say("thrust required, {}, exceeds thrust available, {}, at {}", units.Of(units.Force, e.Want), units.Of(units.Force, e.Available), units.Of(units.Speed, e.TAS))
 }
+
+// Words lists the limits in words.
+func (l Limit) Words() []string {
+	var list []string
+	for _, w := range []struct {
+		bit  Limit
+		text string
+	}{{SpeedLimited, "throttled to hold the greatest speed of rotation"}, {Idling, "idling"}, {Extrapolated, "below the rows of the power table"}} {
+		if l&w.bit != 0 {
+			list = append(list, w.text)
+		}
+	}
+	return list
+}

@@ -72,12 +72,6 @@ func (s *Spec) references() error {
 		seen[v.ID] = true
 		errs = append(errs, v.checkBasis(path))
 	}
-	for i := range s.Requirements {
-		r := &s.Requirements[i]
-		if r.Bound != AtLeast && r.Bound != AtMost {
-			errs = append(errs, &input.Error{Path: fmt.Sprintf("requirements[%d].bound", i), Text: r.Bound, Accepts: AtLeast + ", " + AtMost, Err: input.ErrChoice})
-		}
-	}
 	return errors.Join(errs...)
 }
 

@@ -13,13 +13,11 @@ import (
 
 // A Figure is one number of the study that a requirement can name.
 type Figure struct {
-	ID       string
-	Label    string
-	Quantity units.Quantity
-	Value    float64       // in the quantity's SI unit; meaningless when Reason is set
-	Reason   units.Message // why there is no value; empty when there is one
-	Where    units.Message // the condition it holds for
-	Rests    []string      // prefixes of the aircraft inputs that it depends on
+	project.FigureKind
+	Value  float64       // in the quantity's SI unit; meaningless when Reason is set
+	Reason units.Message // why there is no value; empty when there is one
+	Where  units.Message // the condition it holds for
+	Rests  []string      // prefixes of the aircraft inputs that it depends on
 }
 
 // Has reports whether the figure has a value.
@@ -35,32 +33,25 @@ var (
 	flown       = slices.Concat(clean, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off", "airframe.landing"})
 )
 
-// kinds are the figures in the order shown. Requirements name them, so an identifier is never reused.
-var kinds = []Figure{
-	{ID: "take_off_distance", Label: "Take-off over the obstacle", Quantity: units.FieldLength, Rests: off},
-	{ID: "take_off_roll", Label: "Take-off ground roll", Quantity: units.FieldLength, Rests: off},
-	{ID: "landing_distance", Label: "Landing over the obstacle", Quantity: units.FieldLength, Rests: flown},
-	{ID: "landing_roll", Label: "Landing ground roll", Quantity: units.FieldLength, Rests: flown},
-	{ID: "climb_rate", Label: "Best rate of climb", Quantity: units.ClimbRate, Rests: clean},
-	{ID: "climb_gradient", Label: "Climb gradient after take-off", Quantity: units.Fraction, Rests: off},
-	{ID: "service_ceiling", Label: "Service ceiling", Quantity: units.Altitude, Rests: clean},
-	{ID: "absolute_ceiling", Label: "Absolute ceiling", Quantity: units.Altitude, Rests: clean},
-	{ID: "stall_clean", Label: "Stall, clean", Quantity: units.Speed},
-	{ID: "stall_landing", Label: "Stall, landing", Quantity: units.Speed},
-	{ID: "level_max", Label: "Level maximum", Quantity: units.Speed, Rests: clean},
-	{ID: "static_thrust", Label: "Static thrust", Quantity: units.Force, Rests: plantInputs},
-	{ID: "static_speed", Label: "Static engine speed", Quantity: units.Rotation, Rests: plantInputs},
-	{ID: "tip_mach", Label: "Greatest tip Mach number", Quantity: units.Coefficient, Rests: flown},
-	{ID: "thrust_in_hand", Label: "Thrust in hand at the tightest", Quantity: units.Fraction, Rests: flown},
-	{ID: "mission_time", Label: "Mission time", Quantity: units.Duration, Rests: flown},
-	{ID: "mission_distance", Label: "Mission distance", Quantity: units.Distance, Rests: flown},
-	{ID: "mission_fuel", Label: "Fuel for the mission", Quantity: units.Mass, Rests: flown},
-	{ID: "reserve_time", Label: "Reserve flown", Quantity: units.Duration, Rests: flown},
-	{ID: "fuel_left", Label: "Fuel left after the reserve", Quantity: units.Mass, Rests: flown},
+// rests gives the inputs of the figures that do not rest on all of a flown mission.
+var rests = map[string][]string{
+	"take_off_distance": off, "take_off_roll": off, "climb_gradient": off,
+	"climb_rate": clean, "service_ceiling": clean, "absolute_ceiling": clean, "level_max": clean,
+	"static_thrust": plantInputs, "static_speed": plantInputs,
 }
 
-// Kinds lists every figure without its value, in the order shown.
-func Kinds() []Figure { return slices.Clone(kinds) }
+// blank lists every figure without its value, in the order shown.
+func blank() []Figure {
+	kinds := project.FigureKinds()
+	list := make([]Figure, len(kinds))
+	for i, k := range kinds {
+		list[i] = Figure{FigureKind: k, Rests: flown}
+		if r, ok := rests[k.ID]; ok {
+			list[i].Rests = r
+		}
+	}
+	return list
+}
 
 // Figure finds a figure by its identifier; nil when there is none of that name.
 func (s *Study) Figure(id string) *Figure {
@@ -87,7 +78,7 @@ func (s *Study) set(id string, value float64, where units.Message, err error) {
 
 // figures fills every figure.
 func (s *Study) figures(a *aircraft.Aircraft) {
-	s.Figures = Kinds()
+	s.Figures = blank()
 	stall := slices.Concat([]string{"airframe.wing_area"}, massInputs, s.weighs())
 	s.Figure("stall_clean").Rests = append(slices.Clone(stall), "airframe.clean.cl_max")
 	s.Figure("stall_landing").Rests = append(slices.Clone(stall), "airframe.landing.cl_max")
@@ -187,7 +178,9 @@ func (s *Study) legName(i int) string {
 func (s *Study) Unsure(f *Figure) []string {
 	var list []string
 	for _, path := range s.Placeholders() {
-		if slices.ContainsFunc(f.Rests, func(prefix string) bool { return path == prefix || strings.HasPrefix(path, prefix+".") || strings.HasPrefix(path, prefix+"[") }) {
+		if slices.ContainsFunc(f.Rests, func(prefix string) bool {
+			return path == prefix || strings.HasPrefix(path, prefix+".") || strings.HasPrefix(path, prefix+"[")
+		}) {
 			list = append(list, path)
 		}
 	}

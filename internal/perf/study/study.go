@@ -225,4 +225,5 @@ func roundStep(span float64, sys units.System) float64 {
 	return 10 * base * unit
 }
 
-
+// ClimbErr is why the climb table is missing or stops short, nil when it is whole.
+func (s *Study) ClimbErr() error { return s.climbErr }

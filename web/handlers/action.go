@@ -1,0 +1,88 @@
+package handlers
+
+import (
+	"fmt"
+	"slices"
+	"strconv"
+	"strings"
+
+	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/input"
+	"legwright/internal/perf/mission"
+	"legwright/internal/perf/project"
+)
+
+// act does one action on a list of the document: "add-item", "remove-leg 3".
+func act(s *project.Spec, variant int, action string) (string, error) {
+	verb, arg, _ := strings.Cut(action, " ")
+	v := &s.Variants[variant]
+	items := &v.Aircraft.Weights.Items
+	switch verb {
+	case "add-item":
+		*items = append(*items, aircraft.Item{Name: "Item"})
+		return "Item added", nil
+	case "remove-item":
+		return removed(items, arg, "Item", func(i int) string {
+			v.Basis = shifted(v.Basis, i)
+			return (*items)[i].Name
+		})
+	case "add-leg":
+		s.Legs = append(s.Legs, mission.NewLeg(mission.Cruise, "New leg"))
+		return "Leg added", nil
+	case "remove-leg":
+		return removed(&s.Legs, arg, "Leg", func(i int) string { return s.Legs[i].Name })
+	case "move-leg-up":
+		i, err := index(arg, len(s.Legs))
+		if err != nil || i == 0 {
+			return "", noAction(action)
+		}
+		s.Legs[i-1], s.Legs[i] = s.Legs[i], s.Legs[i-1]
+		return fmt.Sprintf("Leg “%s” moved earlier", s.Legs[i-1].Name), nil
+	case "add-requirement":
+		s.Requirements = append(s.Requirements, project.Requirement{Figure: "service_ceiling", Bound: project.AtLeast, Limit: 3000})
+		return "Requirement added", nil
+	case "remove-requirement":
+		return removed(&s.Requirements, arg, "Requirement", func(i int) string { return s.Requirements[i].Figure })
+	}
+	return "", noAction(action)
+}
+
+// removed takes the element at the position that arg names out of a list.
+func removed[T any](list *[]T, arg, what string, name func(i int) string) (string, error) {
+	i, err := index(arg, len(*list))
+	if err != nil {
+		return "", err
+	}
+	said := fmt.Sprintf("%s “%s” removed", what, name(i))
+	*list = slices.Delete(*list, i, i+1)
+	return said, nil
+}
+
+func index(arg string, length int) (int, error) {
+	i, err := strconv.Atoi(arg)
+	if err != nil || i < 0 || i >= length {
+		return 0, noAction(arg)
+	}
+	return i, nil
+}
+
+func noAction(text string) error {
+	return &input.Error{Path: "action", Text: text, Accepts: "something that is still there", Err: input.ErrUnknown}
+}
+
+// shifted moves the bases of the items after a removed one to their new places.
+func shifted(bases map[string]project.Basis, gone int) map[string]project.Basis {
+	moved := map[string]project.Basis{}
+	for path, b := range bases {
+		rest, ok := strings.CutPrefix(path, "weights.items[")
+		n, tail, _ := strings.Cut(rest, "]")
+		i, err := strconv.Atoi(n)
+		switch {
+		case !ok || err != nil || i < gone:
+			moved[path] = b
+		case i > gone:
+			moved[fmt.Sprintf("weights.items[%d]%s", i-1, tail)] = b
+		}
+	}
+	return moved
+}

@@ -1,0 +1,181 @@
+package handlers
+
+import (
+	"context"
+	"fmt"
+	"net/http"
+	"net/url"
+
+	"github.com/go-chi/chi/v5"
+
+	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/input"
+	"legwright/internal/perf/project"
+	"legwright/internal/perf/study"
+	"legwright/internal/perf/units"
+	"legwright/internal/store"
+	"legwright/web/views"
+)
+
+// A head is the current state of a project.
+type head struct {
+	rev  store.Revision
+	spec *project.Spec
+}
+
+func (s *site) head(r *http.Request) (head, error) {
+	id, err := projectID(r)
+	if err != nil {
+		return head{}, err
+	}
+	rev, err := s.db.Head(r.Context(), id)
+	if err != nil {
+		return head{}, err
+	}
+	return decoded(rev)
+}
+
+func decoded(rev store.Revision) (head, error) {
+	spec, err := project.Decode(rev.Doc)
+	if err != nil {
+		return head{}, fmt.Errorf("project %d, revision %d: %w", rev.Project, rev.Number, err)
+	}
+	return head{rev, spec}, nil
+}
+
+// variant finds the variant that the address names.
+func (h head) variant(r *http.Request) (int, error) {
+	i, ok := h.spec.Variant(chi.URLParam(r, "variant"))
+	if !ok {
+		return 0, &problem{http.StatusNotFound, "Not here", "This project has no such variant; it may have been undone."}
+	}
+	return i, nil
+}
+
+func (s *site) bench(w http.ResponseWriter, r *http.Request) error {
+	h, err := s.head(r)
+	if err != nil {
+		return err
+	}
+	return s.show(w, r, h, nil, "")
+}
+
+// show answers with the bench, or with its changed part for the page's script.
+func (s *site) show(w http.ResponseWriter, r *http.Request, h head, refused []views.Refusal, message string) error {
+	i, err := h.variant(r)
+	if err != nil {
+		return err
+	}
+	p, err := h.spec.Build()
+	if err != nil {
+		return err
+	}
+	view, mistaken := viewOf(r.URL.Query(), p, i)
+	st := views.BenchState{ProjectID: h.rev.Project, Revision: h.rev.Number, Saved: h.rev.Saved, CanUndo: h.rev.CanUndo, CanRedo: h.rev.CanRedo,
+		Query: query(r.URL.Query()), Refusals: refused, Message: message, View: mistaken}
+	b := views.NewBench(study.Run(p, i, view), st)
+	code := http.StatusOK
+	if len(refused) > 0 || len(mistaken) > 0 {
+		code = http.StatusUnprocessableEntity
+	}
+	if swaps(r) {
+		return render(w, r, code, views.BenchBody(b))
+	}
+	return render(w, r, code, views.BenchPage(b))
+}
+
+// viewNames are the query's settings of the view.
+var viewNames = []string{"altitude", "isa", "mass", "config"}
+
+// query keeps only the settings of the view.
+func query(q url.Values) string {
+	kept := url.Values{}
+	for _, name := range viewNames {
+		if q.Has(name) {
+			kept.Set(name, q.Get(name))
+		}
+	}
+	if len(kept) == 0 {
+		return ""
+	}
+	return "?" + kept.Encode()
+}
+
+var (
+	viewAltitude  = input.Spec{Name: "altitude", Label: "Altitude of the chart", Quantity: units.Altitude, Min: -500, Max: 25000}
+	viewMass      = input.Spec{Name: "mass", Label: "Mass of the chart", Quantity: units.Mass, Min: 0.05, Max: 1e5}
+	viewDeviation = input.Spec{Name: "isa", Label: "Deviation from standard", Quantity: units.TemperatureStep, Min: -60, Max: 60}
+)
+
+// viewOf reads the condition of the chart from the query; what is not understood keeps its default and is said.
+func viewOf(q url.Values, p *project.Project, variant int) (study.View, []views.Refusal) {
+	v := study.DefaultView(p, variant)
+	sys := p.Spec.System()
+	var mistaken []views.Refusal
+	for _, n := range []*input.Number{{Spec: &viewAltitude, Value: &v.Altitude}, {Spec: &viewMass, Value: &v.Mass}, {Spec: &viewDeviation, Value: &v.Deviation}} {
+		text := q.Get(n.Name)
+		if text == "" {
+			continue
+		}
+		value, err := n.Parse(text, sys)
+		if err != nil {
+			for _, e := range input.Errors(err) {
+				mistaken = append(mistaken, views.Refusal{Path: n.Name, Text: text, Why: e.Sentence(sys) + "."})
+			}
+			continue
+		}
+		*n.Value = value
+	}
+	for _, c := range []aircraft.Config{aircraft.Clean, aircraft.TakeOff, aircraft.Landing} {
+		if q.Get("config") == c.String() {
+			v.Config = c
+		}
+	}
+	if _, err := (atmos.Day{Deviation: v.Deviation}).At(v.Altitude, nil); err != nil {
+		mistaken = append(mistaken, views.Refusal{Path: "altitude", Text: q.Get("altitude"), Why: units.Explain(err).In(sys) + "."})
+		v = study.DefaultView(p, variant)
+	}
+	return v, mistaken
+}
+
+// step undoes or redoes one revision.
+func (s *site) step(move func(context.Context, int64) (store.Revision, error), done string) page {
+	return func(w http.ResponseWriter, r *http.Request) error {
+		id, err := projectID(r)
+		if err != nil {
+			return err
+		}
+		message := ""
+		rev, err := move(r.Context(), id)
+		switch {
+		case isNothing(err):
+			message = "There is nothing more to take back or bring back."
+			if rev, err = s.db.Head(r.Context(), id); err != nil {
+				return err
+			}
+		case err != nil:
+			return err
+		default:
+			message = "One change was " + done + "."
+		}
+		h, err := decoded(rev)
+		if err != nil {
+			return err
+		}
+		return s.settled(w, r, h, message)
+	}
+}
+
+// settled answers an edit that was taken: the new page for the script, else a redirect to it.
+func (s *site) settled(w http.ResponseWriter, r *http.Request, h head, message string) error {
+	if swaps(r) {
+		return s.show(w, r, h, nil, message)
+	}
+	id := chi.URLParam(r, "variant")
+	if _, ok := h.spec.Variant(id); !ok {
+		id = h.spec.Variants[0].ID
+	}
+	http.Redirect(w, r, fmt.Sprintf("/projects/%d/variants/%s%s", h.rev.Project, id, query(r.URL.Query())), http.StatusSeeOther)
+	return nil
+}

@@ -1,0 +1,199 @@
+package handlers
+
+import (
+	"fmt"
+	"net/url"
+	"slices"
+	"strings"
+
+	"legwright/internal/perf/input"
+	"legwright/internal/perf/project"
+	"legwright/internal/perf/units"
+	"legwright/web/views"
+)
+
+// A change sets one thing in a document.
+type change struct {
+	path string // of the form field
+	text string // as typed
+	set  func(*project.Spec) (string, error)
+}
+
+// apply takes every field of the form that differs from what the form showed.
+// All changes are tried together first, so that two that only fit together are
+// taken; when the document then does not build, they are tried one by one.
+func (e *edit) apply(form url.Values) {
+	changes := e.differences(form)
+	if action := form.Get("action"); action != "" {
+		changes = append(changes, change{path: "action", text: action, set: func(s *project.Spec) (string, error) { return act(s, e.variant, action) }})
+	}
+	if e.together(changes) {
+		return
+	}
+	for _, c := range changes {
+		e.alone(c)
+	}
+}
+
+// together applies all changes to a copy and keeps it when it builds.
+func (e *edit) together(changes []change) bool {
+	trial := e.spec.Clone()
+	var said []string
+	for _, c := range changes {
+		text, err := c.set(trial)
+		if err != nil {
+			return false
+		}
+		if text != "" {
+			said = append(said, text)
+		}
+	}
+	if _, err := trial.Build(); err != nil {
+		return false
+	}
+	e.spec, e.changes = trial, append(e.changes, said...)
+	return true
+}
+
+// alone applies one change, or says why it is refused.
+func (e *edit) alone(c change) {
+	trial := e.spec.Clone()
+	said, err := c.set(trial)
+	if err == nil {
+		_, err = trial.Build()
+	}
+	if err != nil {
+		e.refused = append(e.refused, views.Refusal{Path: c.path, Text: c.text, Why: e.why(err)})
+		return
+	}
+	e.spec = trial
+	if said != "" {
+		e.changes = append(e.changes, said)
+	}
+}
+
+func (e *edit) why(err error) string {
+	var list []string
+	for _, one := range input.Errors(err) {
+		list = append(list, capital(one.Sentence(e.sys))+".")
+	}
+	if len(list) == 0 {
+		return capital(err.Error()) + "."
+	}
+	return strings.Join(slices.Compact(list), " ")
+}
+
+func capital(s string) string {
+	if s == "" {
+		return s
+	}
+	r := []rune(s)
+	return strings.ToUpper(string(r[:1])) + string(r[1:])
+}
+
+// differences lists the fields whose text is not what the form showed.
+func (e *edit) differences(form url.Values) []change {
+	var list []change
+	shown := input.Walk(e.base)
+	for _, entry := range shown {
+		if form.Has(entry.Path) {
+			text := tidy(form.Get(entry.Path))
+			if text != tidy(views.EntryText(entry, e.sys)) {
+				list = append(list, e.value(entry, text))
+			}
+		}
+		if kind := form.Get("basis:" + entry.Path); kind != "" {
+			if c, ok := e.basis(entry, kind); ok {
+				list = append(list, c)
+			}
+		}
+	}
+	return list
+}
+
+// tidy makes the line ends of a text area comparable.
+func tidy(text string) string { return strings.TrimSpace(strings.ReplaceAll(text, "\r\n", "\n")) }
+
+// value is the change of one input to what was typed.
+func (e *edit) value(shown input.Entry, text string) change {
+	sys := e.sys
+	before := views.EntryText(shown, sys)
+	return change{path: shown.Path, text: text, set: func(s *project.Spec) (string, error) {
+		entry, ok := input.Find(s, shown.Path)
+		if !ok {
+			return "", &input.Error{Path: shown.Path, Text: text, Accepts: "nothing: another window has removed this meanwhile", Err: input.ErrConflict}
+		}
+		if now := views.EntryText(entry, sys); tidy(now) != tidy(before) && tidy(now) != text {
+			return "", &input.Error{Path: shown.Path, Text: text, Accepts: "another window has set it to " + clipText(now) + " meanwhile; type it again to overrule", Err: input.ErrConflict}
+		}
+		return set(entry, text, sys)
+	}}
+}
+
+// set puts the typed text into the input and says what changed; nothing when the value is the same.
+func set(entry input.Entry, text string, sys units.System) (string, error) {
+	switch {
+	case entry.Number != nil:
+		v, err := entry.Number.Parse(text, sys)
+		if err != nil {
+			return "", err
+		}
+		old := *entry.Number.Value
+		if v == old {
+			return "", nil
+		}
+		*entry.Number.Value = v
+		q := entry.Number.Quantity
+		return fmt.Sprintf("%s %s → %s", entry.Label(), withUnit(sys, q, old), withUnit(sys, q, v)), nil
+	case entry.Table != nil:
+		rows, err := entry.Table.ParseRows(text, sys)
+		if err != nil {
+			return "", err
+		}
+		*entry.Table.Value = rows
+		return fmt.Sprintf("%s: %d rows", entry.Label(), len(rows)), nil
+	case entry.Choice != nil:
+		*entry.Choice.Value = text
+	default:
+		*entry.Text.Value = text
+	}
+	return fmt.Sprintf("%s: %s", entry.Label(), clipText(text)), nil
+}
+
+func withUnit(sys units.System, q units.Quantity, si float64) string {
+	return strings.TrimSpace(sys.Entry(q, si) + " " + sys.Unit(q).Symbol)
+}
+
+func clipText(s string) string {
+	if r := []rune(s); len(r) > 40 {
+		return string(r[:40]) + "…"
+	}
+	return s
+}
+
+// basis is the change of where an aircraft input comes from.
+func (e *edit) basis(shown input.Entry, kind string) (change, bool) {
+	path, ok := strings.CutPrefix(shown.Path, fmt.Sprintf("variants[%d].aircraft.", e.variant))
+	if !ok || e.base.Variants[e.variant].BasisOf(path).Kind == kind {
+		return change{}, false
+	}
+	return change{path: "basis:" + shown.Path, text: kind, set: func(s *project.Spec) (string, error) {
+		v := &s.Variants[e.variant]
+		b := v.BasisOf(path)
+		b.Kind = kind
+		if v.Basis == nil {
+			v.Basis = map[string]project.Basis{}
+		}
+		v.Basis[path] = b
+		return fmt.Sprintf("%s is now %s", shown.Label(), basisWord(kind)), nil
+	}}, true
+}
+
+func basisWord(kind string) string {
+	for _, o := range project.BasisKinds {
+		if o.Value == kind {
+			return o.Label
+		}
+	}
+	return kind
+}

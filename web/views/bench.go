@@ -1,0 +1,419 @@
+package views
+
+import (
+	"bytes"
+	"fmt"
+	"strconv"
+	"time"
+
+	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/pointperf"
+	"legwright/internal/perf/project"
+	"legwright/internal/perf/study"
+	"legwright/internal/perf/units"
+	"legwright/web/charts"
+)
+
+// A Bench is the page of one variant: inputs at one side, results at the other.
+type Bench struct {
+	Title      string
+	ProjectURL string
+	Project    string
+	Variant    string
+	Variants   []Link
+	Action     string // where edits are posted, with the view's query
+	UndoURL    string
+	RedoURL    string
+	SystemURL  string
+	Systems    []Option
+	System     string
+	Revision   string
+	Saved      string
+	CanUndo    bool
+	CanRedo    bool
+	Message    string // about the edit just made
+	Refused    int
+	Verdict    Verdict
+	Tiles      []Tile
+	Groups     []Group
+	View       ViewForm
+	Speeds     []Row
+	Charts     Charts
+	Strips     []StripTable
+	Climb      Grid
+	Legs       Grid
+	Figures    []Row
+	Warnings   []WarningView
+	Weak       string // how many inputs are placeholders
+	WorkingURL string
+}
+
+// A Link is a way to another page.
+type Link struct {
+	Label, URL string
+	Current    bool
+}
+
+// A Verdict is the sentence that answers.
+type Verdict struct {
+	Headline string
+	Tone     string // good, caution or bad
+	Tightest string
+	Missed   string
+}
+
+// A Tile is one requirement held against its figure.
+type Tile struct {
+	Value, Caption, Word, Tone string
+}
+
+// A Row is a name and a value with its remark.
+type Row struct {
+	Label  string
+	Value  string
+	Remark string
+	Weak   bool   // rests on placeholders
+	Why    string // which
+}
+
+// A Grid is a table with heads.
+type Grid struct {
+	Caption string
+	Note    string
+	Head    []string
+	Rows    [][]string
+	Reason  string // why it is empty
+}
+
+// A StripTable is a take-off or landing by segment.
+type StripTable struct {
+	Title    string
+	Sentence string
+	Tone     string
+	Rows     []Row
+	Caution  string
+}
+
+// A WarningView is one warning as shown.
+type WarningView struct {
+	Code, Level, Word, Text, Clear string
+}
+
+// A ViewForm is the condition of the thrust chart.
+type ViewForm struct {
+	URL       string
+	Altitude  Field
+	Mass      Field
+	Deviation Field
+	Config    Field
+	Errors    []string
+}
+
+// A ChartView is a chart drawn twice, for wide and narrow pages, with its data.
+type ChartView struct {
+	ID, Title, Sentence string
+	Wide, Narrow        string
+	Table               charts.Table
+}
+
+// Charts are the bench's charts.
+type Charts struct {
+	Thrust, Power, Climb, Mission ChartView
+}
+
+// A BenchState is what the bench shows beside the study itself.
+type BenchState struct {
+	ProjectID int64
+	Revision  int64
+	Saved     time.Time
+	CanUndo   bool
+	CanRedo   bool
+	Query     string // of the view, with its question mark, or empty
+	Refusals  []Refusal
+	Message   string
+	View      []Refusal // conditions of the view that were not understood
+}
+
+// NewBench makes the page of a study.
+func NewBench(s *study.Study, st BenchState) Bench {
+	spec, v := s.Project.Spec, s.Variant()
+	sys := spec.System()
+	base := fmt.Sprintf("/projects/%d", st.ProjectID)
+	here := base + "/variants/" + v.ID
+	b := Bench{
+		Title: v.Name + " · " + spec.Name, ProjectURL: base, Project: spec.Name, Variant: v.Name, Action: here + st.Query,
+		UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query, WorkingURL: here + "/working" + st.Query,
+		System: string(sys), Revision: strconv.FormatInt(st.Revision, 10), Saved: st.Saved.Local().Format("15:04:05"),
+		CanUndo: st.CanUndo, CanRedo: st.CanRedo, Message: st.Message, Refused: len(st.Refusals),
+	}
+	for i := range spec.Variants {
+		o := &spec.Variants[i]
+		b.Variants = append(b.Variants, Link{o.Name, base + "/variants/" + o.ID + st.Query, i == s.Index})
+	}
+	for _, o := range units.Systems {
+		b.Systems = append(b.Systems, Option{string(o), o.Label(), o == sys})
+	}
+	b.Verdict = newVerdict(s, sys)
+	b.Tiles = tiles(s, sys)
+	b.Groups = newForm(spec, s.Index, st.Refusals).groups()
+	summarise(b.Groups, s, sys)
+	b.View = newViewForm(s, sys, here, st)
+	b.Speeds = speeds(s, sys)
+	b.Charts = newCharts(s, sys)
+	b.Strips = []StripTable{stripTable("Take-off", s.TakeOff, sys, spec.Technique.TakeOffFactor), stripTable("Landing", s.Landing, sys, spec.Technique.LandingFactor)}
+	b.Climb, b.Legs = climbGrid(s, sys), legGrid(s, sys)
+	b.Figures = figures(s, sys)
+	for _, w := range s.Warnings {
+		b.Warnings = append(b.Warnings, WarningView{w.Code, string(w.Level), levelWord(w.Level), sentence(w.Text.In(sys)), w.Clear})
+	}
+	if n := len(s.Placeholders()); n > 0 {
+		b.Weak = fmt.Sprintf("%d of the aircraft's inputs are placeholders; a figure that rests on one is marked.", n)
+	}
+	return b
+}
+
+func levelWord(l study.Level) string {
+	switch l {
+	case study.Stop:
+		return "Stop"
+	case study.Caution:
+		return "Caution"
+	}
+	return "Note"
+}
+
+// newVerdict words the answer to: does it fly the mission, and where is it tightest.
+func newVerdict(s *study.Study, sys units.System) Verdict {
+	f := &s.Flight
+	var v Verdict
+	switch {
+	case f.Failure != nil:
+		v.Tone = "bad"
+		v.Headline = fmt.Sprintf("Does not fly the mission: it ends in “%s”.", f.Failure.Name)
+		v.Tightest = sentence(f.Failure.Reason.In(sys))
+	case len(f.Legs) == 0:
+		v.Tone, v.Headline = "caution", "The mission has no legs."
+	case f.Reserve.Asked && !f.Reserve.Met:
+		v.Tone = "bad"
+		v.Headline = fmt.Sprintf("Flies the mission but not the reserve: %s of %s.", sys.Format(units.Duration, f.Reserve.Flown), sys.Format(units.Duration, f.Reserve.Wanted))
+		v.Tightest = sentence(f.Reserve.Reason.In(sys))
+	case f.Tightest != nil:
+		v.Tone = "good"
+		v.Headline = fmt.Sprintf("Flies the mission, with %.0f\u00a0%% thrust in hand at its tightest.", 100*f.Tightest.Ratio())
+	default:
+		v.Tone, v.Headline = "good", "Flies the mission."
+	}
+	if t := f.Tightest; t != nil {
+		where := fmt.Sprintf("Tightest in “%s”, %s in: %s available, %s required at %s, %s and %s.", legName(s, t.Leg), sys.Format(units.Duration, t.Time-legStart(s, t.Leg)),
+			sys.Format(units.Force, t.Available), sys.Format(units.Force, t.Required), sys.Format(units.Speed, t.TAS), sys.Format(units.Altitude, t.Altitude), sys.Format(units.Mass, t.Mass))
+		if v.Tightest != "" {
+			where = v.Tightest + " " + where
+		}
+		v.Tightest = where
+	}
+	v.Missed = missed(s)
+	if v.Missed != "" && v.Tone == "good" {
+		v.Tone = "caution"
+	}
+	return v
+}
+
+func missed(s *study.Study) string {
+	var names []string
+	for i := range s.Requirements {
+		r := &s.Requirements[i]
+		if !r.Met && r.Figure != nil {
+			names = append(names, lowerFirst(r.Figure.Label))
+		}
+	}
+	n := len(s.Requirements)
+	switch {
+	case n == 0:
+		return ""
+	case len(names) == 0:
+		return ""
+	case len(names) == 1:
+		return fmt.Sprintf("Misses one requirement of %d: %s.", n, names[0])
+	}
+	text := fmt.Sprintf("Misses %d requirements of %d: ", len(names), n)
+	for i, name := range names {
+		if i > 0 {
+			text += ", "
+		}
+		text += name
+	}
+	return text + "."
+}
+
+func lowerFirst(s string) string {
+	if len(s) > 1 && s[1] >= 'a' && s[1] <= 'z' {
+		return string(s[0]|0x20) + s[1:]
+	}
+	return s
+}
+
+func legName(s *study.Study, i int) string {
+	l := s.Project.Spec.Legs[i]
+	if l.Name != "" {
+		return l.Name
+	}
+	return l.Kind
+}
+
+func legStart(s *study.Study, leg int) float64 {
+	if leg < len(s.Flight.Legs) {
+		return s.Flight.Legs[leg].Start.Time
+	}
+	return 0
+}
+
+func tiles(s *study.Study, sys units.System) []Tile {
+	var list []Tile
+	for i := range s.Requirements {
+		r := &s.Requirements[i]
+		if r.Figure == nil {
+			continue
+		}
+		sign := "≤"
+		if r.Requirement.Bound == project.AtLeast {
+			sign = "≥"
+		}
+		t := Tile{Caption: lowerFirst(r.Figure.Label) + ", " + sign + " " + sys.Format(r.Figure.Quantity, r.Requirement.Limit)}
+		switch {
+		case !r.Judged():
+			t.Value, t.Word, t.Tone = "–", "not judged: "+r.Reason.In(sys), "caution"
+		case r.Met:
+			t.Value, t.Word, t.Tone = sys.Format(r.Figure.Quantity, r.Figure.Value), "met", "good"
+		default:
+			t.Value, t.Word, t.Tone = sys.Format(r.Figure.Quantity, r.Figure.Value), "missed", "bad"
+		}
+		list = append(list, t)
+	}
+	return list
+}
+
+// summarise gives each group its line of what matters.
+func summarise(groups []Group, s *study.Study, sys units.System) {
+	spec, a := s.Project.Spec, s.Aircraft()
+	aspect := a.Span() * a.Span() / a.WingArea()
+	strip := spec.Strips[0]
+	lines := map[string]string{
+		"airframe":     fmt.Sprintf("%s · A %.1f · CDmin %s", sys.Format(units.Area, a.WingArea()), aspect, sys.Number(units.Coefficient, a.Polar(aircraft.Clean).Minimum())),
+		"weights":      sys.Format(units.Mass, s.Masses.Start) + " at start",
+		"strip":        fmt.Sprintf("%s, %s", sys.Format(units.FieldLength, strip.Length), sys.Format(units.Altitude, strip.Elevation)),
+		"mission":      fmt.Sprintf("%d legs", len(spec.Legs)),
+		"requirements": fmt.Sprint(len(spec.Requirements)),
+		"names":        sys.Label(),
+	}
+	if len(s.Static.Limits.Words()) == 0 && s.Static.Shaft.Speed > 0 {
+		lines["powerplant-propeller"] = fmt.Sprintf("%s at rest", sys.Format(units.Rotation, s.Static.Shaft.Speed))
+	}
+	lines["powerplant-fuel"] = sys.Format(units.Mass, s.Masses.Fuel)
+	lines["powerplant-engine"] = sys.Format(units.Power, s.Static.Shaft.Power) + " at rest"
+	for i := range groups {
+		groups[i].Summary = lines[groups[i].ID]
+	}
+}
+
+// newViewForm makes the condition line of the thrust chart.
+func newViewForm(s *study.Study, sys units.System, here string, st BenchState) ViewForm {
+	number := func(name, label string, q units.Quantity, si float64) Field {
+		return Field{Path: name, ID: "view-" + name, Label: label, Kind: "number", Value: sys.Entry(q, si), Unit: sys.Unit(q).Symbol}
+	}
+	v := ViewForm{URL: here, Altitude: number("altitude", "altitude", units.Altitude, s.View.Altitude), Mass: number("mass", "mass", units.Mass, s.View.Mass),
+		Deviation: number("isa", "ISA", units.TemperatureStep, s.View.Deviation), Config: Field{Path: "config", ID: "view-config", Label: "configuration", Kind: "choice"}}
+	for _, c := range []aircraft.Config{aircraft.Clean, aircraft.TakeOff, aircraft.Landing} {
+		v.Config.Options = append(v.Config.Options, Option{c.String(), c.String(), c == s.View.Config})
+	}
+	for _, r := range st.View {
+		for _, f := range []*Field{&v.Altitude, &v.Mass, &v.Deviation} {
+			if f.Path == r.Path {
+				f.Value, f.Error = r.Text, r.Why
+			}
+		}
+		v.Errors = append(v.Errors, r.Why)
+	}
+	return v
+}
+
+func speeds(s *study.Study, sys units.System) []Row {
+	sp := &s.Speeds
+	speed := func(b pointperf.Best) string {
+		return sys.Format(units.Speed, b.TAS) + " · " + sys.Number(units.Speed, float64(s.Point.Air.CAS(b.TAS))) + " CAS"
+	}
+	row := func(label string, b pointperf.Best, extra string) Row {
+		if b.Err != nil {
+			return Row{Label: label, Value: "none", Remark: sentence(units.Explain(b.Err).In(sys))}
+		}
+		if b.Bound != "" {
+			extra = extra + ", " + b.Bound
+		}
+		return Row{Label: label, Value: speed(b), Remark: trimComma(extra)}
+	}
+	list := []Row{
+		row("Stall", sp.Stall, ""),
+		row("Best angle of climb", sp.BestAngle, sys.Format(units.Angle, sp.BestAngle.Value)),
+		row("Best rate of climb", sp.BestRate, sys.Format(units.ClimbRate, sp.BestRate.Value)),
+		row("Least power required", sp.LeastPower, sys.Format(units.Power, sp.LeastPower.Value)),
+		row("Least thrust required", sp.LeastThrust, sys.Format(units.Force, sp.LeastThrust.Value)),
+		row("Carson", sp.Carson, sys.Format(units.Force, sp.Carson.Value)),
+		row("Level maximum", sp.LevelMax, sys.Format(units.Force, sp.LevelMax.Value)),
+	}
+	if sp.LevelMin.Err == nil && sp.LevelMin.Bound == "" {
+		list = append(list, row("Level minimum", sp.LevelMin, ""))
+	}
+	if g := s.Glide; g.Ratio > 0 {
+		drag := "idle without thrust"
+		if g.Windmills {
+			drag = "with the idling propeller's drag"
+		}
+		list = append(list, Row{Label: "Best glide", Value: sys.Format(units.Speed, g.RatioTAS), Remark: fmt.Sprintf("1 : %.1f, %s", g.Ratio, drag)},
+			Row{Label: "Least sink", Value: sys.Format(units.Speed, g.SinkTAS), Remark: sys.Format(units.ClimbRate, g.Sink)})
+	}
+	return list
+}
+
+func trimComma(s string) string {
+	if len(s) > 1 && s[0] == ',' {
+		return s[2:]
+	}
+	return s
+}
+
+func newCharts(s *study.Study, sys units.System) Charts {
+	return Charts{
+		Thrust:  chartView(charts.ThrustChart(s, sys)),
+		Power:   chartView(charts.PowerChart(s, sys)),
+		Climb:   chartView(charts.ClimbChart(s, sys)),
+		Mission: chartView(charts.MissionChart(s, sys)),
+	}
+}
+
+// chartView draws a chart. Writing to a buffer cannot fail.
+func chartView(c charts.Chart) ChartView {
+	var wide, narrow bytes.Buffer
+	_ = c.SVG(&wide)
+	_ = c.Narrow().SVG(&narrow)
+	return ChartView{ID: c.ID, Title: c.Title, Sentence: c.Desc, Wide: wide.String(), Narrow: narrow.String(), Table: c.Table()}
+}
+
+func figures(s *study.Study, sys units.System) []Row {
+	list := make([]Row, len(s.Figures))
+	for i := range s.Figures {
+		f := &s.Figures[i]
+		list[i] = Row{Label: f.Label, Remark: f.Where.In(sys)}
+		if f.Has() {
+			list[i].Value = sys.Format(f.Quantity, f.Value)
+		} else {
+			list[i].Value, list[i].Remark = "none", sentence(f.Reason.In(sys))
+		}
+		if weak := s.Unsure(f); len(weak) > 0 {
+			list[i].Weak = true
+			list[i].Why = fmt.Sprintf("rests on %d placeholders", len(weak))
+			if len(weak) == 1 {
+				list[i].Why = "rests on a placeholder"
+			}
+		}
+	}
+	return list
+}
