@@ -337,6 +337,7 @@ class Flight:
 
     def path(self, leg):
         a, start, inclined = self.a, self.mass, leg["kind"] in ("climb", "descent")
+        circles = leg["kind"] == "loiter" or leg["kind"] == "reserve" and leg["extent"] == "time"
         if leg["kind"] == "reserve":
             self.hp = leg["altitude"]
 
@@ -344,7 +345,8 @@ class Flight:
             hp, mass = y[1], start - y[2]
             air, v = self.air(hp), self.speed(leg, hp, mass)
             if not inclined:
-                return [v - leg["head_wind"], 0.0, a.level(air, mass, v)[0]]
+                ground = 0.0 if circles else v - leg["head_wind"]
+                return [ground, 0.0, a.level(air, mass, v)[0]]
             if leg["kind"] == "climb":
                 thrust, flow = a.plant.run(air, v, 1.0)
                 lost = flow * air.ratio / (v * math.sin(a.angle(air, mass, v, thrust)))

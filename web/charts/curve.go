@@ -126,6 +126,9 @@ func (c curve) hiddenBy(b box) float64 {
 	for _, run := range c {
 		for j := 1; j < len(run); j++ {
 			p, q := run[j-1], run[j]
+			if max(p.x, q.x) < b.x0 || min(p.x, q.x) > b.x1 || max(p.y, q.y) < b.y0 || min(p.y, q.y) > b.y1 {
+				continue
+			}
 			// Liang and Barsky, A new concept and method for line clipping, 1984.
 			t0, t1 := 0.0, 1.0
 			for _, side := range [4][2]float64{

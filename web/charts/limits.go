@@ -81,4 +81,6 @@ func dayWords(sys units.System, deviation float64) string {
 func reason(sys units.System, err error) string { return units.Explain(err).In(sys) }
 
 // massWords says a mass in kg with the digits that it needs.
-func massWords(sys units.System, mass float64) string { return measureOf(sys, units.Mass, mass).text(mass) }
+func massWords(sys units.System, mass float64) string {
+	return measureOf(sys, units.Mass, mass).text(mass)
+}

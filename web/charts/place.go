@@ -94,6 +94,7 @@ func (s *site) take(c choice, must bool) (words, bool) {
 // of its visible x range.
 func (s *site) alongCurve(c curve, w words, wanted float64) (words, bool) {
 	const steps, off = 24, 5.0
+	w = w.measured()
 	var x extent
 	for _, run := range c {
 		for _, p := range run {
@@ -150,6 +151,7 @@ func besides(c, sideways curve, w words, at point, off float64, area box) []word
 // within places the label of a band inside it, or next to it where it is too thin.
 func (s *site) within(r bandRun, w words) (words, bool) {
 	const steps = 16
+	w = w.measured()
 	x0, x1 := r.lower[0].x, r.lower[len(r.lower)-1].x
 	lower, upper := curve{r.lower}, curve{r.upper}
 	var best choice
@@ -179,6 +181,7 @@ func (s *site) within(r bandRun, w words) (words, bool) {
 // along places the label of a horizontal line near its right end, or where there is room.
 func (s *site) along(y float64, w words) (words, bool) {
 	const steps = 12
+	w = w.measured()
 	var best choice
 	for i := range steps + 1 {
 		share := float64(i) / steps
@@ -201,6 +204,7 @@ type callout struct {
 // around places the callout of a flag inside the data area.
 func (s *site) around(at point, w words) callout {
 	const padX, padY = 6, 3.5
+	w = w.measured()
 	width, height := w.width()+2*padX, (ascent+descent)*w.size+2*padY
 	var best box
 	lowest := math.Inf(1)

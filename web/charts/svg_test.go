@@ -56,7 +56,7 @@ func render(t interface{ Fatalf(string, ...any) }, c Chart) (string, element) {
 
 func bothForms() []Chart {
 	var all []Chart
-	for _, c := range sampleCharts() {
+	for _, c := range append(sampleCharts(), studyCharts()...) {
 		all = append(all, c, c.Narrow())
 	}
 	return all

@@ -29,7 +29,8 @@ type words struct {
 	size   float64 // in points, > 0
 	bold   bool
 	class  string
-	extra  string // further CSS classes, such as a halo
+	extra  string  // further CSS classes, such as a halo
+	wide   float64 // the width in points once measured, else 0
 }
 
 // Shares of the text size that a line takes above and below its baseline.
@@ -39,7 +40,18 @@ const (
 	middle  = 0.34 // from the baseline to the middle of a figure
 )
 
-func (w words) width() float64 { return textWidth(w.text, w.size, w.bold) }
+func (w words) width() float64 {
+	if w.wide > 0 {
+		return w.wide
+	}
+	return textWidth(w.text, w.size, w.bold)
+}
+
+// measured keeps the width for those who try many places for the same words.
+func (w words) measured() words {
+	w.wide = w.width()
+	return w
+}
 
 func (w words) box() box {
 	n := w.width()

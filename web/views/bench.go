@@ -7,6 +7,7 @@ import (
 	"time"
 
 	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/mission"
 	"legwright/internal/perf/pointperf"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/study"
@@ -37,7 +38,7 @@ type Bench struct {
 	Tiles      []Tile
 	Groups     []Group
 	View       ViewForm
-	Speeds     []Row
+	Speeds     Speeds
 	Charts     Charts
 	Strips     []StripTable
 	Climb      Grid
@@ -74,6 +75,18 @@ type Row struct {
 	Remark string
 	Weak   bool   // rests on placeholders
 	Why    string // which
+}
+
+// Speeds is the table of the speeds of note.
+type Speeds struct {
+	Unit string
+	Rows []SpeedRow
+}
+
+// A SpeedRow is one speed of note and what is best there.
+type SpeedRow struct {
+	Label, TAS, CAS, There string
+	Remark                 string
 }
 
 // A Grid is a table with heads.
@@ -204,7 +217,7 @@ func newVerdict(s *study.Study, sys units.System) Verdict {
 		v.Tone, v.Headline = "good", "Flies the mission."
 	}
 	if t := f.Tightest; t != nil {
-		where := fmt.Sprintf("Tightest in “%s”, %s in: %s available, %s required at %s, %s and %s.", legName(s, t.Leg), sys.Format(units.Duration, t.Time-legStart(s, t.Leg)),
+		where := fmt.Sprintf("Tightest %s “%s”: %s available, %s required at %s, %s and %s.", whenIn(s, t, sys), legName(s, t.Leg),
 			sys.Format(units.Force, t.Available), sys.Format(units.Force, t.Required), sys.Format(units.Speed, t.TAS), sys.Format(units.Altitude, t.Altitude), sys.Format(units.Mass, t.Mass))
 		if v.Tightest != "" {
 			where = v.Tightest + " " + where
@@ -260,11 +273,20 @@ func legName(s *study.Study, i int) string {
 	return l.Kind
 }
 
-func legStart(s *study.Study, leg int) float64 {
-	if leg < len(s.Flight.Legs) {
-		return s.Flight.Legs[leg].Start.Time
+// whenIn says when in its leg a sample stands.
+func whenIn(s *study.Study, t *mission.Sample, sys units.System) string {
+	if t.Leg >= len(s.Flight.Legs) {
+		return "in"
 	}
-	return 0
+	l := &s.Flight.Legs[t.Leg]
+	since := t.Time - l.Start.Time
+	switch {
+	case since < 1:
+		return "at the start of"
+	case l.Time-since < 1:
+		return "at the end of"
+	}
+	return sys.Format(units.Duration, since) + " into"
 }
 
 func tiles(s *study.Study, sys units.System) []Tile {
@@ -298,12 +320,13 @@ func summarise(groups []Group, s *study.Study, sys units.System) {
 	aspect := a.Span() * a.Span() / a.WingArea()
 	strip := spec.Strips[0]
 	lines := map[string]string{
-		"airframe":     fmt.Sprintf("%s · A %.1f · CDmin %s", sys.Format(units.Area, a.WingArea()), aspect, sys.Number(units.Coefficient, a.Polar(aircraft.Clean).Minimum())),
-		"weights":      sys.Format(units.Mass, s.Masses.Start) + " at start",
-		"strip":        fmt.Sprintf("%s, %s", sys.Format(units.FieldLength, strip.Length), sys.Format(units.Altitude, strip.Elevation)),
-		"mission":      fmt.Sprintf("%d legs", len(spec.Legs)),
-		"requirements": fmt.Sprint(len(spec.Requirements)),
-		"names":        sys.Label(),
+		"configurations": fmt.Sprintf("CLmax %s / %s / %s", sys.Number(units.Coefficient, a.CLMax(aircraft.Clean)), sys.Number(units.Coefficient, a.CLMax(aircraft.TakeOff)), sys.Number(units.Coefficient, a.CLMax(aircraft.Landing))),
+		"airframe":       fmt.Sprintf("%s · A %.1f · CDmin %s", sys.Format(units.Area, a.WingArea()), aspect, sys.Number(units.Coefficient, a.Polar(aircraft.Clean).Minimum())),
+		"weights":        sys.Format(units.Mass, s.Masses.Start) + " at start",
+		"strip":          fmt.Sprintf("%s, %s", sys.Format(units.FieldLength, strip.Length), sys.Format(units.Altitude, strip.Elevation)),
+		"mission":        fmt.Sprintf("%d legs", len(spec.Legs)),
+		"requirements":   fmt.Sprint(len(spec.Requirements)),
+		"names":          sys.Label(),
 	}
 	if len(s.Static.Limits.Words()) == 0 && s.Static.Shaft.Speed > 0 {
 		lines["powerplant-propeller"] = fmt.Sprintf("%s at rest", sys.Format(units.Rotation, s.Static.Shaft.Speed))
@@ -336,56 +359,56 @@ func newViewForm(s *study.Study, sys units.System, here string, st BenchState) V
 	return v
 }
 
-func speeds(s *study.Study, sys units.System) []Row {
+// speeds lists the speeds of note of the view.
+func speeds(s *study.Study, sys units.System) Speeds {
 	sp := &s.Speeds
-	speed := func(b pointperf.Best) string {
-		return sys.Format(units.Speed, b.TAS) + " · " + sys.Number(units.Speed, float64(s.Point.Air.CAS(b.TAS))) + " CAS"
+	table := Speeds{Unit: sys.Unit(units.Speed).Symbol}
+	add := func(label string, tas float64, there, remark string) {
+		table.Rows = append(table.Rows, SpeedRow{label, sys.Number(units.Speed, tas), sys.Number(units.Speed, float64(s.Point.Air.CAS(tas))), there, remark})
 	}
-	row := func(label string, b pointperf.Best, extra string) Row {
+	row := func(label string, b pointperf.Best, q units.Quantity) {
 		if b.Err != nil {
-			return Row{Label: label, Value: "none", Remark: sentence(units.Explain(b.Err).In(sys))}
+			table.Rows = append(table.Rows, SpeedRow{Label: label, TAS: "none", Remark: sentence(units.Explain(b.Err).In(sys))})
+			return
 		}
-		if b.Bound != "" {
-			extra = extra + ", " + b.Bound
+		there := ""
+		if q != units.Coefficient {
+			there = sys.Format(q, b.Value)
 		}
-		return Row{Label: label, Value: speed(b), Remark: trimComma(extra)}
+		add(label, b.TAS, there, b.Bound)
 	}
-	list := []Row{
-		row("Stall", sp.Stall, ""),
-		row("Best angle of climb", sp.BestAngle, sys.Format(units.Angle, sp.BestAngle.Value)),
-		row("Best rate of climb", sp.BestRate, sys.Format(units.ClimbRate, sp.BestRate.Value)),
-		row("Least power required", sp.LeastPower, sys.Format(units.Power, sp.LeastPower.Value)),
-		row("Least thrust required", sp.LeastThrust, sys.Format(units.Force, sp.LeastThrust.Value)),
-		row("Carson", sp.Carson, sys.Format(units.Force, sp.Carson.Value)),
-		row("Level maximum", sp.LevelMax, sys.Format(units.Force, sp.LevelMax.Value)),
-	}
+	row("Stall", sp.Stall, units.Coefficient)
+	row("Best angle", sp.BestAngle, units.Angle)
+	row("Best rate", sp.BestRate, units.ClimbRate)
+	row("Least power", sp.LeastPower, units.Power)
+	row("Least thrust", sp.LeastThrust, units.Force)
+	row("Carson", sp.Carson, units.Force)
 	if sp.LevelMin.Err == nil && sp.LevelMin.Bound == "" {
-		list = append(list, row("Level minimum", sp.LevelMin, ""))
+		row("Level minimum", sp.LevelMin, units.Force)
 	}
+	row("Level maximum", sp.LevelMax, units.Force)
 	if g := s.Glide; g.Ratio > 0 {
-		drag := "idle without thrust"
+		drag := "idling without thrust or drag"
 		if g.Windmills {
 			drag = "with the idling propeller's drag"
 		}
-		list = append(list, Row{Label: "Best glide", Value: sys.Format(units.Speed, g.RatioTAS), Remark: fmt.Sprintf("1 : %.1f, %s", g.Ratio, drag)},
-			Row{Label: "Least sink", Value: sys.Format(units.Speed, g.SinkTAS), Remark: sys.Format(units.ClimbRate, g.Sink)})
+		add("Best glide", g.RatioTAS, fmt.Sprintf("1 : %.1f", g.Ratio), drag)
+		add("Least sink", g.SinkTAS, sys.Format(units.ClimbRate, g.Sink), "")
 	}
-	return list
+	return table
 }
 
-func trimComma(s string) string {
-	if len(s) > 1 && s[0] == ',' {
-		return s[2:]
-	}
-	return s
-}
-
+// newCharts draws the charts at about the width that the page gives them, so that their text keeps its size.
 func newCharts(s *study.Study, sys units.System) Charts {
+	sized := func(c charts.Chart, width, height float64) ChartView {
+		c.Width, c.Height = width, height
+		return chartView(c)
+	}
 	return Charts{
-		Thrust:  chartView(charts.ThrustChart(s, sys)),
-		Power:   chartView(charts.PowerChart(s, sys)),
-		Climb:   chartView(charts.ClimbChart(s, sys)),
-		Mission: chartView(charts.MissionChart(s, sys)),
+		Thrust:  sized(charts.ThrustChart(s, sys), 520, 330),
+		Power:   sized(charts.PowerChart(s, sys), 420, 300),
+		Climb:   sized(charts.ClimbChart(s, sys), 420, 300),
+		Mission: sized(charts.MissionChart(s, sys), 860, 400),
 	}
 }
 

@@ -162,7 +162,8 @@ func (f *form) groups() []Group {
 	v := &f.spec.Variants[f.variant].Aircraft
 	list := []Group{
 		{ID: "airframe", Title: "Airframe", Open: true, Blocks: []Block{
-			{Fields: f.under(a + ".airframe")},
+			{Fields: f.under(a + ".airframe")}}},
+		{ID: "configurations", Title: "Flaps and gear", Blocks: []Block{
 			{Title: "Clean", Fields: f.under(a + ".airframe.clean")},
 			{Title: "Take-off", Fields: f.under(a + ".airframe.take_off")},
 			{Title: "Landing", Fields: f.under(a + ".airframe.landing")}}},

@@ -127,6 +127,11 @@ func (l *Leg) byTime() bool {
 	return l.Kind == Taxi || l.Kind == Loiter || ((l.Kind == Cruise || l.Kind == Reserve) && l.Extent == ByTime)
 }
 
+// stays reports whether the leg circles over one place and so covers no ground.
+func (l *Leg) stays() bool {
+	return l.Kind == Loiter || (l.Kind == Reserve && l.Extent == ByTime)
+}
+
 func (l *Leg) byDistance() bool {
 	return (l.Kind == Cruise || l.Kind == Reserve) && l.Extent != ByTime
 }

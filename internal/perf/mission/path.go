@@ -254,6 +254,9 @@ func (r *rider) rates(_ float64, y, dydt []float64) error {
 		return err
 	}
 	dydt[atDistance] = m.tas*math.Cos(m.climb.Angle) - r.l.HeadWind
+	if r.l.stays() {
+		dydt[atDistance] = 0
+	}
 	dydt[atAltitude] = m.climb.PressureRate
 	dydt[atFuel], dydt[atEnergy] = m.out.FuelFlow, m.out.BusPower
 	return nil

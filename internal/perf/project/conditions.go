@@ -37,6 +37,21 @@ func (c condition) shape() *shape {
 	return s
 }
 
+// concerns reports whether c decides about the input of that name.
+func (c condition) concerns(name string) bool {
+	return slices.ContainsFunc(c.entries, func(e input.Entry) bool { return e.Path == name })
+}
+
+// holds reports whether o's choices are those of c.
+func (c condition) holds(o object) bool {
+	for _, a := range c.choices {
+		if !slices.Contains(a.values, o.value.Field(o.node.field(a.name).index).String()) {
+			return false
+		}
+	}
+	return true
+}
+
 // conditions finds by trial of every combination of choices which inputs of
 // type t matter when: the Inputs methods are the only place where that is written.
 func conditions(t reflect.Type) rules {

@@ -29,20 +29,19 @@ func Decode(text []byte) (*Spec, error) {
 	s := &Spec{}
 	d.value(document(), reflect.ValueOf(s).Elem(), "", d.text.whole())
 	d.complete(s)
+	rest := errors.Join(s.head(), input.Check(s), s.references())
 	if len(d.errs) == 0 {
-		_, err := s.Build()
-		if err == nil {
+		if _, rest = s.Build(); rest == nil {
 			return s, nil
 		}
-		if d.errs = input.Errors(err); len(d.errs) == 0 {
-			return nil, err
-		}
-		return nil, d.report()
 	}
-	for _, e := range input.Errors(errors.Join(s.head(), input.Check(s), s.references())) {
+	for _, e := range input.Errors(rest) {
 		if !d.explained(e.Path) {
 			d.errs = append(d.errs, e)
 		}
+	}
+	if len(d.errs) == 0 {
+		return nil, rest
 	}
 	return nil, d.report()
 }
@@ -53,7 +52,16 @@ type decoder struct {
 	errs    []*input.Error
 	failed  map[string]bool // paths at which errs stand, also those that were one too many
 	places  map[string]int  // where each value begins, by path
+	objects []object
 	missing []missing
+	open    map[string]bool // inputs of which nobody can say whether they matter, by path
+}
+
+// An object is a struct that was read.
+type object struct {
+	path  string
+	node  *node
+	value reflect.Value
 }
 
 // A missing field may yet turn out to be idle.
@@ -84,16 +92,40 @@ func (d *decoder) complete(s *Spec) {
 		}
 	}
 	entries = byPath(s)
+	d.open = d.undecided(entries)
 	for _, m := range d.missing {
 		e := entries[m.path]
 		switch {
-		case e.Idle:
+		case e.Idle, d.open[m.path]:
 		case e.Number != nil:
 			d.fail(&input.Error{Path: m.path, Spec: e.Number.Spec, Err: input.ErrRequired})
 		default:
 			d.fail(&input.Error{Path: m.path, Accepts: m.node.accepts(), Err: input.ErrRequired})
 		}
 	}
+}
+
+// undecided lists the inputs that matter or not by a choice that is itself wrong:
+// what is missing or out of range there is not reported before the choice is right.
+func (d *decoder) undecided(entries map[string]input.Entry) map[string]bool {
+	open := map[string]bool{}
+	for _, o := range d.objects {
+		wrong := func(f *node) bool {
+			path := under(o.path, f.name)
+			return f.entry.Choice != nil && (d.failed[path] || entries[path].Check() != nil)
+		}
+		if !slices.ContainsFunc(o.node.fields, wrong) {
+			continue
+		}
+		rules := o.node.rules()
+		for _, f := range o.node.fields {
+			needs := func(c condition) bool { return c.concerns(f.name) && c.holds(o) }
+			if rules.idle[f.name] && !slices.ContainsFunc(rules.when, needs) {
+				open[under(o.path, f.name)] = true
+			}
+		}
+	}
+	return open
 }
 
 func byPath(s *Spec) map[string]input.Entry {
@@ -104,10 +136,11 @@ func byPath(s *Spec) map[string]input.Entry {
 	return entries
 }
 
-// explained reports whether an error already stands at path or at a part of the document that holds it.
+// explained reports whether an error at path follows from what was already found
+// there, in a part of the document that holds it, or in the choice that governs it.
 func (d *decoder) explained(path string) bool {
 	for p := range prefixes(path) {
-		if d.failed[p] {
+		if d.failed[p] || d.open[p] {
 			return true
 		}
 	}

@@ -160,6 +160,18 @@ func TestDecodeStopsAtTwoHundredErrors(t *testing.T) {
 	}
 }
 
+// A wrong choice is one error, not one for each input that it governs; what other choices need is still reported.
+func TestDecodeWaitsForTheChoice(t *testing.T) {
+	text := encoded(t, Demo())
+	start, end := bytes.Index(text, []byte(`"legs": [`)), bytes.Index(text, []byte(`"requirements": [`))
+	legs := `"legs": [{"name": "a", "kind": "climb", "speed_rule": "tass", "speed": 1, "path": "rate", "rate": 1000, "day_given": "project", "head_wind": 0}, {"name": "b"}],`
+	_, err := Decode(bytes.Join([][]byte{text[:start], []byte(legs), text[end:]}, nil))
+	want := []string{"legs[0].altitude", "legs[0].speed_rule", "legs[0].rate", "legs[1].kind"}
+	if got := paths(err); !reflect.DeepEqual(got, want) {
+		t.Errorf("got %v, want %v", got, want)
+	}
+}
+
 // What a document may leave out takes the zero value or the first option.
 func TestDecodeFillsWhatMayBeMissing(t *testing.T) {
 	text := encoded(t, Demo())

@@ -114,7 +114,7 @@ func (n *node) shape() *shape {
 // where the object's choices do not change it and otherwise under their condition.
 func (n *node) objectShape() *shape {
 	s := &shape{Type: "object", Additional: false}
-	rules := conditions(n.typ)
+	rules := n.rules()
 	for _, f := range n.fields {
 		p := f.shape()
 		r, ok := rules.always[f.name]

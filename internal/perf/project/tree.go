@@ -66,6 +66,7 @@ type node struct {
 	entry    input.Entry  // describes a leaf that is an input, under a zero value's choices
 	fixed    *shape       // describes a leaf by its place; it goes before entry
 	fields   []*node      // of an object, in order
+	rules    func() rules // of an object; found on first use
 	item     *node        // of a list or map
 	kinds    []*node      // the values of each kind of powerplant
 	size     size         // of a list, table or map
@@ -89,6 +90,7 @@ func grow(t reflect.Type, path string) *node {
 		n.form, n.size = aTable, size{0, maxItems}
 	case t.Kind() == reflect.Struct:
 		n.form = anObject
+		n.rules = sync.OnceValue(func() rules { return conditions(t) })
 		n.growFields(path)
 	case t.Kind() == reflect.Slice:
 		n.form, n.item, n.size = aList, grow(t.Elem(), path), size{0, maxItems}

@@ -71,8 +71,8 @@ func (r *Run) idleFlow(a *aircraft.Aircraft, p *pointperf.Point) {
 	}
 }
 
-// brakedRoll integrates from the touchdown true airspeed in m/s to a stop. No
-// lift is counted on: the wing is taken at the lift coefficient of the take-off run.
+// brakedRoll integrates from the touchdown true airspeed in m/s to a stop, with
+// the wing in ground effect at the lift coefficient of the take-off run.
 func brakedRoll(a *aircraft.Aircraft, p *pointperf.Point, at Place, how Technique, touchdown float64) (Segment, error) {
 	phi := polar.GroundEffect(a.WingHeight(), a.Span(), nil)
 	tilt := math.Atan(at.Strip.Slope)
