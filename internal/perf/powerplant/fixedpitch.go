@@ -114,7 +114,7 @@ func (p *fixedPitch) lowest(c Condition, setting float64, w *formula.Working) (O
 	if setting > 0 && c.TAS > 0 && !p.prop.Windmills() {
 		jLow, jHigh := p.prop.Range()
 		if end := p.prop.CT(jHigh); end > 1e-6 {
-			return Output{}, &SpeedError{c.TAS, &propeller.RangeError{J: jHigh * 1.001, Low: jLow, High: jHigh}}
+			return Output{}, &SpeedError{c.TAS, &propeller.RangeError{Low: jLow, High: jHigh, Beyond: true}}
 		}
 	}
 	return p.idle(c, w)

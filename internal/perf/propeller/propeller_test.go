@@ -75,7 +75,7 @@ func TestPowerThroughZero(t *testing.T) {
 	if cp := p.CP(high); !(high > 0.8 && high < 1) || math.Abs(cp) > 1e-9 {
 		t.Errorf("the useful range ends at J %v, where CP is %v", high, cp)
 	}
-	if _, err := propeller.NewFixed(1.8, [][]float64{{0, 0.1, -0.05}, {0.5, 0.06, -0.04}, {0.8, 0, -0.01}}); err == nil || !strings.Contains(err.Error(), "never pass through zero") {
+	if _, err := propeller.NewFixed(1.8, [][]float64{{0, 0, -0.05}, {0.5, -0.06, -0.04}, {0.8, -0.1, -0.01}}); err == nil || !strings.Contains(err.Error(), "never pass through zero") {
 		t.Errorf("negative power throughout: %v", err)
 	}
 	for _, c := range []struct {
@@ -85,6 +85,9 @@ func TestPowerThroughZero(t *testing.T) {
 		{[][]float64{{0, 0.1, 0.05}, {0, 0.06, 0.04}}, "thrust coefficients: table point 2"},
 		{[][]float64{{0, 0.1, 0.05}}, "at least two points"},
 		{[][]float64{{0, 0.1, math.NaN()}, {1, 0.1, 0.1}}, "power coefficients: table point 1"},
+		{[][]float64{{0, 0.1, 0.05}, {0.5, 0.06, 0.02}, {0.8, 0, 0.01}}, "row 2 has an efficiency of 1.50, which is above 1"},
+		{[][]float64{{0, 0.1, 0.02}, {0.5, 0.03, 0.02}, {0.8, 0, 0.01}}, "row 1 has more thrust than momentum theory allows"},
+		{[][]float64{{0, 0.1, 0.05}, {0.5, 0.03, -0.02}, {0.8, 0, 0.01}}, "row 2 gives thrust without taking power"},
 	} {
 		if _, err := propeller.NewFixed(1.8, c.rows); err == nil || !strings.Contains(err.Error(), c.want) {
 			t.Errorf("%v: %v, want %q", c.rows, err, c.want)

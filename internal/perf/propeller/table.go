@@ -27,7 +27,10 @@ func NewFixed(diameter float64, rows [][]float64) (*Fixed, error) {
 		j[i], ct[i], cp[i] = r[0], r[1], r[2]
 	}
 	p := &Fixed{Diameter: diameter}
-	var err error
+	err := possible(rows)
+	if err != nil {
+		return nil, err
+	}
 	if p.ct, err = numeric.NewTable(j, ct); err != nil {
 		return nil, fmt.Errorf("thrust coefficients: %w", err)
 	}
@@ -58,13 +61,35 @@ func (p *Fixed) CP(j float64) float64 { cp, _ := p.cp.At(j); return cp }
 // idling propeller's drag is known.
 func (p *Fixed) Windmills() bool { return p.CT(p.jMax) < 0 }
 
+// possible checks that no row gives more power than it takes, or more static
+// thrust than momentum theory allows for its power: CT <= (π/2)^(1/3) CP^(2/3)
+// (H. Glauert, Airplane Propellers, 1935, chapter II, in coefficients).
+func possible(rows [][]float64) error {
+	for i, r := range rows {
+		j, ct, cp := r[0], r[1], r[2]
+		switch {
+		case ct > 0 && cp <= 0:
+			return fmt.Errorf("row %d gives thrust without taking power", i+1)
+		case ct > 0 && j*ct > cp:
+			return fmt.Errorf("row %d has an efficiency of %.2f, which is above 1", i+1, j*ct/cp)
+		case ct > 0 && ct > math.Cbrt(math.Pi/2)*math.Cbrt(cp*cp):
+			return fmt.Errorf("row %d has more thrust than momentum theory allows for its power, CT %.4f against %.4f", i+1, ct, math.Cbrt(math.Pi/2)*math.Cbrt(cp*cp))
+		}
+	}
+	return nil
+}
+
 // A RangeError reports an advance ratio outside a propeller's table.
 type RangeError struct {
-	J         float64 // advance ratio asked for, dimensionless
+	J         float64 // advance ratio asked for, dimensionless; 0 with Beyond
 	Low, High float64 // ends of the table, dimensionless
+	Beyond    bool    // an advance ratio somewhere above High is needed
 }
 
 func (e *RangeError) Error() string {
+	if e.Beyond {
+		return fmt.Sprintf("so little thrust needs an advance ratio above %.3f, the end of the propeller table", e.High)
+	}
 	return fmt.Sprintf("an advance ratio of %.3f lies outside the propeller table, %.3f to %.3f", e.J, e.Low, e.High)
 }
 
