@@ -43,6 +43,7 @@ type Bench struct {
 	Strips     []StripTable
 	Climb      Grid
 	Legs       Grid
+	Plant      Grid
 	Figures    []Row
 	Warnings   []WarningView
 	Weak       string // how many inputs are placeholders
@@ -174,7 +175,7 @@ func NewBench(s *study.Study, st BenchState) Bench {
 	b.Speeds = speeds(s, sys)
 	b.Charts = newCharts(s, sys)
 	b.Strips = []StripTable{stripTable("Take-off", s.TakeOff, sys, spec.Technique.TakeOffFactor), stripTable("Landing", s.Landing, sys, spec.Technique.LandingFactor)}
-	b.Climb, b.Legs = climbGrid(s, sys), legGrid(s, sys)
+	b.Climb, b.Legs, b.Plant = climbGrid(s, sys), legGrid(s, sys), plantGrid(s, sys)
 	b.Figures = figures(s, sys)
 	for _, w := range s.Warnings {
 		b.Warnings = append(b.Warnings, WarningView{w.Code, string(w.Level), levelWord(w.Level), sentence(w.Text.In(sys)), w.Clear})

@@ -22,7 +22,10 @@ func stripTable(title string, s study.Strip, sys units.System, factor float64) S
 		return t
 	}
 	run := &s.Run
-	t.Rows = append(t.Rows, Row{Label: "Stall", Value: sys.Format(units.Speed, run.Stall)})
+	air := s.Place.Air
+	t.Rows = append(t.Rows,
+		Row{Label: "Density altitude", Value: sys.Format(units.Altitude, air.DensityAltitude()), Remark: sys.Format(units.Altitude, air.PressureAltitude) + " pressure altitude, " + sys.Format(units.Temperature, air.Temperature)},
+		Row{Label: "Stall", Value: sys.Format(units.Speed, run.Stall), Remark: sys.Format(units.Mass, s.Mass)})
 	for _, seg := range run.Segments {
 		remark := sys.Format(units.ShortTime, seg.Time)
 		if seg.Speed > 0 {
@@ -78,6 +81,28 @@ func legGrid(s *study.Study, sys units.System) Grid {
 		}
 		g.Rows = append(g.Rows, []string{legName(s, i), sys.Number(units.Duration, l.Time), sys.Number(units.Distance, l.Distance), sys.Number(units.Altitude, l.End.Altitude),
 			tas, sys.Number(units.Mass, l.End.Mass), sys.Number(units.Mass, l.Fuel), leastInHand(s, i)})
+	}
+	return g
+}
+
+// plantGrid is the powerplant at the end of every leg.
+func plantGrid(s *study.Study, sys units.System) Grid {
+	g := Grid{Caption: "The powerplant at the end of each leg", Head: []string{"Leg", "Lever, %", "Share of rating, %", "Fuel flow" + unitOf(sys, units.FuelFlow),
+		"Engine speed" + unitOf(sys, units.Rotation), "Propeller efficiency, %", "Tip Mach"}}
+	for i := range s.Flight.Legs {
+		l := &s.Flight.Legs[i]
+		if l.Leg.Kind == mission.Landing {
+			continue
+		}
+		o := &l.End.Output
+		row := []string{legName(s, i), units.Fixed(100*l.End.Setting, 0), units.Fixed(100*o.Fraction, 0), sys.Number(units.FuelFlow, o.FuelFlow), "–", "–", "–"}
+		if o.Shaft.Speed > 0 {
+			row[4], row[6] = sys.Number(units.Rotation, o.Shaft.EngineSpeed), units.Fixed(o.Shaft.TipMach, 2)
+			if o.Shaft.Efficiency > 0 {
+				row[5] = units.Fixed(100*o.Shaft.Efficiency, 0)
+			}
+		}
+		g.Rows = append(g.Rows, row)
 	}
 	return g
 }

@@ -284,9 +284,7 @@ func (r *rider) moment(y []float64) (moment, error) {
 	case Climb, Descent:
 		err = r.inclined(&m, y[atAltitude])
 	default:
-		var level pointperf.Level
-		level, err = pointperf.LevelAt(r.f.a, &m.point, tas)
-		m.required, m.setting, m.out = level.Required, level.Setting, level.Output
+		err = r.level(&m)
 	}
 	return m, err
 }

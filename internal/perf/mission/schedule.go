@@ -3,6 +3,7 @@ package mission
 import (
 	"math"
 
+	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
 	"legwright/internal/perf/numeric"
 	"legwright/internal/perf/pointperf"
@@ -39,12 +40,25 @@ func (f *flier) schedule(l *Leg, day atmos.Day) (schedule, error) {
 const climbNodes = 5
 
 // climbSchedule finds the best climb speed at a few altitudes between here and
-// the top, with the mass that a first estimate of the climb's fuel leaves.
+// the top, with the mass that a first estimate of the climb's fuel leaves. Where
+// there is no climb speed at the top, the altitudes end at the absolute ceiling.
 func (f *flier) climbSchedule(l *Leg, day atmos.Day) (schedule, error) {
-	from, to := f.now.Altitude, l.Altitude
-	if to-from < 1 {
-		to = from + 1
+	t, err := f.climbSpeeds(l, day, l.Altitude)
+	if err != nil {
+		ceiling, above := pointperf.Ceiling(f.a, day, f.now.Mass, aircraft.Clean, pointperf.AbsoluteRate)
+		if above != nil || ceiling >= l.Altitude {
+			return nil, err
+		}
+		if t, err = f.climbSpeeds(l, day, ceiling); err != nil {
+			return nil, err
+		}
 	}
+	return func(hp, _ float64) (float64, error) { v, _ := t.At(hp); return v, nil }, nil
+}
+
+// climbSpeeds tabulates the best climb speed from here to the altitude top in m.
+func (f *flier) climbSpeeds(l *Leg, day atmos.Day, top float64) (*numeric.Table, error) {
+	from, to := f.now.Altitude, math.Max(top, f.now.Altitude+1)
 	x, y := make([]float64, climbNodes), make([]float64, climbNodes)
 	mass := f.now.Mass
 	for i := range x {
@@ -69,11 +83,7 @@ func (f *flier) climbSchedule(l *Leg, day atmos.Day) (schedule, error) {
 			mass = math.Max(f.a.DryMass(), mass-out.FuelFlow*seconds)
 		}
 	}
-	t, err := numeric.NewTable(x, y)
-	if err != nil {
-		return nil, err
-	}
-	return func(hp, _ float64) (float64, error) { v, _ := t.At(hp); return v, nil }, nil
+	return numeric.NewTable(x, y)
 }
 
 const levelNodes = 3

@@ -1,7 +1,7 @@
 package pointperf
 
 import (
-	"errors"
+	"cmp"
 	"math"
 
 	"legwright/internal/perf/aircraft"
@@ -67,7 +67,7 @@ func bestLevel(a *aircraft.Aircraft, p *Point, merit func(Level) float64) (Level
 		if _, fast := levelBounds(a, p, vs, top); fast.Err != nil {
 			return Level{}, fast.Err
 		}
-		return Level{}, errors.Join(last, err)
+		return Level{}, cmp.Or(last, err)
 	}
 	return LevelAt(a, p, m.X)
 }

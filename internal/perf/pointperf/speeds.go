@@ -1,6 +1,7 @@
 package pointperf
 
 import (
+	"cmp"
 	"errors"
 	"math"
 
@@ -217,7 +218,7 @@ func bestClimb(a *aircraft.Aircraft, p *Point, of func(Climb) float64) Best {
 		return of(c)
 	}, vs, top, 12, 1e-7)
 	if err != nil {
-		return Best{Err: errors.Join(last, err)}
+		return Best{Err: cmp.Or(last, err)}
 	}
 	return Best{TAS: m.X, Value: m.F, Bound: boundAt(m.X, vs, top)}
 }

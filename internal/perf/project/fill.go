@@ -123,7 +123,7 @@ func (d *decoder) unknown(path string, m member, known []string) {
 
 // items lists the items of the array v, as many as size allows.
 func (d *decoder) items(path string, v span, s size) []span {
-	list, more := d.text.items(v, 1<<30)
+	list, more := d.text.items(v, s.most)
 	if more {
 		d.note(&input.Error{Path: path, Text: fmt.Sprintf("more than %d items", s.most), Accepts: fmt.Sprintf("at most %d items", s.most), Err: input.ErrRange})
 	}
