@@ -67,9 +67,9 @@ func (p *tab) listen(ev any) {
 	add := func(format string, args ...any) { p.problems = append(p.problems, fmt.Sprintf(format, args...)) }
 	switch e := ev.(type) {
 	case *runtime.EventExceptionThrown:
-		add("exception: %s", e.ExceptionDetails.Error())
+		add("exception: %s", exceptionText(e.ExceptionDetails))
 	case *runtime.EventConsoleAPICalled:
-		if e.Type == runtime.APITypeError || e.Type == runtime.APITypeWarning || e.Type == runtime.APITypeAssert {
+		if e.Type == runtime.ConsoleAPICalledTypeError || e.Type == runtime.ConsoleAPICalledTypeWarning || e.Type == runtime.ConsoleAPICalledTypeAssert {
 			var texts []string
 			for _, a := range e.Args {
 				texts = append(texts, string(a.Value)+a.Description)
@@ -78,7 +78,7 @@ func (p *tab) listen(ev any) {
 		}
 	case *log.EventEntryAdded:
 		// A status that the test expects is also logged by the browser.
-		if e.Entry.Level == log.LevelError && !(e.Entry.Source == log.SourceNetwork && p.expectedIn(e.Entry.Text)) {
+		if e.Entry.Level == log.EntryLevelError && !(e.Entry.Source == log.EntrySourceNetwork && p.expectedIn(e.Entry.Text)) {
 			add("log: %s %s", e.Entry.Text, e.Entry.URL)
 		}
 	case *network.EventLoadingFailed:
@@ -90,6 +90,13 @@ func (p *tab) listen(ev any) {
 			add("status %d: %s", e.Response.Status, e.Response.URL)
 		}
 	}
+}
+
+func exceptionText(d *runtime.ExceptionDetails) string {
+	if d.Exception != nil {
+		return d.Text + " " + d.Exception.Description
+	}
+	return d.Text
 }
 
 func (p *tab) expectedIn(text string) bool {

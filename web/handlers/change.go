@@ -126,8 +126,43 @@ func (e *edit) value(shown input.Entry, text string) change {
 		if now := views.EntryText(entry, sys); tidy(now) != tidy(before) && tidy(now) != text {
 			return "", &input.Error{Path: shown.Path, Text: text, Accepts: "another window has set it to " + clipText(now) + " meanwhile; type it again to overrule", Err: input.ErrConflict}
 		}
-		return set(entry, text, sys)
+		whose := owner(s, shown.Path)
+		said, err := set(entry, text, sys)
+		if said != "" {
+			said = whose + said
+		}
+		return said, err
 	}}
+}
+
+// owner names the part of the document that an input belongs to, where its label alone does not say it.
+func owner(s *project.Spec, path string) string {
+	dot := strings.LastIndexByte(path, '.')
+	if dot < 0 {
+		return ""
+	}
+	parent, last := path[:dot], path[dot+1:]
+	if last != "name" && !strings.HasSuffix(parent, "]") {
+		switch config := parent[strings.LastIndexByte(parent, '.')+1:]; config {
+		case "clean", "take_off", "landing":
+			return capital(strings.ReplaceAll(config, "_", "-")) + ": "
+		}
+		return ""
+	}
+	for _, sibling := range []string{"name", "figure"} {
+		e, ok := input.Find(s, parent+"."+sibling)
+		if !ok || last == sibling || strings.HasPrefix(parent, "variants[") && !strings.Contains(parent, ".") {
+			continue
+		}
+		text := views.EntryText(e, s.System())
+		if kind, ok := project.LookupFigure(text); ok {
+			text = kind.Label
+		}
+		if text != "" {
+			return clipText(text) + ": "
+		}
+	}
+	return ""
 }
 
 // set puts the typed text into the input and says what changed; nothing when the value is the same.

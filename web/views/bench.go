@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"fmt"
 	"strconv"
+	"strings"
 	"time"
 
 	"legwright/internal/perf/aircraft"
@@ -62,6 +63,7 @@ type Verdict struct {
 	Tone     string // good, caution or bad
 	Tightest string
 	Missed   string
+	Worst    []string // the gravest warnings that the headline does not say already
 }
 
 // A Tile is one requirement held against its figure.
@@ -226,7 +228,15 @@ func newVerdict(s *study.Study, sys units.System) Verdict {
 		v.Tightest = where
 	}
 	v.Missed = missed(s)
-	if v.Missed != "" && v.Tone == "good" {
+	for _, w := range s.Warnings {
+		if w.Level == study.Stop && w.Code != "mission-ends" && w.Code != "reserve-short" {
+			v.Worst = append(v.Worst, sentence(w.Text.In(sys)))
+		}
+	}
+	if len(v.Worst) > 2 {
+		v.Worst = append(v.Worst[:2], fmt.Sprintf("%s more below.", plural(len(v.Worst)-2)))
+	}
+	if (v.Missed != "" || len(v.Worst) > 0) && v.Tone == "good" {
 		v.Tone = "caution"
 	}
 	return v
@@ -234,29 +244,28 @@ func newVerdict(s *study.Study, sys units.System) Verdict {
 
 func missed(s *study.Study) string {
 	var names []string
+	open := 0
 	for i := range s.Requirements {
 		r := &s.Requirements[i]
-		if !r.Met && r.Figure != nil {
+		switch {
+		case !r.Judged():
+			open++
+		case !r.Met:
 			names = append(names, lowerFirst(r.Figure.Label))
 		}
 	}
-	n := len(s.Requirements)
-	switch {
-	case n == 0:
-		return ""
-	case len(names) == 0:
-		return ""
-	case len(names) == 1:
-		return fmt.Sprintf("Misses one requirement of %d: %s.", n, names[0])
+	text := ""
+	switch n := len(s.Requirements); len(names) {
+	case 0:
+	case 1:
+		text = fmt.Sprintf("Misses one requirement of %d: %s.", n, names[0])
+	default:
+		text = fmt.Sprintf("Misses %d requirements of %d: %s.", len(names), n, strings.Join(names, "; "))
 	}
-	text := fmt.Sprintf("Misses %d requirements of %d: ", len(names), n)
-	for i, name := range names {
-		if i > 0 {
-			text += ", "
-		}
-		text += name
+	if open > 0 {
+		text = strings.TrimSpace(text + " " + plural(open) + " cannot be judged.")
 	}
-	return text + "."
+	return text
 }
 
 func lowerFirst(s string) string {

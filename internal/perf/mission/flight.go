@@ -269,6 +269,9 @@ func (f *flier) takeOff(l *Leg) (*runway.Run, error) {
 	f.now.Altitude = at.Air.PressureAltitude
 	run, err := runway.TakeOff(f.a, f.now.Mass, at, f.plan.Technique)
 	run.Factor(f.plan.Technique.TakeOffFactor)
+	if err == nil {
+		err = onStrip(&run, at)
+	}
 	if err != nil {
 		return &run, err
 	}
@@ -305,6 +308,9 @@ func (f *flier) land(l *Leg, r *LegResult) (*runway.Run, error) {
 	f.now.Altitude = at.Air.PressureAltitude
 	run, err := runway.Landing(f.a, f.now.Mass, at, f.plan.Technique)
 	run.Factor(f.plan.Technique.LandingFactor)
+	if err == nil {
+		err = onStrip(&run, at)
+	}
 	if err != nil {
 		return &run, err
 	}
@@ -314,6 +320,15 @@ func (f *flier) land(l *Leg, r *LegResult) (*runway.Run, error) {
 	}
 	f.now.Time += run.Time()
 	return &run, nil
+}
+
+// onStrip refuses a ground roll that leaves the strip. A distance over the
+// obstacle that does is flown, and is a warning of the study.
+func onStrip(run *runway.Run, at runway.Place) error {
+	if run.Ground <= at.Strip.Length {
+		return nil
+	}
+	return units.Errorf(runway.ErrNoRun, "its ground roll of {} is longer than the strip, {}", units.Of(units.FieldLength, run.Ground), units.Of(units.FieldLength, at.Strip.Length))
 }
 
 func (f *flier) keep() { f.out.Trace = append(f.out.Trace, f.now) }

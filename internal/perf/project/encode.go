@@ -76,7 +76,7 @@ func (n *node) storable(v reflect.Value, path string) (errs []error) {
 			refuse(fmt.Sprint(v.Float()), n.accepts(), input.ErrRange)
 		}
 	case aText:
-		if utf8.ValidString("") == false {
+		if !utf8.ValidString(v.String()) {
 			refuse("bytes that are not UTF-8", n.accepts(), input.ErrRange)
 		}
 	}
