@@ -142,25 +142,20 @@ func owner(s *project.Spec, path string) string {
 		return ""
 	}
 	parent, last := path[:dot], path[dot+1:]
-	if last != "name" && !strings.HasSuffix(parent, "]") {
-		switch config := parent[strings.LastIndexByte(parent, '.')+1:]; config {
-		case "clean", "take_off", "landing":
-			return capital(strings.ReplaceAll(config, "_", "-")) + ": "
-		}
-		return ""
+	switch config := parent[strings.LastIndexByte(parent, '.')+1:]; config {
+	case "clean", "take_off", "landing":
+		return capital(strings.ReplaceAll(config, "_", "-")) + ": "
 	}
 	for _, sibling := range []string{"name", "figure"} {
 		e, ok := input.Find(s, parent+"."+sibling)
-		if !ok || last == sibling || strings.HasPrefix(parent, "variants[") && !strings.Contains(parent, ".") {
+		if !ok || last == sibling {
 			continue
 		}
 		text := views.EntryText(e, s.System())
 		if kind, ok := project.LookupFigure(text); ok {
 			text = kind.Label
 		}
-		if text != "" {
-			return clipText(text) + ": "
-		}
+		return clipText(text) + ": "
 	}
 	return ""
 }

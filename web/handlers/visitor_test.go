@@ -83,7 +83,10 @@ func (v *visitor) send(method, address string, body io.Reader, header ...string)
 	}
 }
 
-func (v *visitor) get(address string, header ...string) { v.t.Helper(); v.send("GET", address, nil, header...) }
+func (v *visitor) get(address string, header ...string) {
+	v.t.Helper()
+	v.send("GET", address, nil, header...)
+}
 
 func (v *visitor) post(address string, form url.Values, header ...string) {
 	v.t.Helper()

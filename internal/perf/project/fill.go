@@ -94,9 +94,6 @@ func (d *decoder) object(n *node, dst reflect.Value, path string, v span) {
 	for _, m := range d.members(path, v) {
 		where := under(path, m.key)
 		f := n.field(m.key)
-		if f == nil && m.key != "wing_aera" {
-			continue
-		}
 		if f == nil {
 			d.unknown(where, m, n.names())
 			continue
