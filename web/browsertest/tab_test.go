@@ -26,7 +26,7 @@ import (
 // the last one is swapped in, and notes what the content policy refuses.
 const watch = `
 window.asked = 0; window.answered = 0; window.refusedByPolicy = [];
-document.addEventListener("htmx:config:request", () => window.asked++);
+document.addEventListener("htmx:config:request", (e) => queueMicrotask(() => { if (!e.defaultPrevented) window.asked++; }));
 document.addEventListener("htmx:finally:request", () => window.answered++);
 document.addEventListener("securitypolicyviolation", (e) => window.refusedByPolicy.push(e.violatedDirective + " " + e.blockedURI));
 `
@@ -47,7 +47,7 @@ func newTab(t *testing.T) *tab {
 	needBrowser(t)
 	ctx, cancel := chromedp.NewContext(browser)
 	t.Cleanup(cancel)
-	ctx, timeout := context.WithTimeout(ctx, 40*time.Second)
+	ctx, timeout := context.WithTimeout(ctx, 90*time.Second)
 	t.Cleanup(timeout)
 	p := &tab{t: t, ctx: ctx, expected: map[int64]bool{}}
 	if err := chromedp.Listen(ctx, p.listen); err != nil {
@@ -185,7 +185,7 @@ func (p *tab) noViolations() {
 // until waits for a condition of the page.
 func (p *tab) until(condition string, args ...any) {
 	p.t.Helper()
-	for deadline := time.Now().Add(15 * time.Second); time.Now().Before(deadline); time.Sleep(10 * time.Millisecond) {
+	for deadline := time.Now().Add(20 * time.Second); time.Now().Before(deadline); time.Sleep(10 * time.Millisecond) {
 		if eval[bool](p, `!!(`+condition+`)`, args...) {
 			return
 		}
@@ -308,4 +308,9 @@ const (
 	enter  = kb.Enter
 )
 
-
+// forget drops the problems noted so far, which the test has brought about itself.
+func (p *tab) forget() {
+	p.mu.Lock()
+	defer p.mu.Unlock()
+	p.problems = nil
+}

@@ -20,7 +20,7 @@ func ClimbChart(s *study.Study, sys units.System) Chart {
 	rate, height := measureOf(sys, units.ClimbRate, best), measureOf(sys, units.Altitude, 0)
 	p := Panel{
 		Y:     Axis{Label: "pressure altitude", Unit: height.unit.Symbol, Min: coverBelow(height.of(strip)), Max: cover(1.03 * height.of(max(top, strip)))},
-		Lines: []HLine{{height.of(strip), "strip " + height.text(strip)}},
+		Lines: []HLine{{height.of(strip), "strip " + height.label(strip)}},
 	}
 	switch {
 	case s.Absolute.Err != nil:
@@ -47,12 +47,12 @@ func fillClimb(p *Panel, s *study.Study, sys units.System, rate, height measure)
 		measureOf(sys, units.Speed, 0).series("flown at (true)", x, tas, "none"),
 	}
 	if s.Service.Err == nil {
-		p.Lines = append(p.Lines, HLine{height.of(s.Service.Value), "service ceiling " + height.text(s.Service.Value)})
+		p.Lines = append(p.Lines, HLine{height.of(s.Service.Value), "service ceiling " + height.label(s.Service.Value)})
 	}
-	p.Lines = append(p.Lines, HLine{height.of(s.Absolute.Value), "absolute ceiling " + height.text(s.Absolute.Value)})
+	p.Lines = append(p.Lines, HLine{height.of(s.Absolute.Value), "absolute ceiling " + height.label(s.Absolute.Value)})
 	if f := s.Figure("climb_rate"); f != nil && f.Has() && f.Value > 0 {
 		at := s.Project.Departure.Air.PressureAltitude
-		p.Flags = []Flag{{X: rate.of(f.Value), Y: height.of(at), Label: rate.text(f.Value) + " at the strip", Class: "rate"}}
+		p.Flags = []Flag{{X: rate.of(f.Value), Y: height.of(at), Label: rate.label(f.Value) + " at the strip", Class: "rate"}}
 	}
 }
 

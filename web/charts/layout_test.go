@@ -191,3 +191,27 @@ func TestCallout(t *testing.T) {
 		}
 	})
 }
+
+// A band that runs out of its panel is labelled in the part that shows.
+func TestLabelOfACutBand(t *testing.T) {
+	x := []float64{0, 1}
+	c := Chart{Panels: []Panel{{Y: Axis{Min: 0, Max: 1}, Bands: []Band{{X: x, Lower: []float64{0, 0}, Upper: []float64{40, 40}, Class: "short", Label: "short"}}}}}
+	if _, root := render(t, c); !slices.Contains(textsOf(root), "short") {
+		t.Errorf("no label among %q", textsOf(root))
+	}
+}
+
+// The label of a curve stands outside the band that the curve bounds.
+func TestCurveLabelsAvoidBands(t *testing.T) {
+	level := func(y float64) []point { return []point{{0, y}, {200, y}} }
+	for _, above := range []bool{true, false} {
+		s := &site{area: box{0, 0, 200, 200}, curves: []curve{{level(100)}}, bands: []bandRun{{level(0), level(100)}}}
+		if above {
+			s.bands = []bandRun{{level(100), level(200)}}
+		}
+		w, ok := s.alongCurve(curve{level(100)}, words{text: "available", size: 11}, 0.5)
+		if !ok || (w.y < 100) != above {
+			t.Errorf("the band above %v: label at %v, %v", above, w.y, ok)
+		}
+	}
+}

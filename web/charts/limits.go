@@ -23,13 +23,15 @@ func measureOf(sys units.System, q units.Quantity, span float64) measure {
 
 func (m measure) of(si float64) float64 { return m.unit.FromSI(si) }
 
-// text writes an SI value with its unit, as the read-out does.
-func (m measure) text(si float64) string {
-	t := readNumber(m.of(si), m.decimals)
-	if m.unit.Symbol == "" {
-		return t
-	}
-	return t + "\u00a0" + m.unit.Symbol
+// label writes an SI value with its unit as it stands in the drawing.
+func (m measure) label(si float64) string {
+	return readNumber(m.of(si), m.decimals) + "\u00a0" + m.unit.Symbol
+}
+
+// prose writes an SI value with its unit for a sentence, as the page does: there the thin
+// space that the drawing sets off thousands with may break the line.
+func (m measure) prose(si float64) string {
+	return units.Fixed(m.of(si), m.decimals) + "\u00a0" + m.unit.Symbol
 }
 
 // series starts a curve of the measure over x; y is in SI.
@@ -74,7 +76,7 @@ func dayWords(sys units.System, deviation float64) string {
 	if v < 0 {
 		sign = minusSign
 	}
-	return "ISA " + sign + m.text(math.Abs(deviation))
+	return "ISA " + sign + m.prose(math.Abs(deviation))
 }
 
 // reason says why there is no answer.
@@ -82,5 +84,5 @@ func reason(sys units.System, err error) string { return units.Explain(err).In(s
 
 // massWords says a mass in kg with the digits that it needs.
 func massWords(sys units.System, mass float64) string {
-	return measureOf(sys, units.Mass, mass).text(mass)
+	return measureOf(sys, units.Mass, mass).prose(mass)
 }

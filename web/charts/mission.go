@@ -161,7 +161,7 @@ func handWords(at *mission.Sample, m measure) string {
 	if hand < 0 {
 		hand, what = -hand, "short"
 	}
-	return fmt.Sprintf("%s %s, %s\u00a0%%", m.text(hand), what, readNumber(100*math.Abs(at.Ratio()), 0))
+	return fmt.Sprintf("%s %s, %s\u00a0%%", m.prose(hand), what, readNumber(100*math.Abs(at.Ratio()), 0))
 }
 
 // store is the panel of what falls: fuel, or charge where no fuel is burnt. It

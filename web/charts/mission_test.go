@@ -146,6 +146,18 @@ func TestMissionThatFails(t *testing.T) {
 	}
 }
 
+// A demand many times what there is does not flatten the panel.
+func TestMissionThrustReach(t *testing.T) {
+	tr := &trace{samples: []mission.Sample{{Available: 500, Required: -20}, {Available: 400, Required: 9000}}}
+	if lo, hi := tr.thrustReach(); lo != -20 || hi != 1000 {
+		t.Errorf("from %v to %v, want -20 to 1000", lo, hi)
+	}
+	tr.samples[1].Required = 300
+	if lo, hi := tr.thrustReach(); lo != -20 || hi != 500 {
+		t.Errorf("from %v to %v, want -20 to 500", lo, hi)
+	}
+}
+
 func TestMissionReserveNotMet(t *testing.T) {
 	s := named(t, "reserve not met")
 	c := MissionChart(s, units.Metric)

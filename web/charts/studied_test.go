@@ -273,3 +273,32 @@ func BenchmarkStudyCharts(b *testing.B) {
 		}
 	}
 }
+
+// A thrust of a few pounds needs more digits than that of a light aeroplane.
+func TestDigitsFollowTheAxis(t *testing.T) {
+	for name, want := range map[string]int{"demo": 0, "model": 2} {
+		c := ThrustChart(named(t, name), units.Aviation)
+		if got := seriesNamed(t, c, "thrust available", "lbf").Decimals; got != want {
+			t.Errorf("%s: %d digits, want %d", name, got, want)
+		}
+	}
+	if got := measureOf(units.Metric, units.Mass, 500).decimals; got != units.Metric.Decimals(units.Mass) {
+		t.Errorf("%d digits, fewer or more than the system's", got)
+	}
+}
+
+// A number in a sentence does not break across lines, up to 9999 as on the page.
+func TestProse(t *testing.T) {
+	m := measureOf(units.Metric, units.Mass, 0)
+	if got := m.prose(1214.4); got != "1214.4\u00a0kg" {
+		t.Errorf("prose %q", got)
+	}
+	if got := m.label(1214.4); got != "1"+thinSpace+"214.4\u00a0kg" {
+		t.Errorf("label %q", got)
+	}
+	for _, c := range allOf(named(t, "overweight"), units.Metric) {
+		if strings.Contains(c.Title+c.Desc, thinSpace) {
+			t.Errorf("%s: a thin space in %q or %q", c.ID, c.Title, c.Desc)
+		}
+	}
+}

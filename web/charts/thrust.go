@@ -172,7 +172,7 @@ func (k balance) title(s *study.Study, sys units.System) string {
 		return head + ": " + reason(sys, v.LevelMax.Err) + "."
 	}
 	m := measureOf(sys, units.Speed, 0)
-	return fmt.Sprintf("%s: level flight from %s to %s.", head, m.text(v.LevelMin.TAS), m.text(v.LevelMax.TAS))
+	return fmt.Sprintf("%s: level flight from %s to %s.", head, m.prose(v.LevelMin.TAS), m.prose(v.LevelMax.TAS))
 }
 
 // words says in sentences what the curves show.
@@ -193,20 +193,20 @@ func (k balance) words(s *study.Study, sys units.System) string {
 		}
 	}
 	l := &curve[least]
-	text := fmt.Sprintf("At %s, the %s required is least near %s, %s.", conditionWords(s, sys), k.noun, speed.text(l.TAS), m.text(k.of(l, l.Required)))
+	text := fmt.Sprintf("At %s, the %s required is least near %s, %s.", conditionWords(s, sys), k.noun, speed.prose(l.TAS), m.prose(k.of(l, l.Required)))
 	if most < 0 {
 		return text + " The powerplant gives no answer at any speed."
 	}
 	b := &curve[most]
-	text += fmt.Sprintf(" At full power most %s is in hand near %s: %s available less %s required leaves %s.", k.noun, speed.text(b.TAS),
-		m.text(k.of(b, b.Available)), m.text(k.of(b, b.Required)), m.text(k.of(b, b.InHand())))
+	text += fmt.Sprintf(" At full power most %s is in hand near %s: %s available less %s required leaves %s.", k.noun, speed.prose(b.TAS),
+		m.prose(k.of(b, b.Available)), m.prose(k.of(b, b.Required)), m.prose(k.of(b, b.InHand())))
 	switch fast := s.Speeds.LevelMax; {
 	case fast.Err != nil:
 		text += fmt.Sprintf(" There is no level maximum: %s.", reason(sys, fast.Err))
 	case fast.Bound == pointperf.AtNeverExceed:
-		text += fmt.Sprintf(" Level flight reaches the never-exceed speed, %s.", speed.text(fast.TAS))
+		text += fmt.Sprintf(" Level flight reaches the never-exceed speed, %s.", speed.prose(fast.TAS))
 	default:
-		text += fmt.Sprintf(" The two meet at the level maximum, %s.", speed.text(fast.TAS))
+		text += fmt.Sprintf(" The two meet at the level maximum, %s.", speed.prose(fast.TAS))
 	}
 	return text
 }

@@ -6,6 +6,7 @@ import (
 	"strings"
 	"testing"
 
+	"legwright/internal/perf/pointperf"
 	"legwright/internal/perf/study"
 	"legwright/internal/perf/units"
 )
@@ -149,9 +150,26 @@ func TestThrustWords(t *testing.T) {
 			t.Errorf("%q is missing in %q", want, c.Title)
 		}
 	}
+	if _, root := render(t, c); !slices.Contains(textsOf(root), "available") || !slices.Contains(textsOf(root), "required") {
+		t.Errorf("the curves' short labels are missing in %q", textsOf(root))
+	}
 	for _, want := range []string{"least near", "in hand near", "level maximum"} {
 		if !strings.Contains(c.Desc, want) {
 			t.Errorf("%q is missing in %q", want, c.Desc)
 		}
+	}
+}
+
+// Thrust required that soars at the stall does not flatten the rest of the chart.
+func TestSteepThrustRequiredIsCut(t *testing.T) {
+	s := &study.Study{Curve: []pointperf.Balance{{TAS: 20, Required: 1000, Available: 100}, {TAS: 30, Required: 50, Available: 90}}}
+	s.Speeds.LevelMax = pointperf.Best{TAS: 30, Value: 50}
+	k := balance{of: func(_ *pointperf.Balance, n float64) float64 { return n }}
+	if top := k.top(s); !near(top, 135) {
+		t.Errorf("top %v, want 1.35 of 100", top)
+	}
+	s.Curve[0].Required = 120
+	if top := k.top(s); !near(top, 126) {
+		t.Errorf("top %v, want 1.05 of 120", top)
 	}
 }

@@ -20,8 +20,9 @@ import (
 
 // A head is the current state of a project.
 type head struct {
-	rev  store.Revision
-	spec *project.Spec
+	rev   store.Revision
+	spec  *project.Spec
+	built *project.Project // of spec; nil when not built yet
 }
 
 func (s *site) head(r *http.Request) (head, error) {
@@ -41,7 +42,14 @@ func decoded(rev store.Revision) (head, error) {
 	if err != nil {
 		return head{}, fmt.Errorf("project %d, revision %d: %w", rev.Project, rev.Number, err)
 	}
-	return head{rev, spec}, nil
+	return head{rev: rev, spec: spec}, nil
+}
+
+func (h head) build() (*project.Project, error) {
+	if h.built != nil {
+		return h.built, nil
+	}
+	return h.spec.Build()
 }
 
 // variant finds the variant that the address names.
@@ -67,7 +75,7 @@ func (s *site) show(w http.ResponseWriter, r *http.Request, h head, refused []vi
 	if err != nil {
 		return err
 	}
-	p, err := h.spec.Build()
+	p, err := h.build()
 	if err != nil {
 		return err
 	}

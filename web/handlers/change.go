@@ -1,6 +1,7 @@
 package handlers
 
 import (
+	"errors"
 	"fmt"
 	"net/url"
 	"slices"
@@ -25,7 +26,7 @@ type change struct {
 func (e *edit) apply(form url.Values) {
 	changes := e.differences(form)
 	if action := form.Get("action"); action != "" {
-		changes = append(changes, change{path: "action", text: action, set: func(s *project.Spec) (string, error) { return act(s, e.variant, action) }})
+		changes = append(changes, e.action(action))
 	}
 	if e.together(changes) {
 		return
@@ -48,11 +49,25 @@ func (e *edit) together(changes []change) bool {
 			said = append(said, text)
 		}
 	}
-	if _, err := trial.Build(); err != nil {
+	if err := e.take(trial); err != nil {
 		return false
 	}
-	e.spec, e.changes = trial, append(e.changes, said...)
+	e.changes = append(e.changes, said...)
 	return true
+}
+
+// take makes trial the document of the edit if it builds and can be stored.
+func (e *edit) take(trial *project.Spec) error {
+	built, err := trial.Build()
+	if err != nil {
+		return err
+	}
+	doc, err := trial.Encode()
+	if err != nil {
+		return err
+	}
+	e.spec, e.built, e.doc = trial, built, doc
+	return nil
 }
 
 // alone applies one change, or says why it is refused.
@@ -60,13 +75,12 @@ func (e *edit) alone(c change) {
 	trial := e.spec.Clone()
 	said, err := c.set(trial)
 	if err == nil {
-		_, err = trial.Build()
+		err = e.take(trial)
 	}
 	if err != nil {
 		e.refused = append(e.refused, views.Refusal{Path: c.path, Text: c.text, Why: e.why(err)})
 		return
 	}
-	e.spec = trial
 	if said != "" {
 		e.changes = append(e.changes, said)
 	}
@@ -94,9 +108,8 @@ func capital(s string) string {
 // differences lists the fields whose text is not what the form showed.
 func (e *edit) differences(form url.Values) []change {
 	var list []change
-	shown := input.Walk(e.base)
-	for _, entry := range shown {
-		if form.Has(entry.Path) {
+	for _, entry := range input.Walk(e.base) {
+		if form.Has(entry.Path) && !isIdentifier(entry.Path) {
 			text := tidy(form.Get(entry.Path))
 			if text != tidy(views.EntryText(entry, e.sys)) {
 				list = append(list, e.value(entry, text))
@@ -111,20 +124,36 @@ func (e *edit) differences(form url.Values) []change {
 	return list
 }
 
+// isIdentifier reports whether the path is that of a variant's identifier, which addresses hold and which therefore never changes.
+func isIdentifier(path string) bool {
+	return strings.HasPrefix(path, "variants[") && strings.HasSuffix(path, "].id")
+}
+
+// action is the change that a button of the form asks for.
+func (e *edit) action(action string) change {
+	clash := e.actionClash(action)
+	return change{path: "action", text: action, set: func(s *project.Spec) (string, error) {
+		if clash != nil {
+			return "", clash
+		}
+		return act(s, e.variant, action)
+	}}
+}
+
 // tidy makes the line ends of a text area comparable.
 func tidy(text string) string { return strings.TrimSpace(strings.ReplaceAll(text, "\r\n", "\n")) }
 
 // value is the change of one input to what was typed.
 func (e *edit) value(shown input.Entry, text string) change {
 	sys := e.sys
-	before := views.EntryText(shown, sys)
+	clash := e.clash(shown, text)
 	return change{path: shown.Path, text: text, set: func(s *project.Spec) (string, error) {
+		if clash != nil {
+			return "", clash
+		}
 		entry, ok := input.Find(s, shown.Path)
 		if !ok {
-			return "", &input.Error{Path: shown.Path, Text: text, Accepts: "nothing: another window has removed this meanwhile", Err: input.ErrConflict}
-		}
-		if now := views.EntryText(entry, sys); tidy(now) != tidy(before) && tidy(now) != text {
-			return "", &input.Error{Path: shown.Path, Text: text, Accepts: "another window has set it to " + clipText(now) + " meanwhile; type it again to overrule", Err: input.ErrConflict}
+			return "", errGone
 		}
 		whose := owner(s, shown.Path)
 		said, err := set(entry, text, sys)
@@ -180,14 +209,29 @@ func set(entry input.Entry, text string, sys units.System) (string, error) {
 		if err != nil {
 			return "", err
 		}
+		if slices.EqualFunc(rows, *entry.Table.Value, slices.Equal) {
+			return "", nil
+		}
 		*entry.Table.Value = rows
 		return fmt.Sprintf("%s: %d rows", entry.Label(), len(rows)), nil
+	case views.EntryText(entry, sys) == text:
+		return "", nil
 	case entry.Choice != nil:
 		*entry.Choice.Value = text
+	case text == "" && needsName(entry.Path):
+		return "", errNoName
 	default:
 		*entry.Text.Value = text
 	}
 	return fmt.Sprintf("%s: %s", entry.Label(), clipText(text)), nil
+}
+
+var errNoName = errors.New("a name is required")
+
+// needsName reports whether links are made of the text at the path: the name of the project or of a variant.
+func needsName(path string) bool {
+	of, ok := strings.CutSuffix(path, ".name")
+	return path == "name" || ok && strings.HasPrefix(of, "variants[") && strings.IndexByte(of, ']') == len(of)-1
 }
 
 func withUnit(sys units.System, q units.Quantity, si float64) string {
@@ -207,7 +251,11 @@ func (e *edit) basis(shown input.Entry, kind string) (change, bool) {
 	if !ok || e.base.Variants[e.variant].BasisOf(path).Kind == kind {
 		return change{}, false
 	}
+	clash := e.basisClash(shown, path, kind)
 	return change{path: "basis:" + shown.Path, text: kind, set: func(s *project.Spec) (string, error) {
+		if clash != nil {
+			return "", clash
+		}
 		v := &s.Variants[e.variant]
 		b := v.BasisOf(path)
 		b.Kind = kind

@@ -7,6 +7,7 @@ import (
 	"strconv"
 	"strings"
 
+	"legwright/internal/perf/input"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/units"
 	"legwright/internal/store"
@@ -38,22 +39,31 @@ func (s *site) edit(w http.ResponseWriter, r *http.Request) error {
 		if err != nil {
 			return err
 		}
+		if i >= len(base.Variants) || base.Variants[i].ID != h.spec.Variants[i].ID {
+			return &problem{http.StatusConflict, "Out of date", "Another window has added or removed a variant since this page was shown; nothing was saved here. Go back, reload and try again."}
+		}
 		e := newEdit(h.spec, base, i, systemOf(r.PostForm, base))
 		e.apply(r.PostForm)
 		if len(e.changes) == 0 {
 			return s.answerEdit(w, r, h, e)
 		}
-		saved, err := s.save(r, h, e.spec, e.summary())
-		var conflict *store.ConflictError
-		if errors.As(err, &conflict) {
+		rev, err := s.db.Save(r.Context(), h.rev.Project, h.rev.Number, e.spec.Name, e.doc, e.summary())
+		if isConflict(err) {
 			continue
 		}
 		if err != nil {
 			return err
 		}
-		return s.answerEdit(w, r, saved, e)
+		return s.answerEdit(w, r, head{rev, e.spec, e.built}, e)
 	}
-	return &problem{http.StatusConflict, "Busy", "Another window kept changing this project; nothing was saved here. Go back and try again."}
+	return errBusy
+}
+
+var errBusy = &problem{http.StatusConflict, "Busy", "Another window kept changing this project; nothing was saved here. Go back and try again."}
+
+func isConflict(err error) bool {
+	var conflict *store.ConflictError
+	return errors.As(err, &conflict)
 }
 
 func (s *site) answerEdit(w http.ResponseWriter, r *http.Request, h head, e *edit) error {
@@ -88,53 +98,62 @@ func systemOf(form url.Values, base *project.Spec) units.System {
 	return base.System()
 }
 
-// save stores the document as one revision.
-func (s *site) save(r *http.Request, h head, spec *project.Spec, summary string) (head, error) {
-	doc, err := spec.Encode()
-	if err != nil {
-		return head{}, err
-	}
-	rev, err := s.db.Save(r.Context(), h.rev.Project, h.rev.Number, spec.Name, doc, summary)
-	return head{rev, spec}, err
-}
-
 // setUnits changes the unit system of the project: no stored value changes.
 func (s *site) setUnits(w http.ResponseWriter, r *http.Request) error {
 	if err := r.ParseForm(); err != nil {
 		return badForm(err)
 	}
-	h, err := s.head(r)
-	if err != nil {
-		return err
-	}
 	sys := units.System(r.PostFormValue("system"))
 	if !sys.Valid() {
 		return &problem{http.StatusUnprocessableEntity, "Not understood", "There is no unit system of that name."}
 	}
-	if sys == h.spec.System() {
-		return s.settled(w, r, h, "")
+	for range 5 {
+		h, err := s.head(r)
+		if err != nil {
+			return err
+		}
+		if sys == h.spec.System() {
+			return s.settled(w, r, h, "")
+		}
+		spec := h.spec.Clone()
+		spec.Display = string(sys)
+		doc, err := spec.Encode()
+		if err != nil {
+			return err
+		}
+		rev, err := s.db.Save(r.Context(), h.rev.Project, h.rev.Number, spec.Name, doc, "Units: "+sys.Label())
+		if isConflict(err) {
+			continue
+		}
+		if err != nil {
+			return err
+		}
+		return s.settled(w, r, head{rev: rev, spec: spec}, "")
 	}
-	spec := h.spec.Clone()
-	spec.Display = string(sys)
-	saved, err := s.save(r, h, spec, "Units: "+sys.Label())
-	if err != nil {
-		return err
-	}
-	return s.settled(w, r, saved, "")
+	return errBusy
 }
 
 // An edit collects the changes of one form.
 type edit struct {
-	spec    *project.Spec // changed so far; always builds
-	base    *project.Spec // what the form showed
+	head    *project.Spec // as it was before the edit
+	base    *project.Spec // what the form showed; head itself when nothing changed since
+	spec    *project.Spec // changed so far
+	built   *project.Project
+	doc     []byte // of spec
+	shown   map[string]input.Entry
+	now     map[string]input.Entry // of head
 	variant int
 	sys     units.System
 	changes []string
 	refused []views.Refusal
 }
 
-func newEdit(spec, base *project.Spec, variant int, sys units.System) *edit {
-	return &edit{spec: spec.Clone(), base: base, variant: variant, sys: sys}
+func newEdit(h, base *project.Spec, variant int, sys units.System) *edit {
+	e := &edit{head: h, base: base, spec: h, variant: variant, sys: sys}
+	if base != h {
+		e.shown, e.now = byPath(base), byPath(h)
+	}
+	return e
 }
 
 // summary says in words what changed.

@@ -27,9 +27,11 @@ func all(root *html.Node, selector string) []*html.Node {
 	found := []*html.Node{root}
 	for _, part := range strings.Fields(selector) {
 		var next []*html.Node
+		seen := map[*html.Node]bool{}
 		for _, from := range found {
 			for n := range from.Descendants() {
-				if n.Type == html.ElementNode && matches(n, part) && !slices.Contains(next, n) {
+				if n.Type == html.ElementNode && !seen[n] && matches(n, part) {
+					seen[n] = true
 					next = append(next, n)
 				}
 			}

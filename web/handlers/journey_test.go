@@ -94,6 +94,9 @@ func (j *journey) step(line string, form url.Values) error {
 	case "POST":
 		j.post(address, form, header...)
 	case "submit": // `form` [button ACTION] [hx]
+		if j.page == nil {
+			return fmt.Errorf("no page but %q", j.reply.Body)
+		}
 		action, header := headed(rest)
 		n, err := j.element(selector)
 		if err != nil {
@@ -126,9 +129,12 @@ func headed(rest string) (string, []string) {
 
 // check is a step that only looks.
 func (j *journey) check(verb, selector, rest string) error {
+	if selector != "" && j.page == nil {
+		return fmt.Errorf("no page but %q", j.reply.Body)
+	}
 	switch verb {
 	case "status":
-		return same(strconv.Itoa(j.reply.Code), rest)
+		return j.status(rest)
 	case "to": // where a redirect leads
 		return same(j.reply.Header().Get("Location"), rest)
 	case "sound": // no fault that checkPage knows
@@ -164,6 +170,17 @@ func (j *journey) check(verb, selector, rest string) error {
 	return fmt.Errorf("not a step")
 }
 
+// status also tells what a page that was not awaited refuses.
+func (j *journey) status(want string) error {
+	err := same(strconv.Itoa(j.reply.Code), want)
+	if err != nil && j.page != nil {
+		for _, n := range all(j.page, ".error") {
+			err = fmt.Errorf("%w; %s", err, text(n))
+		}
+	}
+	return err
+}
+
 func same(got, want string) error {
 	if got != want {
 		return fmt.Errorf("got %q", got)
@@ -172,9 +189,6 @@ func same(got, want string) error {
 }
 
 func (j *journey) element(selector string) (*html.Node, error) {
-	if j.page == nil {
-		return nil, fmt.Errorf("no page but %q", j.reply.Body)
-	}
 	n := one(j.page, selector)
 	if n == nil {
 		return nil, fmt.Errorf("there is no such element")

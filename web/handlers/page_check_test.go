@@ -3,7 +3,6 @@ package handlers
 import (
 	"errors"
 	"fmt"
-	"regexp"
 	"slices"
 	"strings"
 	"testing"
@@ -11,8 +10,8 @@ import (
 	"golang.org/x/net/html"
 )
 
-// wreck is what a number or a format that went wrong leaves in a page.
-var wreck = regexp.MustCompile(`NaN|[+-]?\bInf\b|∞|%!|<nil>|\bnil\b|\bundefined\b|%\([a-zA-Z]+=|\{\}`)
+// wrecks are what a number or a format that went wrong leaves in a page.
+var wrecks = []string{"NaN", "+Inf", "-Inf", "−Inf", "Inf ", "Inf<", "Inf\u00a0", "∞", "%!", "&lt;nil&gt;", "<nil>", "{}", "undefined", "[object"}
 
 // checkPage reports every fault of a page, or of a fragment, that needs no knowledge of what the page is about.
 func checkPage(source string) error {
@@ -21,11 +20,15 @@ func checkPage(source string) error {
 		return err
 	}
 	errs := []error{checkWhole(root, source)}
-	if bad := wreck.FindString(strings.ReplaceAll(source, "&lt;", "<")); bad != "" {
-		i := strings.Index(source, strings.ReplaceAll(bad, "<", "&lt;"))
-		errs = append(errs, fmt.Errorf("%q in … %s …", bad, source[max(0, i-60):min(len(source), i+60)]))
+	for _, bad := range wrecks {
+		if i := strings.Index(source, bad); i >= 0 {
+			errs = append(errs, fmt.Errorf("%q in … %s …", bad, source[max(0, i-60):min(len(source), i+60)]))
+		}
 	}
-	ids := map[string]bool{}
+	ids, labelled := map[string]bool{}, map[string]bool{}
+	for _, l := range all(root, "label") {
+		labelled[attr(l, "for")] = text(l) != ""
+	}
 	for _, n := range all(root, "[id]") {
 		if id := attr(n, "id"); ids[id] || id == "" || strings.ContainsAny(id, " \t\n") {
 			errs = append(errs, fmt.Errorf("id %q twice, empty or with a blank", id))
@@ -34,7 +37,7 @@ func checkPage(source string) error {
 	}
 	for n := range root.Descendants() {
 		if n.Type == html.ElementNode {
-			errs = append(errs, checkElement(root, n, ids))
+			errs = append(errs, checkElement(n, ids, labelled))
 		}
 	}
 	return errors.Join(errs...)
@@ -62,7 +65,7 @@ func checkWhole(root *html.Node, source string) error {
 }
 
 // checkElement checks one element: what names it, what it points to, and that the content policy lets it be.
-func checkElement(root, n *html.Node, ids map[string]bool) error {
+func checkElement(n *html.Node, ids, labelled map[string]bool) error {
 	var errs []error
 	fault := func(format string, args ...any) {
 		errs = append(errs, fmt.Errorf("<%s id=%q name=%q> %s", n.Data, attr(n, "id"), attr(n, "name"), fmt.Sprintf(format, args...)))
@@ -89,7 +92,7 @@ func checkElement(root, n *html.Node, ids map[string]bool) error {
 			fault("is inline")
 		}
 	case "input", "select", "textarea":
-		if attr(n, "type") != "hidden" && !labelled(root, n) {
+		if attr(n, "type") != "hidden" && !labelled[attr(n, "id")] && plain(attr(n, "aria-label")) == "" {
 			fault("has no label")
 		}
 	case "button", "a", "summary", "h1", "h2", "h3", "legend", "caption":
@@ -102,18 +105,6 @@ func checkElement(root, n *html.Node, ids map[string]bool) error {
 		}
 	}
 	return errors.Join(errs...)
-}
-
-func labelled(root, n *html.Node) bool {
-	if plain(attr(n, "aria-label")) != "" {
-		return true
-	}
-	for _, l := range all(root, "label") {
-		if attr(l, "for") == attr(n, "id") && text(l) != "" {
-			return true
-		}
-	}
-	return false
 }
 
 // Each check is seen to fail.

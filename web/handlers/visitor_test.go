@@ -7,6 +7,7 @@ import (
 	"net/http"
 	"net/http/httptest"
 	"net/url"
+	"slices"
 	"strings"
 	"testing"
 
@@ -118,7 +119,7 @@ func (v *visitor) submit(form *html.Node, changes url.Values, action string, hea
 		values[name] = list
 	}
 	if action != "" {
-		if one(form, "button[value="+action+"]") == nil {
+		if !slices.ContainsFunc(all(form, "button[name=action]"), func(b *html.Node) bool { return attr(b, "value") == action }) {
 			v.t.Errorf("%s: form %s has no button %s", v.at, attr(form, "id"), action)
 		}
 		values.Set("action", action)

@@ -1,18 +1,88 @@
-// Marks the page as scripted, so that the plain Save buttons can step back, and
-// opens a group of inputs whose field was refused after an edit was swapped in.
+// What the bench does beyond plain forms: an edit is sent when a field is left, and
+// the page follows. Without this script every form has its own Save button.
 "use strict";
 document.documentElement.classList.add("scripted");
-document.addEventListener("htmx:after:swap", () => {
-  const bad = document.querySelector("#bench .field.has-error");
-  const group = bad && bad.closest("details");
-  if (group) group.open = true;
-});
-// Undo and redo by keyboard, except inside a field, which undoes its own typing.
-document.addEventListener("keydown", (e) => {
-  if (!(e.ctrlKey || e.metaKey) || e.altKey) return;
-  if (/^(INPUT|TEXTAREA|SELECT)$/.test(document.activeElement?.tagName || "")) return;
-  const key = e.key.toLowerCase();
-  const id = key === "z" && !e.shiftKey ? "undo-form" : key === "y" || (key === "z" && e.shiftKey) ? "redo-form" : "";
-  const button = id && document.querySelector(`#${id} button:not([disabled])`);
-  if (button) { e.preventDefault(); button.click(); }
-});
+(() => {
+  const isEdit = (form) => form.matches("#bench form[id^='form-']");
+  const fieldsOf = (form) => [...form.elements].filter((f) => f.name && f.type !== "hidden" && f.localName !== "button");
+  // What the server last wrote into the field.
+  const written = (f) => (f.localName === "select" ? ([...f.options].find((o) => o.defaultSelected) || f.options[0])?.value : f.defaultValue);
+
+  let waiting = []; // edits not yet answered, oldest first: {ctx, texts: name -> text}
+  const lastSent = (name) => waiting.findLast((w) => name in w.texts)?.texts[name];
+
+  // An edit carries what was changed by hand and is not already on its way: Enter fires
+  // both change and submit, and edits can follow one another faster than the answers.
+  document.addEventListener("htmx:config:request", (e) => {
+    const { ctx } = e.detail, form = ctx.sourceElement, body = ctx.request.body;
+    if (!isEdit(form)) return;
+    const texts = {};
+    for (const f of fieldsOf(form)) {
+      if (f.value === (lastSent(f.name) ?? written(f))) body.delete(f.name);
+      else texts[f.name] = f.value;
+    }
+    if (Object.keys(texts).length || body.has("action")) waiting.push({ ctx, texts });
+    else e.preventDefault();
+  });
+
+  // Undo and redo that have nothing more to do go dead, and the focus with them: it moves to the other one.
+  const stepping = new WeakSet(); // requests whose button had the focus
+  document.addEventListener("htmx:before:request", (e) => {
+    const { ctx } = e.detail;
+    if (/^(un|re)do-form$/.test(ctx.sourceElement.id) && ctx.sourceElement.contains(document.activeElement)) stepping.add(ctx);
+  });
+  const keepPlace = (ctx) => {
+    if (stepping.has(ctx) && document.activeElement.matches("body, :disabled")) document.querySelector("#undo-form button:enabled, #redo-form button:enabled")?.focus();
+  };
+
+  // When its turn comes, an edit builds on the revision that the answer before it brought,
+  // and takes along what is still refused elsewhere, so that it stays marked. What is
+  // refused in a list whose places move is left behind.
+  document.addEventListener("htmx:before:request", (e) => {
+    const { ctx } = e.detail, body = ctx.request.body;
+    if (!isEdit(ctx.sourceElement)) return;
+    body.set("revision", document.querySelector("#bench [name=revision]").value);
+    if (/^(remove|move)/.test(body.get("action") || "")) return;
+    for (const f of document.querySelectorAll("#bench .field.has-error [name]:not(.basis)")) {
+      if (!body.has(f.name)) body.append(f.name, written(f));
+    }
+  });
+
+  // After the last answer a field shows what is stored ("200 lb" became 90.72), except
+  // the one being typed in. A choice made by hand does not follow its attribute by itself.
+  const settle = () => {
+    for (const form of document.querySelectorAll("#bench form[method=post]")) {
+      for (const f of fieldsOf(form)) {
+        if (f !== document.activeElement && lastSent(f.name) === undefined && f.value !== written(f)) f.value = written(f);
+      }
+    }
+  };
+  document.addEventListener("htmx:finally:request", (e) => {
+    const { ctx } = e.detail;
+    waiting = waiting.filter((w) => w.ctx !== ctx);
+    const status = ctx.response?.status;
+    if (ctx.status === "swapped" && (status < 400 || status === 422)) {
+      settle();
+      keepPlace(ctx);
+      return;
+    }
+    const said = document.querySelector("#saved");
+    if (said) said.textContent = (ctx.request.method === "POST" ? "not saved: " : "") + (status ? `the program answered ${status}` : "the program does not answer");
+  });
+
+  // A group whose field was refused opens.
+  document.addEventListener("htmx:after:swap", () => {
+    const group = document.querySelector("#bench .field.has-error")?.closest("details");
+    if (group) group.open = true;
+  });
+
+  // Undo and redo by keyboard, except inside a field, which undoes its own typing.
+  document.addEventListener("keydown", (e) => {
+    if (!(e.ctrlKey || e.metaKey) || e.altKey) return;
+    if (/^(INPUT|TEXTAREA|SELECT)$/.test(document.activeElement?.tagName || "")) return;
+    const key = e.key.toLowerCase();
+    const id = key === "z" && !e.shiftKey ? "undo-form" : key === "y" || (key === "z" && e.shiftKey) ? "redo-form" : "";
+    const button = id && document.querySelector(`#${id} button:not([disabled])`);
+    if (button) { e.preventDefault(); button.click(); }
+  });
+})();

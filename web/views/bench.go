@@ -18,37 +18,39 @@ import (
 
 // A Bench is the page of one variant: inputs at one side, results at the other.
 type Bench struct {
-	Title      string
-	ProjectURL string
-	Project    string
-	Variant    string
-	Variants   []Link
-	Action     string // where edits are posted, with the view's query
-	UndoURL    string
-	RedoURL    string
-	SystemURL  string
-	Systems    []Option
-	System     string
-	Revision   string
-	Saved      string
-	CanUndo    bool
-	CanRedo    bool
-	Message    string // about the edit just made
-	Refused    int
-	Verdict    Verdict
-	Tiles      []Tile
-	Groups     []Group
-	View       ViewForm
-	Speeds     Speeds
-	Charts     Charts
-	Strips     []StripTable
-	Climb      Grid
-	Legs       Grid
-	Plant      Grid
-	Figures    []Row
-	Warnings   []WarningView
-	Weak       string // how many inputs are placeholders
-	WorkingURL string
+	Title       string
+	ProjectURL  string
+	Project     string
+	Variant     string
+	Variants    []Link
+	Action      string // where edits are posted, with the view's query
+	UndoURL     string
+	RedoURL     string
+	SystemURL   string
+	Systems     []Option
+	System      string
+	Revision    string
+	Saved       string
+	CanUndo     bool
+	CanRedo     bool
+	Message     string // about the edit just made
+	Refused     int
+	RefusedText string
+	Loose       []string // what was refused and has no field on the page to stand beside
+	Verdict     Verdict
+	Tiles       []Tile
+	Groups      []Group
+	View        ViewForm
+	Speeds      Speeds
+	Charts      Charts
+	Strips      []StripTable
+	Climb       Grid
+	Legs        Grid
+	Plant       Grid
+	Figures     []Row
+	Warnings    []WarningView
+	Weak        string // how many inputs are placeholders
+	WorkingURL  string
 }
 
 // A Link is a way to another page.
@@ -172,6 +174,8 @@ func NewBench(s *study.Study, st BenchState) Bench {
 	b.Verdict = newVerdict(s, sys)
 	b.Tiles = tiles(s, sys)
 	b.Groups = newForm(spec, s.Index, st.Refusals).groups()
+	b.Loose = loose(st.Refusals, b.Groups)
+	b.RefusedText = refusedText(len(st.Refusals), len(b.Loose))
 	summarise(b.Groups, s, sys)
 	b.View = newViewForm(s, sys, here, st)
 	b.Speeds = speeds(s, sys)

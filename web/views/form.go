@@ -139,6 +139,9 @@ func (f *form) basis(e input.Entry, fd *Field) {
 	for _, o := range project.BasisKinds {
 		fd.Basis = append(fd.Basis, Option{o.Value, o.Label, o.Value == b.Kind})
 	}
+	if r, ok := f.refusals["basis:"+e.Path]; ok {
+		fd.Error = strings.TrimSpace(fd.Error + " Basis: " + lowerFirst(r.Why))
+	}
 	if b.PlusMinus > 0 && e.Number != nil {
 		fd.Note = strings.TrimSpace(fd.Note + " ± " + f.sys.Entry(e.Number.Quantity, b.PlusMinus) + " " + f.sys.Unit(e.Number.Quantity).Symbol + " as stated.")
 	}

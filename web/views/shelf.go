@@ -40,3 +40,11 @@ func NewShelf(list []Listed) Shelf {
 	}
 	return s
 }
+
+// described lists the ids of the texts that explain the name of a new project.
+func (s Shelf) described() string {
+	if s.Error != "" {
+		return "new-error new-hint"
+	}
+	return "new-hint"
+}

@@ -151,6 +151,27 @@ func TestLevelFlightMatches(t *testing.T) {
 	}
 }
 
+// A share of power that two speeds make is flown at the faster.
+func TestShareOfPowerIsFlownFast(t *testing.T) {
+	for kind, a := range both(t) {
+		p := &pointperf.Point{Air: aircrafttest.Air(t, 1000), Mass: a.StartMass()}
+		slow, err := pointperf.LevelAt(a, p, pointperf.Stall(a, p, nil)*1.001)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, share := range []float64{slow.Output.Fraction, 0.6, 0.75} {
+			l, err := pointperf.AtFraction(a, p, share)
+			if err != nil {
+				t.Fatal(err)
+			}
+			near(t, kind+": share", l.Output.Fraction, share, 1e-7)
+			if l.TAS < pointperf.AllSpeeds(a, p).LeastThrust.TAS*0.95 {
+				t.Errorf("%s: flies at %g m/s on a share of %g, which also a faster speed makes", kind, l.TAS, share)
+			}
+		}
+	}
+}
+
 func TestWhatIsAskedAndCannotBe(t *testing.T) {
 	a := both(t)[powerplant.FixedPitch]
 	point := func(hp, mass float64) *pointperf.Point {
@@ -188,5 +209,38 @@ func TestWhatIsAskedAndCannotBe(t *testing.T) {
 	}
 	if !errors.Is(ceiling, pointperf.ErrNoCeiling) || !errors.Is(endurance, pointperf.ErrNoThrust) {
 		t.Errorf("%v and %v are not of their kind", ceiling, endurance)
+	}
+}
+
+// Near the ceiling the thrust fails before the wing does: level flight begins above the stall.
+func TestSlowestLevelFlightNearTheCeiling(t *testing.T) {
+	for kind, a := range both(t) {
+		ceiling, err := pointperf.Ceiling(a, atmos.Day{}, a.StartMass(), aircraft.Clean, 0.1)
+		if err != nil {
+			t.Fatal(err)
+		}
+		p := &pointperf.Point{Air: aircrafttest.Air(t, ceiling), Mass: a.StartMass()}
+		s := pointperf.AllSpeeds(a, p)
+		if s.LevelMin.Err != nil || s.LevelMin.Bound != "" || s.LevelMin.TAS <= s.Stall.TAS || s.LevelMin.TAS >= s.BestRate.TAS || s.LevelMax.TAS <= s.BestRate.TAS {
+			t.Fatalf("%s: stall, level minimum, best rate, level maximum %+v %+v %+v %+v", kind, s.Stall, s.LevelMin, s.BestRate, s.LevelMax)
+		}
+		for _, v := range []float64{s.LevelMin.TAS, s.LevelMax.TAS} {
+			if b := balance(t, a, p, v); math.Abs(b.InHand()) > 1e-6*b.Required {
+				t.Errorf("%s: thrust in hand is %g N at %g m/s", kind, b.InHand(), v)
+			}
+		}
+	}
+}
+
+// Beyond the propeller's table there is no thrust to balance.
+func TestBeyondThePropellersTable(t *testing.T) {
+	a := both(t)[powerplant.FixedPitch]
+	p := &pointperf.Point{Air: aircrafttest.Air(t, 0), Mass: 600}
+	var beyond *powerplant.SpeedError
+	if _, err := pointperf.At(a, p, 200, nil); !errors.As(err, &beyond) {
+		t.Errorf("At: %v", err)
+	}
+	if _, err := pointperf.FullClimb(a, p, 200, nil); !errors.As(err, &beyond) {
+		t.Errorf("FullClimb: %v", err)
 	}
 }

@@ -3,6 +3,8 @@ package project
 import (
 	"errors"
 	"fmt"
+	"maps"
+	"slices"
 	"strings"
 
 	"legwright/internal/perf/aircraft"
@@ -23,6 +25,9 @@ type Project struct {
 // Build checks the whole document and returns the project, or every input error
 // joined, with full paths. It keeps no reference into s that a later edit of s could reach.
 func (s *Spec) Build() (*Project, error) {
+	if err := s.storable(); err != nil {
+		return nil, err
+	}
 	s = s.Clone()
 	errs := []error{s.head(), input.Check(s), s.references()}
 	if err := errors.Join(errs...); err != nil {
@@ -77,7 +82,8 @@ func (s *Spec) references() error {
 
 func (v *Variant) checkBasis(path string) error {
 	var errs []error
-	for key, b := range v.Basis {
+	for _, key := range slices.Sorted(maps.Keys(v.Basis)) {
+		b := v.Basis[key]
 		where := path + ".basis." + key
 		if !isBasis(b.Kind) {
 			errs = append(errs, &input.Error{Path: where + ".kind", Text: b.Kind, Accepts: "measured, maker, calculated, estimated, placeholder", Err: input.ErrChoice})

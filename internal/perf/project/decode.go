@@ -19,7 +19,7 @@ const maxErrors = 200
 // Decode reads a project document and builds it once to prove it sound. Unlike
 // encoding/json it refuses unknown, duplicate, missing and null fields, and
 // matches keys exactly. Only notes, bases and inputs that the document's own choices
-// make idle may be missing; they become zero or, for a choice, its first option. The error
+// make idle may be missing; they become zero, empty or, for a choice, its first option. The error
 // joins *input.Error values, up to 200 of them, in the order of the text.
 func Decode(text []byte) (*Spec, error) {
 	d := &decoder{text: text, places: map[string]int{}, failed: map[string]bool{}}
@@ -91,6 +91,7 @@ func (d *decoder) complete(s *Spec) {
 			*e.Choice.Value = e.Choice.Options[0].Value
 		}
 	}
+	fill(reflect.ValueOf(s).Elem())
 	entries = byPath(s)
 	d.open = d.undecided(entries)
 	for _, m := range d.missing {

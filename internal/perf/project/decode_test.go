@@ -2,6 +2,7 @@ package project
 
 import (
 	"bytes"
+	"encoding/json"
 	"errors"
 	"fmt"
 	"reflect"
@@ -47,7 +48,7 @@ func TestDecodeSaysWhatIsWrong(t *testing.T) {
 		{`"format": 1`, `"format": 1.5`, "format", input.ErrType, "accepted: 1"},
 		{`"format": 1`, `"format": "1"`, "format", input.ErrType, "accepted: 1"},
 		{`"units": "SI"`, `"units": "ft"`, "units", input.ErrChoice, "accepted: SI"},
-		{`"kind": "measured"`, `"kind": "guessed"`, "variants[0].basis.airframe.never_exceed.kind", input.ErrChoice, ""},
+		{`"kind": "measured"`, `"kind": "guessed"`, "variants[0].basis.airframe.span.kind", input.ErrChoice, ""},
 		{`"bound": "at-most"`, `"bound": "below"`, "requirements[0].bound", input.ErrChoice, "at-most, at-least"},
 		{`"kind": "taxi"`, `"kind": "swim"`, "legs[0].kind", input.ErrChoice, "take-off"},
 		{`"strip": ""`, `"strip": "x\ud800y"`, "legs[0].strip", input.ErrType, "escapes"},
@@ -56,9 +57,6 @@ func TestDecodeSaysWhatIsWrong(t *testing.T) {
 		{`"id": "b"`, `"id": "a"`, "variants[1].id", input.ErrConflict, ""},
 		{`"volume": 0.088`, `"volume": 0.2`, plant + ".values.fuel.volume", input.ErrConflict, "the tanks hold"},
 	} {
-		if test.path == "variants[0].basis.airframe.never_exceed.kind" {
-			test.path = "variants[0].basis.airframe.span.kind" // the first measured one, keys sorted
-		}
 		_, err := Decode(replaced(t, test.old, test.new))
 		found := false
 		for _, e := range input.Errors(err) {
@@ -103,7 +101,6 @@ func TestDecodeHasLimits(t *testing.T) {
 		}
 		return strings.Join(list, ",")
 	}
-	const nested = `"note": `
 	for _, test := range []struct {
 		name      string
 		good, bad string // instead of key
@@ -113,7 +110,7 @@ func TestDecodeHasLimits(t *testing.T) {
 		{"legs", `"legs": [` + repeat(leg, 200) + `], "x": [`, `"legs": [` + repeat(leg, 201) + `], "x": [`, `"legs": [`, "legs"},
 		{"rows", `"polar": [` + rows(10000) + `], "x": [`, `"polar": [` + rows(10001) + `], "x": [`, `"polar": [`, "variants[0].aircraft.airframe.polar"},
 		{"depth", `"x": ` + strings.Repeat("[", 31) + strings.Repeat("]", 31) + `, "legs": [`, `"x": ` + strings.Repeat("[", 32) + strings.Repeat("]", 32) + `, "legs": [`, `"legs": [`, ""},
-		{"bytes", strings.Repeat(" ", 3<<20) + nested, strings.Repeat(" ", 4<<20) + nested, nested, ""},
+		{"bytes", strings.Repeat(" ", 3<<20) + `"note": `, strings.Repeat(" ", 4<<20) + `"note": `, `"note": `, ""},
 	} {
 		_, err := Decode(replaced(t, test.key, test.good))
 		for _, e := range input.Errors(err) {
@@ -154,9 +151,12 @@ func TestDecodeStopsAtTwoHundredErrors(t *testing.T) {
 	for i := range 300 {
 		fmt.Fprintf(&many, `"x%d": 0, `, i)
 	}
-	_, err := Decode(replaced(t, `"qnh"`, many.String()+`"qnh"`))
-	if n := len(input.Errors(err)); n != maxErrors {
-		t.Errorf("%d errors, want %d", n, maxErrors)
+	legs := `"legs": [` + strings.Repeat(`{"name": "a", "kind": "taxi", "time": -1, "setting": 2},`, 150)
+	for name, text := range map[string][]byte{"strangers": replaced(t, `"qnh"`, many.String()+`"qnh"`), "ranges": replaced(t, `"legs": [`, legs)} {
+		_, err := Decode(text)
+		if n := len(input.Errors(err)); n != maxErrors {
+			t.Errorf("%s: %d errors, want %d", name, n, maxErrors)
+		}
 	}
 }
 
@@ -172,6 +172,15 @@ func TestDecodeWaitsForTheChoice(t *testing.T) {
 	}
 }
 
+func TestDecodeTellsOnceOfAnUnreadableKind(t *testing.T) {
+	for _, kind := range []string{"5", "null", `"rubber"`} {
+		_, err := Decode(replaced(t, `"kind": "piston-propeller"`, `"kind": `+kind))
+		if got := paths(err); len(got) != 1 || got[0] != "variants[0].aircraft.powerplant.kind" {
+			t.Errorf("%s: got %v", kind, err)
+		}
+	}
+}
+
 // What a document may leave out takes the zero value or the first option.
 func TestDecodeFillsWhatMayBeMissing(t *testing.T) {
 	text := encoded(t, Demo())
@@ -184,6 +193,29 @@ func TestDecodeFillsWhatMayBeMissing(t *testing.T) {
 	l := s.Legs[0]
 	if l.Extent != "distance" || l.SpeedRule != "best-range" || l.Path != "full-power" || l.DayGiven != "project" || l.Speed != 0 || l.Time != 60 {
 		t.Errorf("got %+v", l)
+	}
+}
+
+func TestDecodeNeedsNoNotesOrBases(t *testing.T) {
+	doc := generic(t, small())
+	for _, p := range places(doc, "") {
+		if strings.HasSuffix(p.path, "note") || strings.HasSuffix(p.path, ".basis") {
+			p.remove()
+		}
+	}
+	text, err := json.Marshal(doc)
+	if err != nil {
+		t.Fatal(err)
+	}
+	s, err := Decode(text)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if s.Note != "" || s.Variants[0].Basis == nil || len(s.Variants[0].Basis) > 0 {
+		t.Errorf("note %q, bases %v", s.Note, s.Variants[0].Basis)
+	}
+	if got := refused(t, schemaOf(t), doc); len(got) > 0 {
+		t.Errorf("the schema refuses %v", got)
 	}
 }
 

@@ -122,7 +122,7 @@ func (n *node) objectShape() *shape {
 			p = merge(p, limits(r))
 		}
 		s.Properties = append(s.Properties, property{f.name, p})
-		if false {
+		if !f.optional && !rules.idle[f.name] {
 			s.Required = append(s.Required, f.name)
 		}
 	}

@@ -50,6 +50,11 @@ var changes = []change{
 		p.set(1e30)
 		return p.path, ok
 	}},
+	{"far below", func(p place) (string, bool) {
+		_, ok := p.value.(float64)
+		p.set(-1e30)
+		return p.path, ok
+	}},
 	{"another word", func(p place) (string, bool) {
 		_, ok := p.value.(string)
 		p.set("nonsense")
@@ -109,7 +114,7 @@ func TestSchemaAndDecodeAgree(t *testing.T) {
 			}
 		}
 	}
-	if both < 800 || neither < 100 {
+	if both < 700 || neither < 100 {
 		t.Errorf("%d mistakes refused, %d without consequence: too few to mean anything", both, neither)
 	}
 }
@@ -139,7 +144,9 @@ func TestSchemaAndDecodeAgreeOnAnyChoices(t *testing.T) {
 		_, err = Decode(text)
 		bySchema := refused(t, schema, doc)
 		for _, p := range bySchema {
-			if !slices.ContainsFunc(paths(err), func(q string) bool { return strings.HasPrefix(rowOf(p), rowOf(q)) }) {
+			// The values of a powerplant of an unknown kind are not looked at.
+			within := func(q string) bool { return strings.HasPrefix(rowOf(p), strings.TrimSuffix(rowOf(q), "plant.kind")) }
+			if !slices.ContainsFunc(paths(err), within) {
 				t.Fatalf("the schema refuses %s; Decode says %v", p, err)
 			}
 		}

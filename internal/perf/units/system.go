@@ -51,7 +51,7 @@ func (s System) Unit(q Quantity) Unit { return s.shown(q).unit }
 func (s System) Decimals(q Quantity) int { return s.shown(q).decimals }
 
 // Number writes an SI value of q as a result is read: rounded to the quantity's
-// decimals, thousands set off by a thin space, a true minus sign, no unit.
+// decimals, thousands set off by a narrow no-break space, a true minus sign, no unit.
 // Coefficients lose trailing zeros.
 func (s System) Number(q Quantity, si float64) string {
 	sh := s.shown(q)
@@ -107,7 +107,7 @@ func Fixed(v float64, decimals int) string {
 	}
 	for i, d := range whole {
 		if rest := len(whole) - i; i > 0 && rest%3 == 0 && len(whole) > 4 {
-			b.WriteString("\u2009")
+			b.WriteString("\u202f")
 		}
 		b.WriteRune(d)
 	}

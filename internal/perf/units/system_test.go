@@ -15,8 +15,8 @@ func TestFixed(t *testing.T) {
 		decimals int
 		want     string
 	}{
-		{0, 0, "0"}, {-0.04, 1, "0.0"}, {-0.05001, 1, "−0.1"}, {1234, 0, "1234"}, {12345, 0, "12\u2009345"},
-		{-1234567.8, 1, "−1\u2009234\u2009567.8"}, {999.96, 1, "1000.0"}, {99999.96, 1, "100\u2009000.0"},
+		{0, 0, "0"}, {-0.04, 1, "0.0"}, {-0.05001, 1, "−0.1"}, {1234, 0, "1234"}, {12345, 0, "12\u202f345"},
+		{-1234567.8, 1, "−1\u202f234\u202f567.8"}, {999.96, 1, "1000.0"}, {99999.96, 1, "100\u202f000.0"},
 	} {
 		if got := Fixed(c.v, c.decimals); got != c.want {
 			t.Errorf("Fixed(%v, %d) = %q, want %q", c.v, c.decimals, got, c.want)
@@ -59,7 +59,7 @@ func TestFormat(t *testing.T) {
 		si   float64
 		want string
 	}{
-		{Aviation, Altitude, 3048, "10\u2009000\u00a0ft"}, {Small, Power, 350, "350\u00a0W"}, {Metric, Fraction, 0.755, "75.5\u00a0%"},
+		{Aviation, Altitude, 3048, "10\u202f000\u00a0ft"}, {Small, Power, 350, "350\u00a0W"}, {Metric, Fraction, 0.755, "75.5\u00a0%"},
 		{Aviation, Temperature, 288.15, "15.0\u00a0°C"}, {Aviation, TemperatureStep, 10, "10.0\u00a0°C"}, {Metric, Angle, math.Pi / 6, "30.0°"},
 		{Metric, Coefficient, 1.5, "1.5"}, {Metric, Coefficient, 2, "2"}, {Metric, Coefficient, 0, "0"}, {Aviation, Pressure, 101325, "29.92\u00a0inHg"},
 		{Aviation, Consumption, 0.45 * pound / (horsepower * hour), "0.450\u00a0lb/hp·h"}, {Metric, Duration, 5400, "90.0\u00a0min"},
@@ -77,7 +77,7 @@ func TestNumberRounds(t *testing.T) {
 		s := rapid.SampledFrom(Systems).Draw(t, "system")
 		shown := rapid.Float64Range(-1e6, 1e6).Draw(t, "shown")
 		text := s.Number(q, s.Unit(q).ToSI(shown))
-		back, err := strconv.ParseFloat(strings.NewReplacer("\u2009", "", "−", "-").Replace(text), 64)
+		back, err := strconv.ParseFloat(strings.NewReplacer("\u202f", "", "−", "-").Replace(text), 64)
 		if err != nil {
 			t.Fatal(err)
 		}

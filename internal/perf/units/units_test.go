@@ -54,7 +54,7 @@ func TestEveryQuantityIsDescribed(t *testing.T) {
 }
 
 func ExampleSystem_Format() {
-	show := func(s string) { fmt.Println(strings.NewReplacer("\u00a0", "_", "\u2009", "'").Replace(s)) }
+	show := func(s string) { fmt.Println(strings.NewReplacer("\u00a0", "_", "\u202f", "'").Replace(s)) }
 	show(Metric.Format(Speed, 51.44))
 	show(Aviation.Format(Speed, 51.44))
 	show(Metric.Format(Altitude, 12345.6))

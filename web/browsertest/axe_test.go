@@ -1,0 +1,73 @@
+package browsertest
+
+import (
+	_ "embed"
+	"strings"
+	"testing"
+
+	"legwright/internal/perf/project"
+)
+
+// axe is axe-core, MPL-2.0; its licence stands beside it.
+//
+//go:embed testdata/axe.min.js
+var axe string
+
+// audit runs every rule of axe-core on the page as it stands.
+func (p *tab) audit(name string) {
+	p.t.Helper()
+	if eval[bool](p, `typeof window.axe === "undefined"`) {
+		eval[bool](p, axe+";true")
+	}
+	list := eval[[]string](p, `axe.run(document, {resultTypes: ["violations"]}).then((r) => r.violations.flatMap((v) => v.nodes.map((n) => v.id + ": " + n.target.join(" ") + ": " + n.failureSummary.replace(/\s+/g, " "))))`)
+	for _, v := range list {
+		p.t.Errorf("%s: %s", name, shortened(v))
+	}
+}
+
+// audits looks at the page in both themes, wide and narrow.
+func (p *tab) audits(name string) {
+	p.t.Helper()
+	for _, v := range []struct {
+		width  int64
+		scheme string
+	}{{1280, "light"}, {1280, "dark"}, {380, "dark"}, {380, "light"}} {
+		p.size(v.width, 900)
+		p.media("", v.scheme)
+		p.audit(strings.Join([]string{name, v.scheme, map[int64]string{1280: "1280", 380: "380"}[v.width]}, " "))
+	}
+	p.size(1280, 900)
+	p.media("", "light")
+}
+
+func TestAxeBench(t *testing.T) {
+	p, _ := bench(t)
+	p.expect(422)
+	p.audits("bench")
+	p.openAll()
+	p.audits("bench, all open")
+
+	p.typed(field(baggage), "250")
+	p.swapped(func() { p.press(tabKey) })
+	has(t, p.text(headline), "Does not fly")
+	p.typed(field("airframe.span"), "wide")
+	p.swapped(func() { p.press(tabKey) })
+	has(t, p.text("#refused"), "One entry")
+	p.audits("failing bench with a refused entry")
+}
+
+func TestAxeOtherPages(t *testing.T) {
+	s := newSite(t, project.Demo())
+	p := newTab(t)
+	p.expect(404)
+	for name, path := range map[string]string{"shelf": "/", "working": "/projects/1/variants/a/working", "problem": "/projects/99"} {
+		p.open(s.url + path)
+		p.audits(name)
+	}
+}
+
+// openAll opens every part of the page that folds.
+func (p *tab) openAll() {
+	p.t.Helper()
+	eval[bool](p, `(document.querySelectorAll("details").forEach((d) => { d.open = true; }), true)`)
+}

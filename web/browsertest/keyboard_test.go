@@ -1,0 +1,76 @@
+package browsertest
+
+import (
+	"slices"
+	"testing"
+
+	"github.com/chromedp/chromedp"
+)
+
+// tabTo presses Tab until the element has the focus, and returns what it passed.
+func (p *tab) tabTo(selector string) []string {
+	p.t.Helper()
+	var passed []string
+	for range 80 {
+		p.press(tabKey)
+		if eval[bool](p, `document.activeElement.matches($1)`, selector) {
+			return passed
+		}
+		passed = append(passed, eval[string](p, `document.activeElement.id || document.activeElement.textContent.trim().slice(0, 40)`))
+	}
+	p.t.Fatalf("Tab does not reach %s; passed %q", selector, passed)
+	return nil
+}
+
+// TestKeyboardOnly goes from the top of the page to an edit and its undo without a pointer.
+func TestKeyboardOnly(t *testing.T) {
+	p, s := bench(t)
+	p.press(tabKey)
+	if got := eval[string](p, `document.activeElement.className`); got != "skip" {
+		t.Fatalf("the first stop is %q, want the skip link", got)
+	}
+	if !eval[bool](p, `(() => { const r = document.activeElement.getBoundingClientRect(); return r.left >= 0 && r.top >= 0 && r.width > 20; })()`) {
+		t.Error("the skip link cannot be seen when it has the focus")
+	}
+	p.press(enter)
+	p.until(`location.hash === "#main"`)
+	p.press(tabKey)
+	if !eval[bool](p, `document.querySelector("#main").contains(document.activeElement)`) {
+		t.Errorf("after the skip link Tab goes to %q", p.active())
+	}
+
+	p.open(s.url + "/projects/1/variants/a?altitude=1000")
+	passed := p.tabTo("#units")
+	for _, want := range []string{"Skip to the content", "Legwright", "Sorrel Down to the lake and back"} {
+		if !slices.Contains(passed, want) {
+			t.Errorf("Tab does not stop at %q: %q", want, passed)
+		}
+	}
+	if seen := eval[bool](p, `(() => { const s = getComputedStyle(document.activeElement); return s.outlineStyle !== "none" && parseFloat(s.outlineWidth) >= 2; })()`); !seen {
+		t.Error("the focus cannot be seen on the units")
+	}
+	p.tabTo("#group-requirements > summary")
+	p.press(enter)
+	p.until(`document.querySelector("#group-requirements").open`)
+	p.tabTo("#group-names > summary")
+	p.press(" ")
+	p.until(`document.querySelector("#group-names").open`)
+	p.tabTo(field("/name"))
+	p.press("a", chromedp.ModifierCtrl)
+	p.press("By keyboard")
+	p.swapped(func() { p.press(tabKey) })
+	has(t, p.text(".crumbs"), "By keyboard")
+
+	// Undo by its button, reached backwards.
+	for range 200 {
+		p.press(tabKey, chromedp.ModifierShift)
+		if eval[bool](p, `document.activeElement.matches("#undo-form button")`) {
+			break
+		}
+	}
+	p.swapped(func() { p.press(enter) })
+	has(t, p.text(".crumbs"), "Sorrel Down to the lake and back")
+	if p.active() == "BODY" {
+		t.Error("undo lost the place of the keyboard")
+	}
+}

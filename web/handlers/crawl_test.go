@@ -1,0 +1,149 @@
+package handlers
+
+import (
+	"net/url"
+	"regexp"
+	"strings"
+	"testing"
+
+	"golang.org/x/net/html"
+
+	"legwright/internal/perf/project"
+)
+
+// A crawler follows every link and sends every form of the site as it stands,
+// by each of its buttons. Addresses, forms and buttons that differ only in a
+// number or a variant count as one, except for GET.
+type crawler struct {
+	*visitor
+	waiting []string
+	known   map[string]bool
+	pages   int
+	sent    int
+}
+
+// most is far above what the site needs; a walk that reaches it goes in circles.
+const most = 400
+
+func TestCrawl(t *testing.T) {
+	c := &crawler{visitor: visit(t), known: map[string]bool{}}
+	c.keep(project.New("Second"))
+	c.add("/")
+	for len(c.waiting) > 0 && c.pages+c.sent < most {
+		next := c.waiting[0]
+		c.waiting = c.waiting[1:]
+		c.visitPage(next)
+	}
+	if c.pages+c.sent >= most {
+		t.Errorf("stopped after %d pages and %d forms, %d addresses left", c.pages, c.sent, len(c.waiting))
+	}
+	for _, path := range []string{"/projects/1/variants/a", "/projects/1/variants/b", "/projects/2/variants/a", "/projects/1/variants/a/working", "/static/htmx.min.js"} {
+		if !c.known[path] {
+			t.Errorf("never reached %s", path)
+		}
+	}
+	for _, form := range []string{"form-weights remove-item #", "form-mission move-leg-up #", "form-requirements add-requirement", "view-form", "undo-form", "redo-form", "units-form"} {
+		if !c.known[form] {
+			t.Errorf("never sent %s", form)
+		}
+	}
+	t.Logf("%d pages, %d forms", c.pages, c.sent)
+}
+
+func (c *crawler) add(address string) {
+	if !c.known[address] {
+		c.known[address] = true
+		c.waiting = append(c.waiting, address)
+	}
+}
+
+// visitPage gets one address, checks it, and sends the forms on it, each from the page as it then is.
+func (c *crawler) visitPage(address string) {
+	for {
+		c.at = nil
+		c.get(address)
+		c.pages++
+		c.sound(address)
+		if c.page == nil {
+			return
+		}
+		form, action := c.next()
+		if form == nil {
+			return
+		}
+		c.submit(form, nil, action)
+		c.sent++
+		c.sound(address + ", form " + formName(form) + " " + action)
+	}
+}
+
+// next is a form of the page with a button that was not yet pressed; nil when there is none.
+func (c *crawler) next() (*html.Node, string) {
+	for _, form := range all(c.page, "form") {
+		for _, action := range actions(form) {
+			name := masked(formName(form) + " " + action)
+			if !c.known[name] {
+				c.known[name] = true
+				return form, action
+			}
+		}
+	}
+	return nil, ""
+}
+
+// sound follows redirects, checks the answer and notes where its links lead.
+func (c *crawler) sound(what string) {
+	c.follow()
+	switch code := c.reply.Code; {
+	case code == 422 && c.page != nil && one(c.page, ".error") != nil: // it explains
+	case code < 200 || code > 299:
+		c.t.Errorf("%s: status %d", what, code)
+	}
+	if c.log.Len() > 0 {
+		c.t.Errorf("%s: the site logged %s", what, c.log)
+		c.log.Reset()
+	}
+	if c.page == nil {
+		return
+	}
+	if err := checkPage(c.reply.Body.String()); err != nil {
+		c.t.Errorf("%s: %v", what, err)
+	}
+	for _, n := range append(all(c.page, "[href]"), all(c.page, "[src]")...) {
+		c.link(attr(n, "href") + attr(n, "src"))
+	}
+}
+
+// link notes the address that a link names; one that leads off the site is a fault.
+func (c *crawler) link(address string) {
+	to, err := c.at.Parse(address)
+	if err != nil || to.Host != "" || to.Scheme != "" {
+		c.t.Errorf("%s leads to %s", c.at, address)
+		return
+	}
+	to.Fragment = ""
+	c.add(to.String())
+}
+
+// actions lists the buttons of a form: "" is the one without a name.
+func actions(form *html.Node) []string {
+	var list []string
+	for _, b := range all(form, "button") {
+		if !has(b, "disabled") && attr(b, "type") != "button" {
+			list = append(list, attr(b, "value"))
+		}
+	}
+	return list
+}
+
+func formName(form *html.Node) string {
+	if id := attr(form, "id"); id != "" {
+		return id
+	}
+	u, _ := url.Parse(attr(form, "action"))
+	return u.Path
+}
+
+var digits = regexp.MustCompile(`\d+`)
+
+func masked(name string) string { return strings.TrimSpace(digits.ReplaceAllString(name, "#")) }
