@@ -237,7 +237,7 @@ class Flight:
         qnh = self.day["qnh"]
         self.field = self.strip["elevation"] + T0 / 0.0065 * (1 - (qnh / P0) ** (R * 0.0065 / G))
         self.hp = self.field
-        self.mu = {"dry-grass": (0.05, 0.4)}[self.strip["surface"]]
+        self.mu = {"dry-grass": (0.06, 0.3)}[self.strip["surface"]]
 
     def air(self, hp):
         return Air(hp, self.day)

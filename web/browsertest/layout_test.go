@@ -2,6 +2,7 @@ package browsertest
 
 import (
 	"fmt"
+	"strings"
 	"testing"
 
 	"legwright/internal/perf/powerplant"
@@ -115,22 +116,17 @@ func TestPrint(t *testing.T) {
 
 // ugly is a very small aircraft with very long names, an impossible mission and the other units.
 func ugly() *project.Spec {
-	long := func(c string) string {
-		s := ""
-		for len(s) < 120 {
-			s += c
-		}
-		return s[:120]
-	}
+	// Names as long as they are accepted, without a place to break.
+	long := func(word string, n int) string { return strings.Repeat(word, n)[:n] }
 	s := project.Demo()
-	s.Name, s.Note, s.Display = long("Projectname"), long("Note"), "aviation"
+	s.Name, s.Note, s.Display = long("Projectname", 120), long("Note", 120), "aviation"
 	for i := range s.Variants {
-		s.Variants[i].Name = long("Variantname")
+		s.Variants[i].Name = long("Variantname", 120)
 		a := &s.Variants[i].Aircraft
 		a.Airframe.WingArea, a.Airframe.Span = 0.6, 2.2
 		a.Weights.Empty, a.Weights.MaxTakeOff = 1.6, 3
 		for j := range a.Weights.Items {
-			a.Weights.Items[j].Name, a.Weights.Items[j].Mass = long("Itemname"), 0.05
+			a.Weights.Items[j].Name, a.Weights.Items[j].Mass = long("Itemname", 80), 0.05
 		}
 		p := a.Powerplant.Model.(*powerplant.PistonPropeller)
 		p.Mass, p.Propeller.Diameter = 0.6, 0.4
@@ -139,9 +135,9 @@ func ugly() *project.Spec {
 			row[1] /= 200
 		}
 	}
-	s.Strips[0].Name = long("Stripname")
+	s.Strips[0].Name = long("Stripname", 80)
 	for i := range s.Legs {
-		s.Legs[i].Name = long("Legname")
+		s.Legs[i].Name = long("Legname", 60)
 		if s.Legs[i].Distance > 0 {
 			s.Legs[i].Distance = 9e6
 		}

@@ -270,15 +270,27 @@ func (p *tab) media(medium, scheme string) {
 	call(p, emulation.SetEmulatedMedia, emulation.SetEmulatedMediaParams{Media: medium, Features: []*emulation.MediaFeature{{Name: "prefers-color-scheme", Value: scheme}}})
 }
 
-// shot saves a picture of the whole page when SHOTS names a folder.
+// shot saves a picture when SHOTS names a folder: the top of a wide page, the whole of a narrow one.
 func (p *tab) shot(name string) {
 	dir := os.Getenv("SHOTS")
 	if dir == "" {
 		return
 	}
-	b, err := chromedp.Run(p.ctx, chromedp.FullScreenshot(100))
+	width, err := chromedp.Run(p.ctx, chromedp.Evaluate[int64](`innerWidth`))
+	take := chromedp.FullScreenshot(100)
+	if err == nil && width > 600 {
+		take = chromedp.CaptureScreenshot()
+		err = chromedp.Do(p.ctx, chromedp.EmulateViewport(width, 1500))
+	}
+	var b []byte
+	if err == nil {
+		b, err = chromedp.Run(p.ctx, take)
+	}
 	if err == nil {
 		err = os.WriteFile(filepath.Join(dir, name+".png"), b, 0o644)
+	}
+	if err == nil && width > 600 {
+		err = chromedp.Do(p.ctx, chromedp.EmulateViewport(width, 900))
 	}
 	if err != nil {
 		p.t.Error(err)

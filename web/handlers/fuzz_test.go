@@ -4,7 +4,6 @@ import (
 	"bytes"
 	"net/url"
 	"strings"
-	"sync"
 	"testing"
 
 	"legwright/internal/perf/project"
@@ -34,10 +33,8 @@ func FuzzEditForm(f *testing.F) {
 		f.Add(body, true)
 		f.Add(body, false)
 	}
-	var v *visitor
-	var begin sync.Once
+	v := visit(f)
 	f.Fuzz(func(t *testing.T, body string, swaps bool) {
-		begin.Do(func() { v = visit(f) })
 		v.t, v.at = t, nil
 		v.log.Reset()
 		header := []string{"Content-Type", "application/x-www-form-urlencoded"}

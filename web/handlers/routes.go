@@ -47,6 +47,8 @@ func New(cfg Config) (http.Handler, error) {
 		r.Post("/copy", s.serve(s.copyProject))
 		r.Post("/archive", s.serve(s.archiveProject(true)))
 		r.Post("/unarchive", s.serve(s.archiveProject(false)))
+		r.Get("/history", s.serve(s.history))
+		r.Post("/restore/{revision}", s.serve(s.restore))
 		r.Get("/variants/{variant}", s.serve(s.bench))
 		r.Post("/variants/{variant}", s.serve(s.edit))
 		r.Post("/variants/{variant}/units", s.serve(s.setUnits))

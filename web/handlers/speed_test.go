@@ -9,6 +9,7 @@ import (
 // BenchmarkEdit is one change of one field, from the request to the finished fragment, with a real database.
 func BenchmarkEdit(b *testing.B) {
 	v := visit(b)
+	v.blind = true
 	for n := 0; b.Loop(); n++ {
 		v.at = nil
 		v.post("/projects/1/variants/a", url.Values{"variants[0].aircraft.weights.empty": {fmt.Sprint(290 + n%20)}, "system": {"metric"}}, "HX-Request", "true")
@@ -22,6 +23,7 @@ func BenchmarkEdit(b *testing.B) {
 // BenchmarkBench is one look at the whole page.
 func BenchmarkBench(b *testing.B) {
 	v := visit(b)
+	v.blind = true
 	for b.Loop() {
 		v.at = nil
 		v.get("/projects/1/variants/a")

@@ -25,6 +25,9 @@ func loose(refusals []Refusal, groups []Group) []string {
 
 // refusedText says how many entries were refused and where to read why.
 func refusedText(all, loose int) string {
+	if all == 0 {
+		return ""
+	}
 	text := "One entry was not taken"
 	if all > 1 {
 		text = plural(all) + " entries were not taken"

@@ -41,7 +41,7 @@ func ExampleFly() {
 	fmt.Printf("flown %v, reserve met %v\n", f.Flown(), f.Reserve.Met)
 	fmt.Printf("tightest in the %s: %.0f %% of the thrust required in hand\n", f.Legs[f.Tightest.Leg].Leg.Name, 100*f.Tightest.Ratio())
 	// Output:
-	// Take-off    0.3 min    0.0 km   0.09 kg
+	// Take-off    0.3 min    0.0 km   0.10 kg
 	// Climb       4.2 min    9.7 km   1.21 kg
 	// Cruise     91.8 min  200.0 km   9.13 kg
 	// Reserve    30.0 min    0.0 km   2.61 kg

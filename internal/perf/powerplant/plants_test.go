@@ -106,14 +106,15 @@ func drawPiston(t *rapid.T) *powerplant.PistonPropeller {
 	return m
 }
 
-// blade is a table of J, CT, CP that runs a tenth past the J of no thrust and
-// has the given best efficiency.
+// blade is a table of J, CT, CP that runs a tenth past the J of no thrust and has
+// the given best efficiency, or less where momentum theory asks for more static power.
 func blade(ct, j, bend, best float64) [][]float64 {
 	thrust := func(x float64) float64 { return ct * (1 - math.Pow(x, bend)) }
 	power := func(x float64) float64 { return 1 - 0.8*math.Pow(x, bend+0.5) }
 	cp := 0.0
 	for x := 0.0; x < 1; x += 0.01 {
 		cp = math.Max(cp, x*j*thrust(x)/power(x)/best)
+		cp = math.Max(cp, 1.001*math.Pow(thrust(x), 1.5)/math.Sqrt(math.Pi/2)/power(x))
 	}
 	rows := make([][]float64, 12)
 	for i := range rows {

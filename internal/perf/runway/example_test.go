@@ -33,9 +33,9 @@ func ExampleTakeOff() {
 	}
 	fmt.Printf("over the obstacle after %.0f m\n", run.Total)
 	// Output:
-	// ground roll  173 m  13.8 s
+	// ground roll  182 m  14.6 s
 	// rotation      24 m   1.0 s
 	// transition    44 m   1.8 s
 	// climb         89 m   3.4 s
-	// over the obstacle after 329 m
+	// over the obstacle after 338 m
 }

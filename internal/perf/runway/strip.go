@@ -29,13 +29,14 @@ type Surface struct {
 
 // Surfaces lists the ground covers on offer. Source: D. P. Raymer, Aircraft Design: A
 // Conceptual Approach, 2nd edition, AIAA, 1992, table 17.1, from memory; the middle
-// of each printed range. Snow is its value for ice.
+// of each printed range. Dry short grass stands midway between its hard and soft turf,
+// and snow is its value for ice. Rolling on soft ground is common practice, no source.
 var Surfaces = []Surface{
 	{"dry-asphalt", "dry asphalt", 0.04, 0.4},
 	{"wet-asphalt", "wet asphalt", 0.05, 0.225},
-	{"dry-grass", "dry short grass", 0.05, 0.4},
+	{"dry-grass", "dry short grass", 0.06, 0.3},
 	{"wet-grass", "wet grass", 0.08, 0.2},
-	{"soft-ground", "soft ground", 0.07, 0.2},
+	{"soft-ground", "soft ground", 0.1, 0.2},
 	{"ice", "snow or ice", 0.02, 0.08},
 }
 

@@ -225,7 +225,7 @@ func TestWarnings(t *testing.T) {
 	for code, change := range map[string]func(*project.Spec){
 		"overweight":         func(s *project.Spec) { s.Variants[0].Aircraft.Weights.MaxTakeOff = 600 },
 		"take-off-too-long":  func(s *project.Spec) { s.Strips[0].Length = 400 },
-		"take-off-no-margin": func(s *project.Spec) { s.Strips[0].Length = 560 },
+		"take-off-no-margin": func(s *project.Spec) { s.Strips[0].Length = 600 },
 		"landing-too-long":   func(s *project.Spec) { s.Strips[0].Length = 250 },
 		"no-reserve":         func(s *project.Spec) { s.Legs = s.Legs[:len(s.Legs)-1] },
 		"reserve-short":      func(s *project.Spec) { s.Legs[len(s.Legs)-1].Time = 8 * 3600 },

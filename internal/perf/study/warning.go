@@ -81,6 +81,10 @@ func (s *Study) warnStrip(what string, strip Strip) {
 		s.add(what+"-no-margin", Stop, "strip", "Do not plan it: less mass, more power, a longer strip.",
 			units.Say("{} with its safety factor needs {} and the strip has {}", units.Text(what), units.Of(units.FieldLength, run.Factored), units.Of(units.FieldLength, length)))
 	}
+	if s.Project.Spec.Technique.TakeOffFactor < 1.5 && (strip.Place.Surface.Name == "dry-grass" || strip.Place.Surface.Name == "wet-grass" || strip.Place.Surface.Name == "soft-ground") && what == "take-off" {
+		s.add("soft-surface", Info, "strip", "Walk the strip, and take a larger safety factor where the grass is long, wet or soft.",
+			units.Say("grass enters through its friction alone, here {}; UK CAA SafetySense Leaflet 7c (2013) adds 20 % for dry grass up to 20 cm and 30 % for wet, which is more", units.Of(units.Coefficient, strip.Place.Surface.Rolling)))
+	}
 	if what == "take-off" {
 		if g := s.Figure("climb_gradient"); g.Has() && g.Value < leastGradient {
 			s.add("weak-climb-out", Stop, "strip", "Less mass or more power.",
