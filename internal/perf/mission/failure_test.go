@@ -122,7 +122,7 @@ func onTheStrip(t testing.TB) map[string]failing {
 		"unknown strip to leave":   {a, on(t, 0, 0, "dry-asphalt", elsewhere), `^there is no strip named “Elsewhere”$`},
 		"unknown strip to land on": {a, on(t, 0, 0, "dry-asphalt", nowhere), `^there is no strip named “Nowhere”$`},
 		"does not roll":            {powered(t, 12e3), on(t, 0.2, 0, "dry-asphalt", leg(mission.TakeOff, nil)), `^the aircraft does not start to roll: static thrust is ` + number + `N short`},
-		"does not lift off":        {powered(t, 21e3), on(t, 0, 0, "soft-ground", leg(mission.TakeOff, nil)), `^the aircraft does not reach its lift-off speed of ` + number + `m/s: it stops gaining at ` + number + `m/s$`},
+		"does not lift off":        {powered(t, 30e3), on(t, 0, 0, "soft-ground", leg(mission.TakeOff, nil)), `^the aircraft does not reach its lift-off speed of ` + number + `m/s: it stops gaining at ` + number + `m/s$`},
 		"does not climb away":      {powered(t, 26e3), on(t, 0, 0, "dry-asphalt", leg(mission.TakeOff, nil)), `^it leaves the ground but does not climb away: at ` + number + `m/s`},
 		"does not stop":            {a, on(t, -0.2, 0, "ice", leg(mission.Landing, nil)), `^the aircraft does not stop: friction does not hold it on the slope at ` + number + `m/s$`},
 	}
@@ -130,7 +130,7 @@ func onTheStrip(t testing.TB) map[string]failing {
 
 // plain is the message in metric units with plain blanks.
 func plain(m units.Message) string {
-	return strings.NewReplacer("\u00a0", " ", "\u2009", "").Replace(m.In(units.Metric))
+	return strings.NewReplacer("\u00a0", " ", "\u202f", "").Replace(m.In(units.Metric))
 }
 
 // Every way in which a leg can fail ends the mission there and says why in one sentence with its numbers.
