@@ -26,6 +26,7 @@ type site struct {
 func newSite(t *testing.T, specs ...*project.Spec) *site {
 	t.Helper()
 	needBrowser(t)
+	t.Parallel()
 	s := &site{t: t, dir: t.TempDir(), stop: func() {}}
 	t.Cleanup(func() { s.stop() })
 	s.start(specs...)

@@ -45,7 +45,7 @@ type tab struct {
 func newTab(t *testing.T) *tab {
 	t.Helper()
 	needBrowser(t)
-	ctx, cancel := chromedp.NewContext(browser)
+	ctx, cancel := chromedp.NewContext(browser, chromedp.WithNewWindow(true))
 	t.Cleanup(cancel)
 	ctx, timeout := context.WithTimeout(ctx, 90*time.Second)
 	t.Cleanup(timeout)

@@ -54,7 +54,7 @@ func New(cfg Config) (http.Handler, error) {
 		r.Post("/variants/{variant}/units", s.serve(s.setUnits))
 		r.Post("/variants/{variant}/undo", s.serve(s.step(s.db.Undo, "undone")))
 		r.Post("/variants/{variant}/redo", s.serve(s.step(s.db.Redo, "done again")))
-		r.Get("/variants/{variant}/working", s.serve(s.working))
+		r.Get("/variants/{variant}/working", s.serve(s.analysis("/working", working)))
 	})
 
 	r.Post("/api/evaluate", s.serveJSON(s.evaluate))

@@ -18,11 +18,7 @@ import (
 
 // A Bench is the page of one variant: inputs at one side, results at the other.
 type Bench struct {
-	Title       string
-	ProjectURL  string
-	Project     string
-	Variant     string
-	Variants    []Link
+	Frame
 	Action      string // where edits are posted, with the view's query
 	UndoURL     string
 	RedoURL     string
@@ -50,7 +46,6 @@ type Bench struct {
 	Figures     []Row
 	Warnings    []WarningView
 	Weak        string // how many inputs are placeholders
-	WorkingURL  string
 }
 
 // A Link is a way to another page.
@@ -65,6 +60,7 @@ type Verdict struct {
 	Tone     string // good, caution or bad
 	Tightest string
 	Missed   string
+	Met      string   // said when every requirement is met
 	Worst    []string // the gravest warnings that the headline does not say already
 }
 
@@ -156,17 +152,12 @@ type BenchState struct {
 func NewBench(s *study.Study, st BenchState) Bench {
 	spec, v := s.Project.Spec, s.Variant()
 	sys := spec.System()
-	base := fmt.Sprintf("/projects/%d", st.ProjectID)
-	here := base + "/variants/" + v.ID
+	here := fmt.Sprintf("/projects/%d/variants/%s", st.ProjectID, v.ID)
 	b := Bench{
-		Title: v.Name + " · " + spec.Name, ProjectURL: base, Project: spec.Name, Variant: v.Name, Action: here + st.Query,
-		UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query, WorkingURL: here + "/working" + st.Query,
+		Frame: NewFrame(s, st.ProjectID, "", st.Query), Action: here + st.Query,
+		UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query,
 		System: string(sys), Revision: strconv.FormatInt(st.Revision, 10), Saved: st.Saved.Local().Format("15:04:05"),
 		CanUndo: st.CanUndo, CanRedo: st.CanRedo, Message: st.Message, Refused: len(st.Refusals),
-	}
-	for i := range spec.Variants {
-		o := &spec.Variants[i]
-		b.Variants = append(b.Variants, Link{o.Name, base + "/variants/" + o.ID + st.Query, i == s.Index})
 	}
 	for _, o := range units.Systems {
 		b.Systems = append(b.Systems, Option{string(o), o.Label(), o == sys})
@@ -232,6 +223,9 @@ func newVerdict(s *study.Study, sys units.System) Verdict {
 		v.Tightest = where
 	}
 	v.Missed = missed(s)
+	if n := len(s.Requirements); v.Missed == "" && n > 0 {
+		v.Met = fmt.Sprintf("Meets all %d requirements.", n)
+	}
 	for _, w := range s.Warnings {
 		if w.Level == study.Stop && w.Code != "mission-ends" && w.Code != "reserve-short" {
 			v.Worst = append(v.Worst, sentence(w.Text.In(sys)))

@@ -11,9 +11,7 @@ import (
 
 // A Working is the derivation of a study's numbers as shown.
 type Working struct {
-	Title   string
-	BackURL string
-	Back    string
+	Frame
 	Lead    string
 	Parts   []Part
 	Sources []formula.Source
@@ -37,9 +35,9 @@ type Line struct {
 }
 
 // NewWorking makes the page of the working.
-func NewWorking(s *study.Study, back string) Working {
+func NewWorking(s *study.Study, frame Frame) Working {
 	sys := s.Project.Spec.System()
-	p := Working{Title: "Working", BackURL: back, Back: s.Variant().Name,
+	p := Working{Frame: frame,
 		Lead: fmt.Sprintf("%s, ISA %s, %s, %s. Formulas stand in SI units; symbols are explained where they are used.", sys.Format(units.Altitude, s.View.Altitude),
 			signed(sys, units.TemperatureStep, s.View.Deviation), sys.Format(units.Mass, s.View.Mass), s.View.Config)}
 	w, err := s.Working()

@@ -1,0 +1,36 @@
+package handlers
+
+import (
+	"net/http"
+
+	"github.com/a-h/templ"
+
+	"legwright/internal/perf/study"
+	"legwright/web/views"
+)
+
+// analysis is a page of a variant beside the bench, under the view that its
+// query sets. Path is the page's own, as the tabs name it.
+func (s *site) analysis(path string, show func(*study.Study, views.Frame) templ.Component) page {
+	return func(w http.ResponseWriter, r *http.Request) error {
+		h, err := s.head(r)
+		if err != nil {
+			return err
+		}
+		i, err := h.variant(r)
+		if err != nil {
+			return err
+		}
+		p, err := h.build()
+		if err != nil {
+			return err
+		}
+		view, _ := viewOf(r.URL.Query(), p, i)
+		st := study.Run(p, i, view)
+		return render(w, r, http.StatusOK, show(st, views.NewFrame(st, h.rev.Project, path, query(r.URL.Query()))))
+	}
+}
+
+func working(st *study.Study, f views.Frame) templ.Component {
+	return views.WorkingPage(views.NewWorking(st, f))
+}

@@ -1,0 +1,42 @@
+package views
+
+import (
+	"fmt"
+
+	"legwright/internal/perf/study"
+)
+
+// A Frame is what every page of a variant has: where it is and where else to go.
+type Frame struct {
+	Title      string
+	ProjectURL string
+	Project    string
+	Variant    string
+	Variants   []Link // the same page of the other variants
+	Tabs       []Link // the other pages of this variant
+}
+
+// tabs lists the pages of a variant in order; the bench has no path of its own.
+var tabs = []struct{ Path, Label string }{
+	{"", "Bench"},
+	{"/working", "Working"},
+}
+
+// NewFrame makes the frame of the page at path ("" for the bench) of a study's
+// variant; query is that of the view, with its question mark, or empty.
+func NewFrame(s *study.Study, projectID int64, path, query string) Frame {
+	spec, v := s.Project.Spec, s.Variant()
+	base := fmt.Sprintf("/projects/%d", projectID)
+	f := Frame{ProjectURL: base, Project: spec.Name, Variant: v.Name}
+	for i := range spec.Variants {
+		o := &spec.Variants[i]
+		f.Variants = append(f.Variants, Link{o.Name, base + "/variants/" + o.ID + path + query, i == s.Index})
+	}
+	for _, t := range tabs {
+		f.Tabs = append(f.Tabs, Link{t.Label, base + "/variants/" + v.ID + t.Path + query, t.Path == path})
+		if t.Path == path {
+			f.Title = t.Label + " · " + v.Name + " · " + spec.Name
+		}
+	}
+	return f
+}
