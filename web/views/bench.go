@@ -308,7 +308,7 @@ func tiles(s *study.Study, sys units.System) []Tile {
 		if r.Requirement.Bound == project.AtLeast {
 			sign = "≥"
 		}
-		t := Tile{Caption: lowerFirst(r.Figure.Label) + ", " + sign + " " + sys.Format(r.Figure.Quantity, r.Requirement.Limit)}
+		t := Tile{Caption: lowerFirst(r.Figure.Label) + ", " + sign + "\u00a0" + sys.Format(r.Figure.Quantity, r.Requirement.Limit)}
 		switch {
 		case !r.Judged():
 			t.Value, t.Word, t.Tone = "–", "not judged: "+r.Reason.In(sys), "caution"

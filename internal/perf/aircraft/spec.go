@@ -64,7 +64,7 @@ var (
 	height   = input.Spec{Name: "wing_height", Label: "Wing above ground", Quantity: units.Length, Min: 0.02, Max: 10, Note: "For ground effect, on its wheels."}
 	cdMin    = input.Spec{Name: "cd_min", Label: "Minimum drag coefficient", Quantity: units.Coefficient, Min: 0.003, Max: 0.5,
 		Typical: &input.Typical{Low: 0.016, High: 0.06, Source: "light aircraft 0.018 to 0.040, common practice, no source"}}
-	efficiency = input.Spec{Name: "efficiency", Label: "Span efficiency e", Quantity: units.Coefficient, Min: 0.2, Max: 1.5,
+	efficiency = input.Spec{Name: "efficiency", Label: "Span efficiency\u00a0e", Quantity: units.Coefficient, Min: 0.2, Max: 1.5,
 		Typical: &input.Typical{Low: 0.7, High: 0.9, Source: "0.7 to 0.85 for flaps up, gliders higher; common practice, no source"}}
 	clMinDrag = input.Spec{Name: "cl_min_drag", Label: "CL at minimum drag", Quantity: units.Coefficient, Min: -0.5, Max: 1,
 		Typical: &input.Typical{Low: 0, High: 0.3, Source: input.CommonPractice}}

@@ -19,7 +19,7 @@ var (
 	ErrOrder     = errors.New("out of order")
 	ErrUnknown   = errors.New("not a field of this document")
 	ErrType      = errors.New("of the wrong type")
-	ErrConflict  = errors.New("does not agree with another input")
+	ErrConflict  = errors.New("in conflict with another input")
 	ErrMalformed = errors.New("not well-formed JSON")
 	ErrDuplicate = errors.New("given more than once")
 )
