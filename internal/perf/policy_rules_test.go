@@ -49,6 +49,8 @@ var allowed = map[string]string{
 	"web/report":     engine + " web/charts web/views",
 	"web/handlers":   engine + " web/charts web/views web/report web/static internal/store",
 	"cmd/server":     "web/handlers internal/store project",
+
+	"web/browsertest": "web/handlers internal/store project powerplant", // tests only
 }
 
 // engine is every package of the engine that the program itself may use.

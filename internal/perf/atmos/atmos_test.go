@@ -172,7 +172,7 @@ func TestBoilingAir(t *testing.T) {
 
 // spaced puts plain blanks for the no-break and thin ones of formatted numbers.
 func spaced(err error) string {
-	return strings.NewReplacer("\u00a0", " ", "\u2009", " ").Replace(fmt.Sprint(err))
+	return strings.NewReplacer("\u00a0", " ", "\u202f", " ").Replace(fmt.Sprint(err))
 }
 
 func TestOutsideTheModel(t *testing.T) {

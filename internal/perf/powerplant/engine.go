@@ -88,9 +88,9 @@ type engine struct {
 
 func (e *PistonEngine) build() (*engine, error) {
 	b := &engine{spec: *e, rated: e.RatedPower, lowest: 0, criticalSig: 1}
-	top := e.Redline
 	if e.PowerGiven == ByTable {
 		var err error
+		var top float64
 		if b.curve, err = columns(e.PowerCurve); err != nil {
 			return nil, input.Within("power_curve", &input.Error{Err: input.ErrOrder, Text: err.Error(), Accepts: "rising speeds"})
 		}

@@ -16,7 +16,7 @@ import (
 
 // spaced puts plain blanks for the no-break and thin ones of formatted numbers.
 func spaced(err error) string {
-	return strings.NewReplacer("\u00a0", " ", "\u2009", " ").Replace(fmt.Sprint(err))
+	return strings.NewReplacer("\u00a0", " ", "\u202f", " ").Replace(fmt.Sprint(err))
 }
 
 func TestSpecJSON(t *testing.T) {

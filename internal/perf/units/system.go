@@ -116,3 +116,7 @@ func Fixed(v float64, decimals int) string {
 	}
 	return b.String()
 }
+
+// Step is the SI value of a difference of n of the unit in which s shows q, for
+// grids whose steps are round where they are read.
+func (s System) Step(q Quantity, n float64) float64 { return n * s.Unit(q).Scale }
