@@ -52,7 +52,7 @@ func TestClimbWithoutAnAnswer(t *testing.T) {
 	s := named(t, "stall above never exceed")
 	c := ClimbChart(s, units.Metric)
 	p := c.Panels[0]
-	if len(p.Series) != 0 || len(p.Lines) != 1 || !strings.Contains(p.Blank, "does not reach") || !strings.Contains(c.Title, p.Blank) {
+	if len(p.Series) != 0 || len(p.Lines) != 1 || !strings.Contains(p.Blank, "lies above the never-exceed speed") || !strings.Contains(c.Title, p.Blank) {
 		t.Errorf("blank %q, title %q, lines %v", p.Blank, c.Title, p.Lines)
 	}
 	_, root := render(t, c)

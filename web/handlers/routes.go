@@ -54,6 +54,9 @@ func New(cfg Config) (http.Handler, error) {
 		r.Post("/variants/{variant}/units", s.serve(s.setUnits))
 		r.Post("/variants/{variant}/undo", s.serve(s.step(s.db.Undo, "undone")))
 		r.Post("/variants/{variant}/redo", s.serve(s.step(s.db.Redo, "done again")))
+		r.Get("/variants/{variant}/climb", s.serve(s.climb))
+		r.Get("/variants/{variant}/strip", s.serve(s.strip))
+		r.Get("/variants/{variant}/powerplant", s.serve(s.analysis("/powerplant", plant)))
 		r.Get("/variants/{variant}/working", s.serve(s.analysis("/working", working)))
 	})
 

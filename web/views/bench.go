@@ -60,6 +60,7 @@ type Verdict struct {
 	Tone     string // good, caution or bad
 	Tightest string
 	Missed   string
+	Why      string   // says that the answer rests on placeholders; empty when it does not
 	Met      string   // said when every requirement is met
 	Worst    []string // the gravest warnings that the headline does not say already
 }
@@ -67,6 +68,7 @@ type Verdict struct {
 // A Tile is one requirement held against its figure.
 type Tile struct {
 	Value, Caption, Word, Tone string
+	Why                        string // says that it rests on placeholders; empty when it does not
 }
 
 // A Row is a name and a value with its remark.
@@ -74,14 +76,14 @@ type Row struct {
 	Label  string
 	Value  string
 	Remark string
-	Weak   bool   // rests on placeholders
-	Why    string // which
+	Why    string // says that it rests on placeholders; empty when it does not
 }
 
 // Speeds is the table of the speeds of note.
 type Speeds struct {
 	Unit string
 	Rows []SpeedRow
+	Why  string // says that they rest on placeholders; empty when they do not
 }
 
 // A SpeedRow is one speed of note and what is best there.
@@ -106,6 +108,7 @@ type StripTable struct {
 	Tone     string
 	Rows     []Row
 	Caution  string
+	Why      string // says that it rests on placeholders; empty when it does not
 }
 
 // A WarningView is one warning as shown.
@@ -172,6 +175,7 @@ func NewBench(s *study.Study, st BenchState) Bench {
 	b.Speeds = speeds(s, sys)
 	b.Charts = newCharts(s, sys)
 	b.Strips = []StripTable{stripTable("Take-off", s.TakeOff, sys, spec.Technique.TakeOffFactor), stripTable("Landing", s.Landing, sys, spec.Technique.LandingFactor)}
+	b.Strips[0].Why, b.Strips[1].Why = weakness(s, "take_off_distance"), weakness(s, "landing_distance")
 	b.Climb, b.Legs, b.Plant = climbGrid(s, sys), legGrid(s, sys), plantGrid(s, sys)
 	b.Figures = figures(s, sys)
 	for _, w := range s.Warnings {
@@ -223,6 +227,7 @@ func newVerdict(s *study.Study, sys units.System) Verdict {
 		v.Tightest = where
 	}
 	v.Missed = missed(s)
+	v.Why = weakness(s, "thrust_in_hand")
 	if n := len(s.Requirements); v.Missed == "" && n > 0 {
 		v.Met = fmt.Sprintf("Meets all %d requirements.", n)
 	}
@@ -317,6 +322,7 @@ func tiles(s *study.Study, sys units.System) []Tile {
 		default:
 			t.Value, t.Word, t.Tone = sys.Format(r.Figure.Quantity, r.Figure.Value), "missed", "bad"
 		}
+		t.Why = weakness(s, r.Figure.ID)
 		list = append(list, t)
 	}
 	return list
@@ -370,7 +376,7 @@ func newViewForm(s *study.Study, sys units.System, here string, st BenchState) V
 // speeds lists the speeds of note of the view.
 func speeds(s *study.Study, sys units.System) Speeds {
 	sp := &s.Speeds
-	table := Speeds{Unit: sys.Unit(units.Speed).Symbol}
+	table := Speeds{Unit: sys.Unit(units.Speed).Symbol, Why: weakness(s, "level_max")}
 	add := func(label string, tas float64, there, remark string) {
 		table.Rows = append(table.Rows, SpeedRow{label, sys.Number(units.Speed, tas), sys.Number(units.Speed, float64(s.Point.Air.CAS(tas))), there, remark})
 	}
@@ -428,6 +434,18 @@ func chartView(c charts.Chart) ChartView {
 	return ChartView{ID: c.ID, Title: c.Title, Sentence: c.Desc, Wide: wide.String(), Narrow: narrow.String(), Table: c.Table()}
 }
 
+// weakness says that a figure rests on placeholders; empty when it does not.
+func weakness(s *study.Study, id string) string {
+	switch n := len(s.Unsure(s.Figure(id))); n {
+	case 0:
+		return ""
+	case 1:
+		return "rests on a placeholder"
+	default:
+		return fmt.Sprintf("rests on %d placeholders", n)
+	}
+}
+
 func figures(s *study.Study, sys units.System) []Row {
 	list := make([]Row, len(s.Figures))
 	for i := range s.Figures {
@@ -438,13 +456,7 @@ func figures(s *study.Study, sys units.System) []Row {
 		} else {
 			list[i].Value, list[i].Remark = "none", sentence(f.Reason.In(sys))
 		}
-		if weak := s.Unsure(f); len(weak) > 0 {
-			list[i].Weak = true
-			list[i].Why = fmt.Sprintf("rests on %d placeholders", len(weak))
-			if len(weak) == 1 {
-				list[i].Why = "rests on a placeholder"
-			}
-		}
+		list[i].Why = weakness(s, f.ID)
 	}
 	return list
 }

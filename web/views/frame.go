@@ -19,6 +19,9 @@ type Frame struct {
 // tabs lists the pages of a variant in order; the bench has no path of its own.
 var tabs = []struct{ Path, Label string }{
 	{"", "Bench"},
+	{"/climb", "Climb and envelope"},
+	{"/strip", "Strip"},
+	{"/powerplant", "Powerplant and propeller"},
 	{"/working", "Working"},
 }
 

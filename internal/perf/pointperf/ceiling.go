@@ -22,16 +22,22 @@ var ErrNoCeiling = errors.New("does not climb at sea level")
 // Ceiling is the pressure altitude in m at which the best rate of climb has
 // fallen to rate in m/s, at constant mass in kg.
 func Ceiling(a *aircraft.Aircraft, day atmos.Day, mass float64, config aircraft.Config, rate float64) (float64, error) {
-	surplus := func(hp float64) float64 {
+	best := func(hp float64) Best {
 		air, err := day.At(hp, nil)
 		if err != nil {
-			return -1
+			return Best{Err: err}
 		}
-		b := BestRate(a, &Point{Air: air, Mass: mass, Config: config})
+		return BestRate(a, &Point{Air: air, Mass: mass, Config: config})
+	}
+	surplus := func(hp float64) float64 {
+		b := best(hp)
 		if b.Err != nil {
 			return -1
 		}
 		return b.Value - rate
+	}
+	if b := best(0); b.Err != nil {
+		return 0, b.Err
 	}
 	low := surplus(0)
 	if low < 0 {

@@ -1,6 +1,7 @@
 package pointperf_test
 
 import (
+	"math"
 	"testing"
 
 	"pgregory.net/rapid"
@@ -46,6 +47,11 @@ func TestShownWorkingIsTrue(t *testing.T) {
 		if got, want := pointperf.ClimbAt(a, point, v, with.Available, factor, &w), pointperf.ClimbAt(a, point, v, with.Available, factor, nil); !sameClimb(got, want) {
 			t.Errorf("climbs %+v with a working, %+v without", got, want)
 		}
+		load := pointperf.LoadFactor(rapid.Float64Range(0.1, 1.4).Draw(t, "bank"), &w)
+		if got, want := pointperf.TurnRadius(v, load, &w)*pointperf.TurnRate(v, load, &w), v; math.Abs(got-want) > 1e-9*want {
+			t.Errorf("radius times rate is %g m/s at %g m/s", got, want)
+		}
+		pointperf.LiftLoad(a, point, v, &w)
 		if c, err := pointperf.FullClimb(a, point, v, &w); err == nil && c.TAS != v {
 			t.Errorf("climbs at %g m/s, asked for %g", c.TAS, v)
 		}

@@ -18,6 +18,7 @@ type Fixed struct {
 	ct, cp   *numeric.Table
 	jMax     float64 // largest useful J: where CP falls to zero, else the end of the table
 	jMin     float64
+	given    []float64 // advance ratios of the rows
 }
 
 // NewFixed builds a propeller of the given diameter in m from rows of J, CT, CP with rising J.
@@ -26,7 +27,7 @@ func NewFixed(diameter float64, rows [][]float64) (*Fixed, error) {
 	for i, r := range rows {
 		j[i], ct[i], cp[i] = r[0], r[1], r[2]
 	}
-	p := &Fixed{Diameter: diameter}
+	p := &Fixed{Diameter: diameter, given: j}
 	err := possible(rows)
 	if err != nil {
 		return nil, err
