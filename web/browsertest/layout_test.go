@@ -80,7 +80,8 @@ func TestLayout(t *testing.T) {
 	p.swapped(func() { p.press(tabKey) })
 	p.shot("failing-1280-light")
 	p.fitsAt("failing bench")
-	for name, path := range map[string]string{"shelf": "/", "working": "/projects/1/variants/a/working", "history": "/projects/1/history", "problem": "/projects/99"} {
+	for name, path := range map[string]string{"shelf": "/", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb",
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "history": "/projects/1/history", "problem": "/projects/99"} {
 		p.open(s.url + path)
 		p.shot(name + "-1280-light")
 		p.fitsAt(name)
@@ -158,7 +159,8 @@ func TestUgly(t *testing.T) {
 	p.shot("ugly-1280-light")
 	p.openAll()
 	p.fitsAt("ugly bench")
-	for name, path := range map[string]string{"shelf": "/", "working": "/projects/1/variants/a/working", "history": "/projects/1/history"} {
+	for name, path := range map[string]string{"shelf": "/", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb",
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "history": "/projects/1/history"} {
 		p.open(s.url + path)
 		p.fitsAt("ugly " + name)
 	}

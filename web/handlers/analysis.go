@@ -10,7 +10,8 @@ import (
 )
 
 // analysis is a page of a variant beside the bench, under the view that its
-// query sets. Path is the page's own, as the tabs name it.
+// query sets; a setting that was not understood is said at its field. Path is
+// the page's own, as the tabs name it.
 func (s *site) analysis(path string, show func(*study.Study, views.Frame) templ.Component) page {
 	return func(w http.ResponseWriter, r *http.Request) error {
 		h, err := s.head(r)
@@ -25,10 +26,26 @@ func (s *site) analysis(path string, show func(*study.Study, views.Frame) templ.
 		if err != nil {
 			return err
 		}
-		view, _ := viewOf(r.URL.Query(), p, i)
+		view, mistaken := viewOf(r.URL.Query(), p, i)
+		code := http.StatusOK
+		if len(mistaken) > 0 {
+			code = http.StatusUnprocessableEntity
+		}
 		st := study.Run(p, i, view)
-		return render(w, r, http.StatusOK, show(st, views.NewFrame(st, h.rev.Project, path, query(r.URL.Query()))))
+		return render(w, r, code, show(st, views.NewFrame(st, h.rev.Project, path, query(r.URL.Query()), mistaken)))
 	}
+}
+
+func climb(st *study.Study, f views.Frame) templ.Component {
+	return views.ClimbAndEnvelope(views.NewClimbPage(st, st.Envelope(), f))
+}
+
+func strip(st *study.Study, f views.Frame) templ.Component {
+	return views.StripPage(views.NewStrip(st, f))
+}
+
+func plant(st *study.Study, f views.Frame) templ.Component {
+	return views.PlantPage(views.NewPlant(st, f))
 }
 
 func working(st *study.Study, f views.Frame) templ.Component {

@@ -37,7 +37,7 @@ func TestClimbPageCondition(t *testing.T) {
 	if n := one(v.page, "#view-isa"); attr(n, "value") != "warm" || attr(n, "aria-invalid") != "true" {
 		t.Errorf("the deviation reads %q", attr(n, "value"))
 	}
-	if n := one(v.page, "#climb-form .error"); n == nil || !strings.Contains(text(n), "warm") {
+	if n := one(v.page, "#view-form .error"); n == nil || !strings.Contains(text(n), "warm") {
 		t.Error("nothing is said of it")
 	}
 	if got := text(one(v.page, "#climb-lead")); !strings.Contains(got, "at 2000 m") {

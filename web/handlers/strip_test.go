@@ -35,7 +35,7 @@ func TestStripPage(t *testing.T) {
 		t.Errorf("the bench is at %s", href)
 	}
 	headline("?mass=heavy", 422)
-	if field := one(v.page, "#view-mass"); attr(field, "value") != "heavy" || one(v.page, "#strip-form .error") == nil {
+	if field := one(v.page, "#view-mass"); attr(field, "value") != "heavy" || one(v.page, "#view-form .error") == nil {
 		t.Error("what was typed is gone, or nothing says why it was not taken")
 	}
 }

@@ -157,7 +157,7 @@ func NewBench(s *study.Study, st BenchState) Bench {
 	sys := spec.System()
 	here := fmt.Sprintf("/projects/%d/variants/%s", st.ProjectID, v.ID)
 	b := Bench{
-		Frame: NewFrame(s, st.ProjectID, "", st.Query), Action: here + st.Query,
+		Frame: NewFrame(s, st.ProjectID, "", st.Query, st.View), Action: here + st.Query,
 		UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query,
 		System: string(sys), Revision: strconv.FormatInt(st.Revision, 10), Saved: st.Saved.Local().Format("15:04:05"),
 		CanUndo: st.CanUndo, CanRedo: st.CanRedo, Message: st.Message, Refused: len(st.Refusals),
@@ -171,7 +171,7 @@ func NewBench(s *study.Study, st BenchState) Bench {
 	b.Loose = loose(st.Refusals, b.Groups)
 	b.RefusedText = refusedText(len(st.Refusals), len(b.Loose))
 	summarise(b.Groups, s, sys)
-	b.View = newViewForm(s, sys, here, st)
+	b.View = newViewForm(s, sys, b.Frame)
 	b.Speeds = speeds(s, sys)
 	b.Charts = newCharts(s, sys)
 	b.Strips = []StripTable{stripTable("Take-off", s.TakeOff, sys, spec.Technique.TakeOffFactor), stripTable("Landing", s.Landing, sys, spec.Technique.LandingFactor)}
@@ -352,20 +352,20 @@ func summarise(groups []Group, s *study.Study, sys units.System) {
 	}
 }
 
-// newViewForm makes the condition line of the thrust chart.
-func newViewForm(s *study.Study, sys units.System, here string, st BenchState) ViewForm {
+// newViewForm makes the form of the condition under which a page shows its curves.
+func newViewForm(s *study.Study, sys units.System, f Frame) ViewForm {
 	number := func(name, label string, q units.Quantity, si float64) Field {
 		return Field{Path: name, ID: "view-" + name, Label: label, Kind: "number", Value: sys.Entry(q, si), Unit: sys.Unit(q).Symbol}
 	}
-	v := ViewForm{URL: here, Altitude: number("altitude", "altitude", units.Altitude, s.View.Altitude), Mass: number("mass", "mass", units.Mass, s.View.Mass),
+	v := ViewForm{URL: f.URL, Altitude: number("altitude", "altitude", units.Altitude, s.View.Altitude), Mass: number("mass", "mass", units.Mass, s.View.Mass),
 		Deviation: number("isa", "ISA", units.TemperatureStep, s.View.Deviation), Config: Field{Path: "config", ID: "view-config", Label: "configuration", Kind: "choice"}}
 	for _, c := range []aircraft.Config{aircraft.Clean, aircraft.TakeOff, aircraft.Landing} {
 		v.Config.Options = append(v.Config.Options, Option{c.String(), c.String(), c == s.View.Config})
 	}
-	for _, r := range st.View {
-		for _, f := range []*Field{&v.Altitude, &v.Mass, &v.Deviation} {
-			if f.Path == r.Path {
-				f.Value, f.Error = r.Text, r.Why
+	for _, r := range f.Mistaken {
+		for _, field := range []*Field{&v.Altitude, &v.Mass, &v.Deviation} {
+			if field.Path == r.Path {
+				field.Value, field.Error = r.Text, r.Why
 			}
 		}
 		v.Errors = append(v.Errors, r.Why)

@@ -30,15 +30,14 @@ type ClimbPage struct {
 	Turns    Grid
 }
 
-// NewClimbPage makes the page of a study's envelope at the address here; mistaken
-// are the conditions of the view that were not understood.
-func NewClimbPage(s *study.Study, e *study.Envelope, f Frame, here string, mistaken []Refusal) ClimbPage {
+// NewClimbPage makes the page of a study's envelope.
+func NewClimbPage(s *study.Study, e *study.Envelope, f Frame) ClimbPage {
 	sys := s.Project.Spec.System()
 	sized := func(c charts.Chart, width, height float64) ChartView {
 		c.Width, c.Height = width, height
 		return chartView(c)
 	}
-	p := ClimbPage{Frame: f, View: newViewForm(s, sys, here, BenchState{View: mistaken}), Lead: climbLead(s, e, sys),
+	p := ClimbPage{Frame: f, View: newViewForm(s, sys, f), Lead: climbLead(s, e, sys),
 		Rates: sized(charts.RateCurvesChart(s, e, sys), 800, 360), Loads: sized(charts.LoadChart(s, e, sys), 800, 340)}
 	envelope := charts.EnvelopeChart(s, e, sys)
 	p.Envelope = sized(envelope, 800, 460)

@@ -23,7 +23,7 @@ func climbPage(t *testing.T, sys units.System, change func(*study.View)) (ClimbP
 		change(&v)
 	}
 	s := study.Run(p, 0, v)
-	page := NewClimbPage(s, s.Envelope(), NewFrame(s, 1, "/climb", ""), "/here", nil)
+	page := NewClimbPage(s, s.Envelope(), NewFrame(s, 1, "/climb", "", nil))
 	var b bytes.Buffer
 	if err := ClimbAndEnvelope(page).Render(t.Context(), &b); err != nil {
 		t.Fatal(err)

@@ -12,8 +12,10 @@ type Frame struct {
 	ProjectURL string
 	Project    string
 	Variant    string
-	Variants   []Link // the same page of the other variants
-	Tabs       []Link // the other pages of this variant
+	Variants   []Link    // the same page of the other variants
+	Tabs       []Link    // the other pages of this variant
+	URL        string    // of this page, without the view's query
+	Mistaken   []Refusal // settings of the view that were not understood
 }
 
 // tabs lists the pages of a variant in order; the bench has no path of its own.
@@ -26,11 +28,12 @@ var tabs = []struct{ Path, Label string }{
 }
 
 // NewFrame makes the frame of the page at path ("" for the bench) of a study's
-// variant; query is that of the view, with its question mark, or empty.
-func NewFrame(s *study.Study, projectID int64, path, query string) Frame {
+// variant; query is that of the view, with its question mark, or empty; mistaken
+// are the settings in it that were not understood.
+func NewFrame(s *study.Study, projectID int64, path, query string, mistaken []Refusal) Frame {
 	spec, v := s.Project.Spec, s.Variant()
 	base := fmt.Sprintf("/projects/%d", projectID)
-	f := Frame{ProjectURL: base, Project: spec.Name, Variant: v.Name}
+	f := Frame{ProjectURL: base, Project: spec.Name, Variant: v.Name, URL: base + "/variants/" + v.ID + path, Mistaken: mistaken}
 	for i := range spec.Variants {
 		o := &spec.Variants[i]
 		f.Variants = append(f.Variants, Link{o.Name, base + "/variants/" + o.ID + path + query, i == s.Index})

@@ -38,7 +38,7 @@ func NewPlant(s *study.Study, frame Frame) Plant { return newPlant(s, s.Plant(),
 
 func newPlant(s *study.Study, p *study.Plant, frame Frame) Plant {
 	sys := s.Project.Spec.System()
-	v := Plant{Frame: frame, View: newViewForm(s, sys, ownURL(frame), BenchState{})}
+	v := Plant{Frame: frame, View: newViewForm(s, sys, frame)}
 	v.Basis, v.BasisNote = plantBasis(s, sys)
 	if p.Err != nil {
 		v.Reason = sentence(units.Explain(p.Err).In(sys))
@@ -293,15 +293,4 @@ func tableWords(t *input.Table, sys units.System) string {
 		text += ", " + sys.Number(q, rows[0][0]) + " to " + sys.Format(q, rows[n-1][0])
 	}
 	return text
-}
-
-// ownURL is the address of the frame's current page without its query.
-func ownURL(f Frame) string {
-	for _, t := range f.Tabs {
-		if t.Current {
-			path, _, _ := strings.Cut(t.URL, "?")
-			return path
-		}
-	}
-	return ""
 }

@@ -62,7 +62,7 @@ func TestPlantPage(t *testing.T) {
 		"short table":  {func(_ *project.Spec, p *prop) { p.Propeller.Coefficients = p.Propeller.Coefficients[:7] }, nil, []string{"Add rows to the propeller table"}},
 	} {
 		s := plantStudy(t, c.change, c.look)
-		text := plantText(t, NewPlant(s, NewFrame(s, 1, "/powerplant", "")))
+		text := plantText(t, NewPlant(s, NewFrame(s, 1, "/powerplant", "", nil)))
 		for _, w := range c.want {
 			if !strings.Contains(text, w) {
 				t.Errorf("%s: the page does not hold %q", name, w)
@@ -113,7 +113,7 @@ func TestPlantWithoutCurves(t *testing.T) {
 	s := plantStudy(t, nil, nil)
 	p := s.Plant()
 	p.Curves, p.Given, p.Static, p.Burn = nil, nil, study.StaticThrust{}, study.Burn{}
-	text := plantText(t, newPlant(s, p, NewFrame(s, 1, "/powerplant", "")))
+	text := plantText(t, newPlant(s, p, NewFrame(s, 1, "/powerplant", "", nil)))
 	for _, w := range []string{"shows no curves", "no propeller of known diameter", "No consumption to show", "Operating points"} {
 		if !strings.Contains(text, w) {
 			t.Errorf("the page does not hold %q", w)
@@ -127,7 +127,7 @@ func TestPlantWithoutCurves(t *testing.T) {
 // TestPlantViewForm: the form comes back to this page, and keeps the view.
 func TestPlantViewForm(t *testing.T) {
 	s := plantStudy(t, nil, func(v *study.View) { v.Altitude = 1234 })
-	text := plantText(t, NewPlant(s, NewFrame(s, 7, "/powerplant", "?altitude=1234")))
+	text := plantText(t, NewPlant(s, NewFrame(s, 7, "/powerplant", "?altitude=1234", nil)))
 	for _, w := range []string{`action="/projects/7/variants/a/powerplant"`, `value="1234"`, `href="/projects/7/variants/a/powerplant?altitude=1234"`} {
 		if !strings.Contains(text, w) {
 			t.Errorf("the page does not hold %q", w)

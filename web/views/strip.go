@@ -56,11 +56,11 @@ type MatrixCell struct {
 	Value, Word, Fit string
 }
 
-// NewStrip makes the page; mistaken are conditions of the view that were not understood.
-func NewStrip(s *study.Study, frame Frame, here string, mistaken []Refusal) StripAnalysis {
+// NewStrip makes the page.
+func NewStrip(s *study.Study, frame Frame) StripAnalysis {
 	sys := s.Project.Spec.System()
 	off, on := s.Fields()
-	p := StripAnalysis{Frame: frame, Form: newViewForm(s, sys, here, BenchState{View: mistaken}),
+	p := StripAnalysis{Frame: frame, Form: newViewForm(s, sys, frame),
 		Sides:  []StripSide{stripSide(s, &off, sys), stripSide(s, &on, sys)},
 		Source: "Published: UK CAA SafetySense Leaflet 7c, Aeroplane Performance, 2013; landing on very short wet grass, UK CAA GM1 CAT.POL.A.335; from memory. It gives one factor for the whole distance, rounded up, whatever the aircraft."}
 	a, b := fitOf(&off), fitOf(&on)

@@ -22,7 +22,7 @@ func stripOf(t testing.TB, change func(*project.Spec)) (*study.Study, StripAnaly
 		t.Fatal(err)
 	}
 	st := study.Run(p, 0, study.DefaultView(p, 0))
-	page := NewStrip(st, NewFrame(st, 1, "/strip", ""), "/here", nil)
+	page := NewStrip(st, NewFrame(st, 1, "/strip", "", nil))
 	var b bytes.Buffer
 	if err := StripPage(page).Render(t.Context(), &b); err != nil {
 		t.Fatal(err)
