@@ -179,7 +179,7 @@ func (e *Envelope) excess(s *Study, a *aircraft.Aircraft) {
 // roundSteps are 0 and round values in the system's unit of a rate of climb below the greatest in m/s.
 func roundSteps(most float64, sys units.System) []float64 {
 	list := []float64{0}
-	unit := sys.Unit(units.ClimbRate).Scale
+	unit := sys.Step(units.ClimbRate, 1)
 	if !(most > 0) {
 		return list
 	}
@@ -256,7 +256,7 @@ func (e *Envelope) masses(s *Study, a *aircraft.Aircraft) {
 // glides computes the glide at three masses and two altitudes.
 func (e *Envelope) glides(s *Study, a *aircraft.Aircraft) {
 	v, sys := s.View, s.Project.Spec.System()
-	e.HeadWind = 10 * sys.Unit(units.Speed).Scale
+	e.HeadWind = sys.Step(units.Speed, 10)
 	if sys != units.Aviation {
 		e.HeadWind = 5
 	}

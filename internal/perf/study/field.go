@@ -206,7 +206,7 @@ func (s *Study) fieldGrid(f *Field) {
 	air := f.Present.Place.Air
 	step := 500.0
 	if s.Project.Spec.System() == units.Aviation {
-		step = 1000 * s.Project.Spec.System().Unit(units.Altitude).Scale
+		step = s.Project.Spec.System().Step(units.Altitude, 1000)
 	}
 	nearest := math.Round(air.PressureAltitude / step)
 	first := nearest

@@ -91,7 +91,7 @@ func (s *Study) variations(f *Field) []variation {
 	sys := s.Project.Spec.System()
 	wind := 2.0 // round in the unit in which the project shows speeds
 	if sys == units.Aviation {
-		wind = 5 * sys.Unit(units.Speed).Scale
+		wind = sys.Step(units.Speed, 5)
 	}
 	const thousand = 304.8 // 1000 ft in m, exact
 	lift := 0.1 * f.Present.Run.Speed

@@ -214,7 +214,7 @@ func (s *Study) climbAltitudes() []float64 {
 // roundStep is a step of 1, 2 or 5 times a power of ten of the system's altitude
 // unit that divides the span in m into about ten.
 func roundStep(span float64, sys units.System) float64 {
-	unit := sys.Unit(units.Altitude).Scale
+	unit := sys.Step(units.Altitude, 1)
 	raw := math.Max(span, 10) / unit / 10
 	base := math.Pow(10, math.Floor(math.Log10(raw)))
 	for _, f := range []float64{1, 2, 5, 10} {
