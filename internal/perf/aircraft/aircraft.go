@@ -80,6 +80,13 @@ func (f *Airframe) polar() (polar.Polar, error) {
 // reach checks that a tabulated polar covers every lift coefficient that is flown.
 func (f *Airframe) reach(low, high float64) error {
 	var errs []error
+	for _, c := range [...]Configuration{f.TakeOff, f.Landing} {
+		if cl := f.GroundCL - c.DeltaCLM; cl < low-1e-9 || cl > high+1e-9 {
+			errs = append(errs, &input.Error{Path: "ground_cl", Spec: &groundCL, Text: units.Plain(f.GroundCL), Err: input.ErrConflict,
+				Accepts: fmt.Sprintf("the drag polar runs from CL %s to %s and must reach it, less the shift of flaps and gear", units.Plain(low), units.Plain(high))})
+			break
+		}
+	}
 	names := [configs]string{"clean", "take_off", "landing"}
 	for i, c := range [configs]Configuration{f.Clean, f.TakeOff, f.Landing} {
 		if c.CLMax-c.DeltaCLM > high+1e-9 || -c.DeltaCLM < low-1e-9 {

@@ -106,6 +106,9 @@ func TestBuildErrors(t *testing.T) {
 		{func(s *aircraft.Spec) {
 			s.Airframe.DragGiven, s.Airframe.Landing.CLMax = aircraft.ByTable, 2.5
 		}, "airframe.landing.cl_max", input.ErrConflict, "from CL -0.2 to 2.2"},
+		{func(s *aircraft.Spec) {
+			s.Airframe.DragGiven, s.Airframe.GroundCL = aircraft.ByTable, 2.45
+		}, "airframe.ground_cl", input.ErrConflict, "must reach it, less the shift"},
 	} {
 		s := sample()
 		c.change(s)
