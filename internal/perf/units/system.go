@@ -55,11 +55,32 @@ func (s System) Decimals(q Quantity) int { return s.shown(q).decimals }
 // Coefficients lose trailing zeros.
 func (s System) Number(q Quantity, si float64) string {
 	sh := s.shown(q)
-	text := Fixed(sh.unit.FromSI(si), sh.decimals)
+	v := sh.unit.FromSI(si)
+	text := Fixed(v, readable(v, sh.decimals))
 	if q == Coefficient && strings.Contains(text, ".") {
 		text = strings.TrimRight(strings.TrimRight(text, "0"), ".")
 	}
 	return text
+}
+
+// readable is how many digits after the point v needs so that a small aircraft's
+// number does not round away: two significant digits where the quantity is shown
+// in whole units, one where it would read zero; at most two more than usual. What
+// rounds to zero even so is written as plain zero.
+func readable(v float64, decimals int) int {
+	a := math.Abs(v)
+	need := decimals
+	switch {
+	case a == 0:
+	case decimals == 0 && a < 9.95:
+		need = 1 - int(math.Floor(math.Log10(a)))
+	case a < 0.5*math.Pow(10, -float64(decimals)):
+		need = -int(math.Floor(math.Log10(a)))
+	}
+	if need > decimals+2 {
+		return decimals
+	}
+	return need
 }
 
 // Format writes an SI value of q with its unit, joined by a no-break space.

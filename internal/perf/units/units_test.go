@@ -60,12 +60,16 @@ func ExampleSystem_Format() {
 	show(Metric.Format(Altitude, 12345.6))
 	show(Metric.Format(Force, -31.4))
 	show(Metric.Format(Force, -0.2))
+	show(Metric.Format(Force, -0.0002))
+	show(Aviation.Format(Mass, 2.64))
 	fmt.Println(Metric.Number(Coefficient, 0.0335), Metric.Entry(Power, 72e3))
 	// Output:
 	// 51.4_m/s
 	// 100.0_kt
 	// 12'346_m
 	// −31_N
+	// −0.20_N
 	// 0_N
+	// 5.8_lb
 	// 0.0335 72
 }
