@@ -45,8 +45,7 @@ func (p *tab) results() string {
 func TestJourney(t *testing.T) {
 	s := newSite(t, project.Demo())
 	p := newTab(t)
-	p.open(s.url + "/")
-	p.click(".shelf a")
+	p.open(s.url + "/") // with one project, its bench
 	p.until(`document.querySelector("#verdict")`)
 	has(t, p.text(headline), "Flies the mission, with ", "% thrust in hand")
 	has(t, p.text("#tightest"), "Tightest", "available", "required at", "kg")

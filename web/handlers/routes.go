@@ -40,7 +40,8 @@ func New(cfg Config) (http.Handler, error) {
 	r.Get("/healthz", healthz)
 	r.Handle("/static/*", http.StripPrefix("/static/", cached(http.FileServerFS(static.Files))))
 
-	r.Get("/", s.serve(s.shelf))
+	r.Get("/", s.serve(s.first))
+	r.Get("/projects", s.serve(s.shelf))
 	r.Post("/projects", s.serve(s.createProject))
 	r.Route("/projects/{project}", func(r chi.Router) {
 		r.Get("/", s.serve(s.openProject))

@@ -14,6 +14,26 @@ import (
 // longestName of a project, in characters.
 const longestName = 120
 
+// first is the page of the bare address: the one project there is, computed, so
+// that a newcomer sees a result at once; the shelf when there are more or none.
+func (s *site) first(w http.ResponseWriter, r *http.Request) error {
+	list, err := s.db.Projects(r.Context())
+	if err != nil {
+		return err
+	}
+	to, active := "/projects", 0
+	for _, p := range list {
+		if !p.Archived {
+			to, active = fmt.Sprintf("/projects/%d", p.ID), active+1
+		}
+	}
+	if active != 1 {
+		to = "/projects"
+	}
+	http.Redirect(w, r, to, http.StatusSeeOther)
+	return nil
+}
+
 func (s *site) shelf(w http.ResponseWriter, r *http.Request) error {
 	v, err := s.shelfView(r)
 	if err != nil {
@@ -73,7 +93,7 @@ func (s *site) copyProject(w http.ResponseWriter, r *http.Request) error {
 	if _, err := s.create(r, copied, "copied from “"+h.spec.Name+"”"); err != nil {
 		return err
 	}
-	http.Redirect(w, r, "/", http.StatusSeeOther)
+	http.Redirect(w, r, "/projects", http.StatusSeeOther)
 	return nil
 }
 
@@ -93,7 +113,7 @@ func (s *site) archiveProject(archived bool) page {
 		if err := s.db.Archive(r.Context(), id, archived); err != nil {
 			return err
 		}
-		http.Redirect(w, r, "/", http.StatusSeeOther)
+		http.Redirect(w, r, "/projects", http.StatusSeeOther)
 		return nil
 	}
 }

@@ -39,7 +39,7 @@ func HistoryPage(h History) templ.Component {
 				}()
 			}
 			ctx = templ.InitializeContext(ctx)
-			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 1, "<header class=\"top\"><a class=\"brand\" href=\"/\">Legwright</a><nav class=\"crumbs\" aria-label=\"Where you are\"><a href=\"")
+			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 1, "<header class=\"top\"><a class=\"brand\" href=\"/projects\">Legwright</a><nav class=\"crumbs\" aria-label=\"Where you are\"><a href=\"")
 			if templ_7745c5c3_Err != nil {
 				return templ_7745c5c3_Err
 			}

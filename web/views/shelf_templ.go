@@ -41,7 +41,7 @@ func ShelfPage(s Shelf) templ.Component {
 				}()
 			}
 			ctx = templ.InitializeContext(ctx)
-			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 1, "<header class=\"top\"><a class=\"brand\" href=\"/\">Legwright</a></header><main id=\"main\" class=\"narrow\"><h1>Projects</h1><p class=\"lead\">One project holds one problem: a mission, a day, a strip, and the variants of an aircraft that are to fly it.</p>")
+			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 1, "<header class=\"top\"><a class=\"brand\" href=\"/projects\">Legwright</a></header><main id=\"main\" class=\"narrow\"><h1>Projects</h1><p class=\"lead\">One project holds one problem: a mission, a day, a strip, and the variants of an aircraft that are to fly it.</p>")
 			if templ_7745c5c3_Err != nil {
 				return templ_7745c5c3_Err
 			}
@@ -360,7 +360,7 @@ func ProblemPage(title, text string) templ.Component {
 				}()
 			}
 			ctx = templ.InitializeContext(ctx)
-			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 29, "<header class=\"top\"><a class=\"brand\" href=\"/\">Legwright</a></header><main id=\"main\" class=\"narrow\"><h1>")
+			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 29, "<header class=\"top\"><a class=\"brand\" href=\"/projects\">Legwright</a></header><main id=\"main\" class=\"narrow\"><h1>")
 			if templ_7745c5c3_Err != nil {
 				return templ_7745c5c3_Err
 			}
@@ -386,7 +386,7 @@ func ProblemPage(title, text string) templ.Component {
 			if templ_7745c5c3_Err != nil {
 				return templ_7745c5c3_Err
 			}
-			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 31, "</p><p><a href=\"/\">To the projects</a></p></main>")
+			templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 31, "</p><p><a href=\"/projects\">To the projects</a></p></main>")
 			if templ_7745c5c3_Err != nil {
 				return templ_7745c5c3_Err
 			}
