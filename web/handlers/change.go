@@ -160,6 +160,9 @@ func (e *edit) value(shown input.Entry, text string) change {
 		if said != "" {
 			said = whose + said
 		}
+		if err == nil && entry.Choice != nil {
+			input.Settle(s) // what other choices offer may have changed
+		}
 		return said, err
 	}}
 }
@@ -218,6 +221,9 @@ func set(entry input.Entry, text string, sys units.System) (string, error) {
 		return "", nil
 	case entry.Choice != nil:
 		*entry.Choice.Value = text
+		if err := entry.Check(); err != nil {
+			return "", err
+		}
 	case text == "" && needsName(entry.Path):
 		return "", errNoName
 	default:

@@ -102,3 +102,20 @@ func join(path, name string) string {
 	}
 	return path + "." + name
 }
+
+// Settle gives every choice of the document v that counts and holds none of its
+// options the first of them: what one choice offers may depend on another that
+// has just changed.
+func Settle(v any) {
+	for settled := false; !settled; {
+		settled = true
+		for _, e := range Walk(v) {
+			if e.Idle || e.Choice == nil || len(e.Choice.Options) == 0 || e.Check() == nil {
+				continue
+			}
+			*e.Choice.Value = e.Choice.Options[0].Value
+			settled = false
+			break
+		}
+	}
+}
