@@ -38,6 +38,11 @@ func act(s *project.Spec, variant int, action string) (string, error) {
 		}
 		s.Legs[i-1], s.Legs[i] = s.Legs[i], s.Legs[i-1]
 		return fmt.Sprintf("Leg “%s” moved earlier", s.Legs[i-1].Name), nil
+	case "copy-variant":
+		copied := s.Clone().Variants[variant]
+		copied.ID, copied.Name = freeID(s), clip("Copy of "+copied.Name)
+		s.Variants = append(s.Variants, copied)
+		return fmt.Sprintf("Variant “%s” copied", v.Name), nil
 	case "add-requirement":
 		s.Requirements = append(s.Requirements, project.Requirement{Figure: "service_ceiling", Bound: project.AtLeast, Limit: 3000})
 		return "Requirement added", nil
@@ -45,6 +50,19 @@ func act(s *project.Spec, variant int, action string) (string, error) {
 		return removed(&s.Requirements, arg, "Requirement", func(i int) string { return s.Requirements[i].Figure })
 	}
 	return "", noAction(action)
+}
+
+// freeID is an identifier that no variant of the document has: a, b, … then v27, v28, ….
+func freeID(s *project.Spec) string {
+	for n := 0; ; n++ {
+		id := fmt.Sprintf("v%d", n+1)
+		if n < 26 {
+			id = string(rune('a' + n))
+		}
+		if _, taken := s.Variant(id); !taken {
+			return id
+		}
+	}
 }
 
 // removed takes the element at the position that arg names out of a list.

@@ -177,7 +177,8 @@ func (f *form) groups() []Group {
 		Group{ID: "strip", Title: "Strip and day", Blocks: append(f.strips(), Block{Title: "Day", Fields: f.under("day")}, Block{Title: "Technique and factors", Fields: f.under("technique")})},
 		f.legs(), f.requirements(),
 		Group{ID: "names", Title: "Names and units", Blocks: []Block{{Title: "Project", Fields: f.own("name", "note", "display")},
-			{Title: "Variant", Fields: f.own(fmt.Sprintf("variants[%d].name", f.variant), fmt.Sprintf("variants[%d].note", f.variant))}}})
+			{Title: "Variant", Fields: f.own(fmt.Sprintf("variants[%d].name", f.variant), fmt.Sprintf("variants[%d].note", f.variant))}},
+			Adds: []Button{{Action: "copy-variant", Label: "Copy this variant", Title: "Begin another variant from this one"}}})
 	for i := range list {
 		list[i].Open = list[i].Open || list[i].refused()
 	}
