@@ -145,7 +145,7 @@ func TestThrustWithoutAnAnswer(t *testing.T) {
 
 func TestThrustWords(t *testing.T) {
 	c := ThrustChart(named(t, "other variant"), units.Aviation)
-	for _, want := range []string{"1873\u00a0ft", "ISA +15\u00a0°C", "\u00a0lb,", "clean", "\u00a0kt"} {
+	for _, want := range []string{"1872\u00a0ft", "ISA +15\u00a0°C", "\u00a0lb,", "clean", "\u00a0kt"} {
 		if !strings.Contains(c.Title, want) {
 			t.Errorf("%q is missing in %q", want, c.Title)
 		}

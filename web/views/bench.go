@@ -3,6 +3,7 @@ package views
 import (
 	"bytes"
 	"fmt"
+	"math"
 	"strconv"
 	"strings"
 	"time"
@@ -69,6 +70,7 @@ type Verdict struct {
 type Tile struct {
 	Value, Caption, Word, Tone string
 	Why                        string // says that it rests on placeholders; empty when it does not
+	URL                        string // of the figure's working
 }
 
 // A Row is a name and a value with its remark.
@@ -77,6 +79,7 @@ type Row struct {
 	Value  string
 	Remark string
 	Why    string // says that it rests on placeholders; empty when it does not
+	URL    string // of its working; empty when it has none
 }
 
 // Speeds is the table of the speeds of note.
@@ -166,7 +169,7 @@ func NewBench(s *study.Study, st BenchState) Bench {
 		b.Systems = append(b.Systems, Option{string(o), o.Label(), o == sys})
 	}
 	b.Verdict = newVerdict(s, sys)
-	b.Tiles = tiles(s, sys)
+	b.Tiles = tiles(s, sys, here+"/working")
 	b.Groups = newForm(spec, s.Index, st.Refusals).groups()
 	b.Loose = loose(st.Refusals, b.Groups)
 	b.RefusedText = refusedText(len(st.Refusals), len(b.Loose))
@@ -177,7 +180,7 @@ func NewBench(s *study.Study, st BenchState) Bench {
 	b.Strips = []StripTable{stripTable("Take-off", s.TakeOff, sys, spec.Technique.TakeOffFactor), stripTable("Landing", s.Landing, sys, spec.Technique.LandingFactor)}
 	b.Strips[0].Why, b.Strips[1].Why = weakness(s, "take_off_distance"), weakness(s, "landing_distance")
 	b.Climb, b.Legs, b.Plant = climbGrid(s, sys), legGrid(s, sys), plantGrid(s, sys)
-	b.Figures = figures(s, sys)
+	b.Figures = figures(s, sys, here+"/working")
 	for _, w := range s.Warnings {
 		b.Warnings = append(b.Warnings, WarningView{w.Code, string(w.Level), levelWord(w.Level), sentence(w.Text.In(sys)), w.Clear})
 	}
@@ -302,7 +305,8 @@ func whenIn(s *study.Study, t *mission.Sample, sys units.System) string {
 	return sys.Format(units.Duration, since) + " into"
 }
 
-func tiles(s *study.Study, sys units.System) []Tile {
+// tiles holds every requirement against its figure, with a link to its working on the page at the given address.
+func tiles(s *study.Study, sys units.System, page string) []Tile {
 	var list []Tile
 	for i := range s.Requirements {
 		r := &s.Requirements[i]
@@ -322,7 +326,7 @@ func tiles(s *study.Study, sys units.System) []Tile {
 		default:
 			t.Value, t.Word, t.Tone = sys.Format(r.Figure.Quantity, r.Figure.Value), "missed", "bad"
 		}
-		t.Why = weakness(s, r.Figure.ID)
+		t.Why, t.URL = weakness(s, r.Figure.ID), workingURL(page, r.Figure.ID)
 		list = append(list, t)
 	}
 	return list
@@ -352,13 +356,25 @@ func summarise(groups []Group, s *study.Study, sys units.System) {
 	}
 }
 
+// rounded is how a condition that nobody typed stands in its field: to the decimals of results, in plain digits.
+func rounded(sys units.System, q units.Quantity, si float64) string {
+	u := sys.Unit(q)
+	scale := math.Pow(10, float64(sys.Decimals(q)))
+	return units.Plain(math.Round(u.FromSI(si)*scale) / scale)
+}
+
 // newViewForm makes the form of the condition under which a page shows its curves.
 func newViewForm(s *study.Study, sys units.System, f Frame) ViewForm {
-	number := func(name, label string, q units.Quantity, si float64) Field {
-		return Field{Path: name, ID: "view-" + name, Label: label, Kind: "number", Value: sys.Entry(q, si), Unit: sys.Unit(q).Symbol}
+	given := study.DefaultView(s.Project, s.Index)
+	number := func(name, label string, q units.Quantity, si, usual float64) Field {
+		text := sys.Entry(q, si)
+		if si == usual {
+			text = rounded(sys, q, si)
+		}
+		return Field{Path: name, ID: "view-" + name, Label: label, Kind: "number", Value: text, Unit: sys.Unit(q).Symbol}
 	}
-	v := ViewForm{URL: f.URL, Altitude: number("altitude", "altitude", units.Altitude, s.View.Altitude), Mass: number("mass", "mass", units.Mass, s.View.Mass),
-		Deviation: number("isa", "ISA", units.TemperatureStep, s.View.Deviation), Config: Field{Path: "config", ID: "view-config", Label: "configuration", Kind: "choice"}}
+	v := ViewForm{URL: f.URL, Altitude: number("altitude", "altitude", units.Altitude, s.View.Altitude, given.Altitude), Mass: number("mass", "mass", units.Mass, s.View.Mass, given.Mass),
+		Deviation: number("isa", "ISA", units.TemperatureStep, s.View.Deviation, given.Deviation), Config: Field{Path: "config", ID: "view-config", Label: "configuration", Kind: "choice"}}
 	for _, c := range []aircraft.Config{aircraft.Clean, aircraft.TakeOff, aircraft.Landing} {
 		v.Config.Options = append(v.Config.Options, Option{c.String(), c.String(), c == s.View.Config})
 	}
@@ -446,7 +462,8 @@ func weakness(s *study.Study, id string) string {
 	}
 }
 
-func figures(s *study.Study, sys units.System) []Row {
+// figures lists every figure, each with a link to its working on the page at the given address.
+func figures(s *study.Study, sys units.System, page string) []Row {
 	list := make([]Row, len(s.Figures))
 	for i := range s.Figures {
 		f := &s.Figures[i]
@@ -456,7 +473,7 @@ func figures(s *study.Study, sys units.System) []Row {
 		} else {
 			list[i].Value, list[i].Remark = "none", sentence(f.Reason.In(sys))
 		}
-		list[i].Why = weakness(s, f.ID)
+		list[i].Why, list[i].URL = weakness(s, f.ID), workingURL(page, f.ID)
 	}
 	return list
 }

@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"legwright/internal/perf/formula"
+	"legwright/internal/perf/project"
 	"legwright/internal/perf/study"
 	"legwright/internal/perf/units"
 )
@@ -15,11 +16,11 @@ type Working struct {
 	Lead    string
 	Parts   []Part
 	Sources []formula.Source
-	Reason  string
 }
 
 // A Part is a run of steps under a heading.
 type Part struct {
+	ID    string // empty for a part that no figure points to
 	Title string
 	Lines []Line
 }
@@ -40,14 +41,11 @@ func NewWorking(s *study.Study, frame Frame) Working {
 	p := Working{Frame: frame,
 		Lead: fmt.Sprintf("%s, ISA %s, %s, %s. Formulas stand in SI units; symbols are explained where they are used.", sys.Format(units.Altitude, s.View.Altitude),
 			signed(sys, units.TemperatureStep, s.View.Deviation), sys.Format(units.Mass, s.View.Mass), s.View.Config)}
-	w, err := s.Working()
-	if err != nil {
-		p.Reason = sentence(units.Explain(err).In(sys))
-	}
+	w := s.Working()
 	seen := map[string]bool{}
 	for _, step := range w.Steps {
 		if step.Heading || len(p.Parts) == 0 {
-			p.Parts = append(p.Parts, Part{Title: step.Note})
+			p.Parts = append(p.Parts, Part{ID: anchors[step.Note], Title: step.Note})
 			continue
 		}
 		part := &p.Parts[len(p.Parts)-1]
@@ -59,6 +57,19 @@ func NewWorking(s *study.Study, frame Frame) Working {
 	}
 	return p
 }
+
+// anchors are the ids of the parts of the working that figures point to, by heading.
+var anchors = func() map[string]string {
+	m := map[string]string{}
+	for _, k := range project.FigureKinds() {
+		heading := study.WorkingPart(k.ID)
+		m[heading] = "working-" + strings.NewReplacer(" ", "-", ",", "").Replace(strings.ToLower(heading))
+	}
+	return m
+}()
+
+// workingURL is the address of the working of a figure on the working page.
+func workingURL(page, figure string) string { return page + "#" + anchors[study.WorkingPart(figure)] }
 
 // line words a step in SI units.
 func line(step formula.Step) Line {

@@ -85,7 +85,7 @@ type Strip struct {
 
 // DefaultView is the departure strip on the project's day at start mass, clean.
 func DefaultView(p *project.Project, variant int) View {
-	return View{Altitude: math.Round(p.Departure.Air.PressureAltitude), Mass: p.Aircraft[variant].StartMass(), Deviation: p.Plan.Day.Deviation, Config: aircraft.Clean}
+	return View{Altitude: p.Departure.Air.PressureAltitude, Mass: p.Aircraft[variant].StartMass(), Deviation: p.Plan.Day.Deviation, Config: aircraft.Clean}
 }
 
 // Run studies the variant with the given index under the view. Everything that

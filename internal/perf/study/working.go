@@ -1,54 +1,207 @@
 package study
 
 import (
+	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
 	"legwright/internal/perf/formula"
 	"legwright/internal/perf/pointperf"
+	"legwright/internal/perf/polar"
+	"legwright/internal/perf/powerplant"
+	"legwright/internal/perf/runway"
 	"legwright/internal/perf/units"
 )
 
-// Working derives the numbers of the view, and of the tightest point of the
-// mission, step by step from the inputs, as an engineer would on paper.
-func (s *Study) Working() (*formula.Working, error) {
+// The parts of the working, by their headings.
+const (
+	partAir      = "Air"
+	partStall    = "Stall"
+	partRate     = "Best rate of climb"
+	partMaximum  = "Level maximum"
+	partRest     = "At rest"
+	partTakeOff  = "Take-off"
+	partLanding  = "Landing"
+	partCeiling  = "Ceilings"
+	partTightest = "Tightest point of the mission"
+	partMission  = "Mission, leg by leg"
+)
+
+// parts says in which part of the working each figure is derived.
+var parts = map[string]string{
+	"take_off_distance": partTakeOff, "take_off_roll": partTakeOff, "climb_gradient": partTakeOff,
+	"landing_distance": partLanding, "landing_roll": partLanding, "stall_landing": partLanding,
+	"climb_rate": partRate, "level_max": partMaximum, "stall_clean": partStall,
+	"service_ceiling": partCeiling, "absolute_ceiling": partCeiling,
+	"static_thrust": partRest, "static_speed": partRest, "tip_mach": partTightest,
+	"thrust_in_hand": partTightest, "mission_time": partMission, "mission_distance": partMission, "mission_fuel": partMission,
+	"reserve_time": partMission, "fuel_left": partMission,
+}
+
+// WorkingPart is the heading of the part of the working that derives a figure, empty for an unknown one.
+func WorkingPart(figure string) string { return parts[figure] }
+
+// Working derives the numbers of the view, then those of the strip, the ceilings
+// and the mission, step by step from the inputs, as an engineer would on paper.
+// Speeds of note are those of the view; everything else is that of the figures.
+// Where a part has no answer, the reason stands in its place.
+func (s *Study) Working() *formula.Working {
 	w := &formula.Working{}
+	for _, part := range []func(*formula.Working) error{s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking} {
+		if err := part(w); err != nil {
+			w.Note("No answer: %s.", units.Explain(err).In(units.Metric))
+		}
+	}
+	return w
+}
+
+func in(q units.Quantity, si float64) string { return units.Metric.Format(q, si) }
+
+// viewWorking derives the speeds of note under the view.
+func (s *Study) viewWorking(w *formula.Working) error {
 	a, v := s.Aircraft(), s.View
-	w.Heading("Air")
+	w.Heading(partAir)
 	air, err := atmos.Day{Deviation: v.Deviation, Humidity: s.Project.Plan.Day.Humidity}.At(v.Altitude, w)
 	if err != nil {
-		return w, err
+		return err
 	}
 	p := &pointperf.Point{Air: air, Mass: v.Mass, Config: v.Config}
-	w.Heading("Stall")
+	w.Heading(partStall)
 	pointperf.Stall(a, p, w)
-	if b := s.Speeds.BestRate; b.Err == nil {
-		w.Heading("Best rate of climb")
-		w.Note("The speed %s is the one that makes the rate of climb greatest; it is found by a bracketed search.", units.Metric.Format(units.Speed, b.TAS))
-		if _, err := pointperf.FullClimb(a, p, b.TAS, w); err != nil {
-			return w, err
-		}
+	w.Heading(partRate)
+	b := s.Speeds.BestRate
+	if b.Err != nil {
+		return b.Err
 	}
-	if b := s.Speeds.LevelMax; b.Err == nil {
-		w.Heading("Level maximum")
-		w.Note("The speed %s is the fastest at which thrust available is not below thrust required; it is found by a bracketed root.", units.Metric.Format(units.Speed, b.TAS))
-		if _, err := pointperf.At(a, p, b.TAS*(1-1e-9), w); err != nil {
-			return w, err
-		}
+	w.Note("The speed %s is the one that makes the rate of climb greatest; it is found by a bracketed search.", in(units.Speed, b.TAS))
+	if _, err := pointperf.FullClimb(a, p, b.TAS, w); err != nil {
+		return err
 	}
-	return w, s.tightestWorking(w)
+	w.Heading(partMaximum)
+	if b = s.Speeds.LevelMax; b.Err != nil {
+		return b.Err
+	}
+	w.Note("The speed %s is the fastest at which thrust available is not below thrust required; it is found by a bracketed root.", in(units.Speed, b.TAS))
+	_, err = pointperf.At(a, p, b.TAS*(1-1e-9), w)
+	return err
+}
+
+// restWorking derives the static thrust on the departure strip.
+func (s *Study) restWorking(w *formula.Working) error {
+	w.Heading(partRest)
+	air := s.Project.Departure.Air
+	w.Note("On the strip at a pressure altitude of %s, full setting.", in(units.Altitude, air.PressureAltitude))
+	_, err := s.Aircraft().Plant().Run(powerplant.Condition{Air: air}, 1, w)
+	return err
+}
+
+// segments notes what the integration gave.
+func segments(w *formula.Working, r *runway.Run, factor float64) {
+	for _, seg := range r.Segments {
+		w.Note("%s: %s in %s.", capital(seg.Name), in(units.FieldLength, seg.Distance), in(units.ShortTime, seg.Time))
+	}
+	w.Note("Together %s; with the safety factor of %s it is %s.", in(units.FieldLength, r.Total), units.Plain(factor), in(units.FieldLength, r.Factored))
+}
+
+func capital(s string) string { return string(s[0]-'a'+'A') + s[1:] }
+
+// takeOffWorking derives the speeds and the forces at lift-off; the roll itself is an integral.
+func (s *Study) takeOffWorking(w *formula.Working) error {
+	w.Heading(partTakeOff)
+	a, t, how := s.Aircraft(), &s.TakeOff, s.Project.Plan.Technique
+	p := &pointperf.Point{Air: t.Place.Air, Mass: t.Mass, Config: aircraft.TakeOff}
+	w.Note("%s, %s.", t.Place.Strip.Name, in(units.Mass, t.Mass))
+	stall := pointperf.Stall(a, p, w)
+	v := how.LiftOffFactor * stall
+	w.Note("Lift-off at %s times the stall, %s; over the obstacle at %s times, %s.", units.Plain(how.LiftOffFactor), in(units.Speed, v), units.Plain(how.ClimbOutFactor), in(units.Speed, how.ClimbOutFactor*stall))
+	phi := polar.GroundEffect(a.WingHeight(), a.Span(), w)
+	lift := 0.5 * p.Air.Density * v * v * a.WingArea() * a.GroundCL()
+	pointperf.Drag(a, p, v, lift, phi, w)
+	if _, err := pointperf.ThrustAvailable(a, p, v, w); err != nil {
+		return err
+	}
+	w.Note("The roll integrates m dV/dt = T − D − μ (W cos φ − L) − W sin φ from rest, with μ %s on %s, a slope of %s and %s of head wind; these are the forces at its end.",
+		units.Plain(t.Place.Surface.Rolling), t.Place.Surface.Label, in(units.Fraction, t.Place.Strip.Slope), in(units.Speed, t.Place.HeadWind))
+	if t.Err != nil {
+		return t.Err
+	}
+	segments(w, &t.Run, how.TakeOffFactor)
+	_, err := pointperf.FullClimb(a, p, t.Run.Screen, w)
+	return err
+}
+
+// landingWorking derives the stall in the landing configuration and lists what the integration gave.
+func (s *Study) landingWorking(w *formula.Working) error {
+	w.Heading(partLanding)
+	a, how := s.Aircraft(), s.Project.Plan.Technique
+	start := &pointperf.Point{Air: s.Project.Departure.Air, Mass: a.StartMass(), Config: aircraft.Landing}
+	w.Note("The stall of the figures is that at the departure strip and start mass, %s; the landing itself is flown with what the mission leaves.", in(units.Mass, start.Mass))
+	pointperf.Stall(a, start, w)
+	l := &s.Landing
+	w.Note("%s, %s.", l.Place.Strip.Name, in(units.Mass, l.Mass))
+	stall := pointperf.Stall(a, &pointperf.Point{Air: l.Place.Air, Mass: l.Mass, Config: aircraft.Landing}, w)
+	w.Note("Approach at %s times the stall, %s, on a path of %s; touchdown at %s.", units.Plain(how.ApproachFactor), in(units.Speed, how.ApproachFactor*stall), in(units.Angle, how.ApproachAngle), in(units.Speed, l.Run.Speed))
+	if l.Err != nil {
+		return l.Err
+	}
+	segments(w, &l.Run, how.LandingFactor)
+	return nil
+}
+
+// ceilingWorking derives the climb that is left at the service ceiling.
+func (s *Study) ceilingWorking(w *formula.Working) error {
+	w.Heading(partCeiling)
+	if s.Service.Err != nil {
+		return s.Service.Err
+	}
+	a := s.Aircraft()
+	w.Note("The service ceiling %s is the pressure altitude at which the best rate of climb has fallen to %s, at start mass on the project's day; it is found by a bracketed root.",
+		in(units.Altitude, s.Service.Value), in(units.ClimbRate, pointperf.ServiceRate))
+	air, err := s.Project.Plan.Day.At(s.Service.Value, w)
+	if err != nil {
+		return err
+	}
+	p := &pointperf.Point{Air: air, Mass: a.StartMass()}
+	best := pointperf.BestRate(a, p)
+	if best.Err != nil {
+		return best.Err
+	}
+	if _, err := pointperf.FullClimb(a, p, best.TAS, w); err != nil {
+		return err
+	}
+	if s.Absolute.Err != nil {
+		return s.Absolute.Err
+	}
+	w.Note("At the absolute ceiling, %s, no rate of climb is left.", in(units.Altitude, s.Absolute.Value))
+	return nil
 }
 
 // tightestWorking derives the thrust in hand at the tightest point of the mission.
 func (s *Study) tightestWorking(w *formula.Working) error {
+	w.Heading(partTightest)
 	t := s.Flight.Tightest
 	if t == nil {
-		return nil
+		return units.Errorf(nil, "no leg was flown")
 	}
-	w.Heading("Tightest point of the mission, in “" + s.legName(t.Leg) + "”")
 	air, err := s.airOf(t)
 	if err != nil {
 		return err
 	}
-	w.Note("Pressure altitude %s, mass %s, true airspeed %s.", units.Metric.Format(units.Altitude, t.Altitude), units.Metric.Format(units.Mass, t.Mass), units.Metric.Format(units.Speed, t.TAS))
+	w.Note("In “%s”: pressure altitude %s, mass %s, true airspeed %s.", s.legName(t.Leg), in(units.Altitude, t.Altitude), in(units.Mass, t.Mass), in(units.Speed, t.TAS))
 	_, err = pointperf.At(s.Aircraft(), &pointperf.Point{Air: air, Mass: t.Mass}, t.TAS, w)
 	return err
+}
+
+// missionWorking lists what the integration of each leg gave, and the sums.
+func (s *Study) missionWorking(w *formula.Working) error {
+	w.Heading(partMission)
+	f := &s.Flight
+	for i := range f.Legs {
+		l := &f.Legs[i]
+		w.Note("%s: %s, %s over the ground, %s of fuel; %s at its end.", s.legName(i), in(units.Duration, l.Time), in(units.Distance, l.Distance), in(units.Mass, l.Fuel), in(units.Mass, l.End.Mass))
+	}
+	w.Note("Together, without reserve: %s, %s, %s of fuel. Distance, altitude and energy of each leg are integrated in time, the mass falling with the fuel.",
+		in(units.Duration, f.Time), in(units.Distance, f.Distance), in(units.Mass, f.Fuel))
+	if f.Failure != nil {
+		return f.Failure.Err
+	}
+	return nil
 }
