@@ -29,6 +29,13 @@ func act(s *project.Spec, variant int, action string) (string, error) {
 	case "add-leg":
 		s.Legs = append(s.Legs, mission.NewLeg(mission.Cruise, "New leg"))
 		return "Leg added", nil
+	case "insert-leg":
+		i, err := index(arg, len(s.Legs))
+		if err != nil {
+			return "", err
+		}
+		s.Legs = slices.Insert(s.Legs, i+1, mission.NewLeg(mission.Cruise, "New leg"))
+		return fmt.Sprintf("Leg added after “%s”", s.Legs[i].Name), nil
 	case "remove-leg":
 		return removed(&s.Legs, arg, "Leg", func(i int) string { return s.Legs[i].Name })
 	case "move-leg-up":

@@ -76,7 +76,7 @@ func (e *edit) basisClash(shown input.Entry, path, kind string) error {
 // actionClash keeps an action from another element than the one that its button stood beside.
 func (e *edit) actionClash(action string) error {
 	verb, arg, _ := strings.Cut(action, " ")
-	list := map[string]string{"remove-item": fmt.Sprintf("variants[%d].aircraft.weights.items", e.variant), "remove-leg": "legs", "move-leg-up": "legs",
+	list := map[string]string{"remove-item": fmt.Sprintf("variants[%d].aircraft.weights.items", e.variant), "remove-leg": "legs", "move-leg-up": "legs", "insert-leg": "legs",
 		"remove-requirement": "requirements"}[verb]
 	if _, err := strconv.Atoi(arg); err != nil || list == "" || e.base == e.head {
 		return nil

@@ -262,7 +262,7 @@ func (f *form) legs() Group {
 		if i > 0 {
 			b.Buttons = append(b.Buttons, Button{"move-leg-up " + n, "Earlier", "Move this leg one place earlier"})
 		}
-		b.Buttons = append(b.Buttons, Button{"remove-leg " + n, "Remove", "Remove this leg"})
+		b.Buttons = append(b.Buttons, Button{"insert-leg " + n, "Add a leg after", "Add a leg after this one"}, Button{"remove-leg " + n, "Remove", "Remove this leg"})
 		g.Blocks = append(g.Blocks, b)
 	}
 	g.Adds = []Button{{Action: "add-leg", Label: "Add a leg"}}

@@ -76,7 +76,11 @@ func (p *fixedPitch) Run(c Condition, setting float64, w *formula.Working) (Outp
 	if w != nil {
 		e.lapse(&c.Air, w)
 		e.power(setting, phi, n, w)
-		w.Note("Torque balance: at %.1f rpm of the propeller the power available equals the power absorbed.", n*60)
+		if limits&SpeedLimited != 0 {
+			w.Note("At the greatest speed of rotation, %.1f rpm of the propeller, full throttle would give more than the propeller absorbs: the throttle is reduced to hold it.", n*60)
+		} else {
+			w.Note("Torque balance: at %.1f rpm of the propeller the power available equals the power absorbed.", n*60)
+		}
 	}
 	return p.at(c, n, limits, w), nil
 }
