@@ -252,3 +252,17 @@ func BenchmarkStudy(b *testing.B) {
 		study.Run(p, 0, study.DefaultView(p, 0))
 	}
 }
+
+// TestEveryFigureHasAWorking: the part that a figure points to stands in the working, with more than its heading.
+func TestEveryFigureHasAWorking(t *testing.T) {
+	steps := study.All(built(t, project.Demo()))[0].Working().Steps
+	for _, k := range project.FigureKinds() {
+		part, found := study.WorkingPart(k.ID), false
+		for i, step := range steps {
+			found = found || step.Heading && step.Note == part && i+1 < len(steps) && !steps[i+1].Heading
+		}
+		if part == "" || !found {
+			t.Errorf("%s: no part %q in the working", k.ID, part)
+		}
+	}
+}
