@@ -91,3 +91,17 @@ func TestChartsByKeyboard(t *testing.T) {
 	}
 	has(t, p.text("#thrust-data"), "peed, m/s")
 }
+
+// TestKeysOutliveScrolling: the scroll that brings a focused chart into view does not wipe what the keys read.
+func TestKeysOutliveScrolling(t *testing.T) {
+	p, _ := bench(t)
+	const chart = "#mission-figure svg.chart"
+	eval[bool](p, `(document.querySelector($1).focus(), true)`, chart)
+	p.press("\u0303") // right
+	first := p.read(t)
+	eval[bool](p, `(scrollBy(0, 40), requestAnimationFrame(() => requestAnimationFrame(() => { window.scrolled = true; })), true)`)
+	p.until(`window.scrolled`)
+	if got := p.read(t); got != first {
+		t.Errorf("after a scroll the read-out is %q, before it %q", got, first)
+	}
+}

@@ -137,14 +137,27 @@
     box().hidden = true;
   };
 
+  const place = (svg, plot, x, clientY) => {
+    const top = new DOMPoint(map(plot.x, x), plot.k[0].q).matrixTransform(svg.getScreenCTM());
+    placeBox(box(), top.x, clientY === undefined ? top.y + 60 : clientY);
+  };
+
+  // A scroll takes the chart from under the pointer, but not from under the keys: the
+  // scroll may even be the one by which the chart that takes the focus comes into view.
+  const onScroll = () => {
+    if (!active) return;
+    const plot = active.byKey && active.svg.isConnected && plotOf(active.svg);
+    if (plot) place(active.svg, plot, active.x);
+    else hide();
+  };
+
   const show = (svg, plot, x, byKey, clientY) => {
     if (active && active.svg !== svg) hide();
     active = { svg, x, byKey };
     const values = plot.s.map((s) => at(plot.v[s.v], s.y, x));
     drawHair(svg, plot, x, values);
     fillBox(box(), plot, x, values);
-    const top = new DOMPoint(map(plot.x, x), plot.k[0].q).matrixTransform(svg.getScreenCTM());
-    placeBox(box(), top.x, clientY === undefined ? top.y + 60 : clientY);
+    place(svg, plot, x, clientY);
     if (byKey) announce(plot, x, values);
   };
 
@@ -195,5 +208,5 @@
   document.documentElement.addEventListener("pointerleave", () => { if (active && !active.byKey) hide(); });
   document.addEventListener("keydown", onKey);
   document.addEventListener("focusout", (e) => { if (active && active.byKey && e.target === active.svg) hide(); });
-  document.addEventListener("scroll", () => { if (active) hide(); }, { passive: true, capture: true });
+  document.addEventListener("scroll", onScroll, { passive: true, capture: true });
 })();
