@@ -28,14 +28,7 @@
   };
 
   // The box and the live region are made when first needed, and again if a swap took them.
-  const made = (name) => {
-    let e = document.body.querySelector(":scope > ." + name);
-    if (!e) {
-      e = node("div", name);
-      document.body.append(e);
-    }
-    return e;
-  };
+  const made = (name) => document.body.querySelector(":scope > ." + name) || document.body.appendChild(node("div", name));
   const box = () => made("read");
   const live = () => {
     const e = made("read-live");
@@ -191,12 +184,7 @@
     if (!plot || e.ctrlKey || e.metaKey || e.altKey) return;
     const { a, b } = plot.x, step = (b - a) / (e.shiftKey ? 10 : 100);
     const now = active && active.svg === svg ? active.x : null;
-    const next = {
-      ArrowRight: now === null ? a : now + step,
-      ArrowLeft: now === null ? b : now - step,
-      Home: a,
-      End: b,
-    }[e.key];
+    const next = { ArrowRight: now === null ? a : now + step, ArrowLeft: now === null ? b : now - step, Home: a, End: b }[e.key];
     if (e.key === "Escape") hide();
     if (next === undefined) return;
     e.preventDefault();
