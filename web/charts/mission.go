@@ -218,17 +218,10 @@ func legSpans(f *mission.Flight) []Span {
 	for i := range f.Legs {
 		l := &f.Legs[i]
 		if l.Time > 0 {
-			spans = append(spans, Span{From: l.Start.Time, To: l.End.Time, Label: legName(&l.Leg), Short: shortKinds[l.Leg.Kind]})
+			spans = append(spans, Span{From: l.Start.Time, To: l.End.Time, Label: l.Leg.Title(), Short: shortKinds[l.Leg.Kind]})
 		}
 	}
 	return spans
-}
-
-func legName(l *mission.Leg) string {
-	if l.Name != "" {
-		return l.Name
-	}
-	return l.Kind
 }
 
 // hours says a time in s in words for a sentence.
@@ -266,7 +259,7 @@ func missionWords(s *study.Study, sys units.System, force measure) string {
 		text += fmt.Sprintf(" It ends in “%s”: %s.", fail.Name, fail.Reason.In(sys))
 	}
 	if at := f.Tightest; at != nil {
-		text += fmt.Sprintf(" It is tightest in “%s” after %s, at %s and %s: %s.", legName(&f.Legs[at.Leg].Leg), hours(at.Time),
+		text += fmt.Sprintf(" It is tightest in “%s” after %s, at %s and %s: %s.", f.Legs[at.Leg].Leg.Title(), hours(at.Time),
 			sys.Format(units.Altitude, at.Altitude), massWords(sys, at.Mass), handWords(at, force))
 	}
 	switch r := f.Reserve; {

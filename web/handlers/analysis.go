@@ -18,20 +18,14 @@ func (s *site) analysis(path string, show func(*study.Study, views.Frame) templ.
 		if err != nil {
 			return err
 		}
-		i, err := h.variant(r)
+		st, mistaken, err := h.study(r)
 		if err != nil {
 			return err
 		}
-		p, err := h.build()
-		if err != nil {
-			return err
-		}
-		view, mistaken := viewOf(r.URL.Query(), p, i)
 		code := http.StatusOK
 		if len(mistaken) > 0 {
 			code = http.StatusUnprocessableEntity
 		}
-		st := study.Run(p, i, view)
 		return render(w, r, code, show(st, views.NewFrame(st, h.rev.Project, path, query(r.URL.Query()), mistaken)))
 	}
 }

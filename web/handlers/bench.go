@@ -61,6 +61,21 @@ func (h head) variant(r *http.Request) (int, error) {
 	return i, nil
 }
 
+// study computes the variant that the address names under the view that its query
+// sets, and says which of the query's settings were not understood.
+func (h head) study(r *http.Request) (*study.Study, []views.Refusal, error) {
+	i, err := h.variant(r)
+	if err != nil {
+		return nil, nil, err
+	}
+	p, err := h.build()
+	if err != nil {
+		return nil, nil, err
+	}
+	view, mistaken := viewOf(r.URL.Query(), p, i)
+	return study.Run(p, i, view), mistaken, nil
+}
+
 func (s *site) bench(w http.ResponseWriter, r *http.Request) error {
 	h, err := s.head(r)
 	if err != nil {
@@ -71,18 +86,13 @@ func (s *site) bench(w http.ResponseWriter, r *http.Request) error {
 
 // show answers with the bench, or with its changed part for the page's script.
 func (s *site) show(w http.ResponseWriter, r *http.Request, h head, refused []views.Refusal, message string) error {
-	i, err := h.variant(r)
+	studied, mistaken, err := h.study(r)
 	if err != nil {
 		return err
 	}
-	p, err := h.build()
-	if err != nil {
-		return err
-	}
-	view, mistaken := viewOf(r.URL.Query(), p, i)
 	st := views.BenchState{ProjectID: h.rev.Project, Revision: h.rev.Number, Saved: h.rev.Saved, CanUndo: h.rev.CanUndo, CanRedo: h.rev.CanRedo,
 		Query: query(r.URL.Query()), Refusals: refused, Message: message, View: mistaken}
-	b := views.NewBench(study.Run(p, i, view), st)
+	b := views.NewBench(studied, st)
 	code := http.StatusOK
 	if len(refused) > 0 || len(mistaken) > 0 {
 		code = http.StatusUnprocessableEntity

@@ -281,13 +281,7 @@ func lowerFirst(s string) string {
 	return s
 }
 
-func legName(s *study.Study, i int) string {
-	l := s.Project.Spec.Legs[i]
-	if l.Name != "" {
-		return l.Name
-	}
-	return l.Kind
-}
+func legName(s *study.Study, i int) string { return s.Project.Spec.Legs[i].Title() }
 
 // whenIn says when in its leg a sample stands.
 func whenIn(s *study.Study, t *mission.Sample, sys units.System) string {

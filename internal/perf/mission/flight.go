@@ -150,16 +150,8 @@ func (f *flier) fly(l *Leg) bool {
 	if l.Kind == Reserve {
 		return false
 	}
-	f.out.Failure = &Failure{Leg: f.now.Leg, Name: name(l), Reason: units.Explain(err), Err: err, At: f.now}
+	f.out.Failure = &Failure{Leg: f.now.Leg, Name: l.Title(), Reason: units.Explain(err), Err: err, At: f.now}
 	return false
-}
-
-// Name is the leg's name, or its kind when it has none.
-func name(l *Leg) string {
-	if l.Name != "" {
-		return l.Name
-	}
-	return l.Kind
 }
 
 func (f *flier) reserve(l *Leg, r *LegResult, err error) {

@@ -117,6 +117,14 @@ func options(values []string, label map[string]string) []input.Option {
 
 var pathLabels = map[string]string{FullPower: "full power", ByRate: "rate", ByAngle: "angle", Idle: "idle"}
 
+// Title is the leg's name, or its kind when it has none.
+func (l *Leg) Title() string {
+	if l.Name != "" {
+		return l.Name
+	}
+	return l.Kind
+}
+
 // airborne reports whether the leg is flown along a path.
 func (l *Leg) airborne() bool {
 	return l.Kind == Climb || l.Kind == Cruise || l.Kind == Loiter || l.Kind == Descent || l.Kind == Reserve

@@ -166,13 +166,7 @@ func (s *Study) missionFigures() {
 }
 
 // legName is the name of the leg with the given index.
-func (s *Study) legName(i int) string {
-	l := s.Project.Spec.Legs[i]
-	if l.Name != "" {
-		return l.Name
-	}
-	return l.Kind
-}
+func (s *Study) legName(i int) string { return s.Project.Spec.Legs[i].Title() }
 
 // Unsure lists the inputs that the figure rests on and whose basis is placeholder.
 func (s *Study) Unsure(f *Figure) []string {

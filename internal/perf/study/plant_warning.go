@@ -107,7 +107,7 @@ func (s *Study) cautionEnds(p *Plant) *Warning {
 		return nil
 	}
 	i := slices.IndexFunc(r.Points, func(pt PlantPoint) bool { return pt.Err != nil })
-	reason := units.Text(units.Explain(r.Points[i].Err).In(s.Project.Spec.System()))
+	reason := units.Nest(units.Explain(r.Points[i].Err))
 	w := &Warning{Code: "table-ends", Level: Caution, Clear: "Add rows to the propeller table."}
 	var outside *propeller.RangeError
 	switch {
@@ -128,7 +128,7 @@ func (s *Study) cautionPoints(p *Plant) *Warning {
 		var outside *propeller.RangeError
 		if errors.As(o.Err, &outside) {
 			return &Warning{Code: "point-outside", Level: Caution, Clear: "Add rows to the propeller table.",
-				Text: units.Say("{}: {}", units.Text(o.Name), units.Text(units.Explain(o.Err).In(s.Project.Spec.System())))}
+				Text: units.Say("{}: {}", units.Text(o.Name), units.Nest(units.Explain(o.Err)))}
 		}
 	}
 	return nil

@@ -72,7 +72,7 @@ func (s *Study) warnStrip(what string, strip Strip) {
 	switch {
 	case strip.Err != nil:
 		s.add(what+"-impossible", Stop, "strip", "Do not plan it: more power, less mass, a longer or harder strip.",
-			units.Say("no {}: {}", units.Text(what), units.Text(units.Explain(strip.Err).In(s.Project.Spec.System()))))
+			units.Say("no {}: {}", units.Text(what), units.Nest(units.Explain(strip.Err))))
 		return
 	case run.Total > length:
 		s.add(what+"-too-long", Stop, "strip", "Do not plan it: less mass, more power, a longer strip.",
@@ -98,7 +98,7 @@ func (s *Study) warnMission(a *aircraft.Aircraft) {
 	f := &s.Flight
 	if f.Failure != nil {
 		s.add("mission-ends", Stop, "mission", "Lower the demand of the leg, or give the aircraft more power or fuel.",
-			units.Say("the mission ends in “{}”: {}", units.Text(f.Failure.Name), units.Text(f.Failure.Reason.In(s.Project.Spec.System()))))
+			units.Say("the mission ends in “{}”: {}", units.Text(f.Failure.Name), units.Nest(f.Failure.Reason)))
 	}
 	if r := f.Reserve; f.Failure == nil {
 		switch {
@@ -106,12 +106,12 @@ func (s *Study) warnMission(a *aircraft.Aircraft) {
 			s.add("no-reserve", Stop, "mission", "Add a reserve leg: rules ask for 30 minutes by day, 45 by night (14 CFR 91.151).", units.Say("the mission keeps no reserve"))
 		case !r.Met:
 			s.add("reserve-short", Stop, "mission", "More fuel, or a shorter mission.",
-				units.Say("the reserve is not met: {} of {} flown; {}", units.Of(units.Duration, r.Flown), units.Of(units.Duration, r.Wanted), units.Text(r.Reason.In(s.Project.Spec.System()))))
+				units.Say("the reserve is not met: {} of {} flown; {}", units.Of(units.Duration, r.Flown), units.Of(units.Duration, r.Wanted), units.Nest(r.Reason)))
 		}
 	}
 	for i := range f.Legs {
 		for _, n := range f.Legs[i].Notes {
-			s.add("leg-note", Info, "mission", "Change the leg if that is not meant.", units.Say("{}: {}", units.Text(s.legName(i)), units.Text(n.In(s.Project.Spec.System()))))
+			s.add("leg-note", Info, "mission", "Change the leg if that is not meant.", units.Say("{}: {}", units.Text(s.legName(i)), units.Nest(n)))
 		}
 	}
 	s.warnStall(a)
@@ -162,7 +162,7 @@ func (s *Study) warnPlant() {
 		}
 	}
 	if s.staticErr != nil {
-		s.add("static", Caution, "powerplant", "Add rows to the propeller table.", units.Say("no static thrust: {}", units.Text(units.Explain(s.staticErr).In(s.Project.Spec.System()))))
+		s.add("static", Caution, "powerplant", "Add rows to the propeller table.", units.Say("no static thrust: {}", units.Nest(units.Explain(s.staticErr))))
 		return
 	}
 	lapse := s.TakeOff.Place.Air.Density / atmos.SeaLevelDensity

@@ -12,18 +12,21 @@ type Message struct {
 	Args   []Arg
 }
 
-// An Arg is a quantity, or a plain text when Text is set.
+// An Arg is a quantity, or a message of its own when Inner is set.
 type Arg struct {
 	Quantity Quantity
 	SI       float64 // in the SI unit of Quantity
-	Text     string
+	Inner    *Message
 }
 
 // Of is an argument of the quantity q with the value si in its SI unit.
 func Of(q Quantity, si float64) Arg { return Arg{Quantity: q, SI: si} }
 
 // Text is an argument that is text already.
-func Text(s string) Arg { return Arg{Text: s} }
+func Text(s string) Arg { return Nest(Message{Format: s}) }
+
+// Nest is an argument that is a message, read in the units of the one it stands in.
+func Nest(m Message) Arg { return Arg{Inner: &m} }
 
 // Say makes a message.
 func Say(format string, args ...Arg) Message { return Message{format, args} }
@@ -38,8 +41,8 @@ func (m Message) In(sys System) string {
 		if !found {
 			return b.String()
 		}
-		if a.Text != "" {
-			b.WriteString(a.Text)
+		if a.Inner != nil {
+			b.WriteString(a.Inner.In(sys))
 		} else {
 			b.WriteString(sys.Format(a.Quantity, a.SI))
 		}

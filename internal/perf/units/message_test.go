@@ -49,3 +49,13 @@ func TestErrorf(t *testing.T) {
 		t.Error("no error needs no explanation")
 	}
 }
+
+// TestNestedMessages: a message inside another is read in the units of the outer one, and an empty text stays empty.
+func TestNestedMessages(t *testing.T) {
+	m := Say("it ends: {}{}", Nest(Say("no higher than {}", Of(Altitude, 3048))), Text(""))
+	for sys, want := range map[System]string{Metric: "it ends: no higher than 3048\u00a0m", Aviation: "it ends: no higher than 10\u202f000\u00a0ft"} {
+		if got := m.In(sys); got != want {
+			t.Errorf("%s: %q, want %q", sys, got, want)
+		}
+	}
+}
