@@ -141,8 +141,8 @@ func TestEvaluateRefuses(t *testing.T) {
 		{"missing", `"wing_area": 12.1,`, ``, frame + ".wing_area", "", "0.02 to 500 m²"},
 		{"unknown kind", `"kind": "piston-propeller"`, `"kind": "rubber"`, "variants[0].aircraft.powerplant.kind", "rubber", "piston-propeller"},
 		{"conflict", `"volume": 0.088`, `"volume": 0.2`, "variants[0].aircraft.powerplant.values.fuel.volume", "200.0 L", "tanks hold"},
-		{"malformed", `"format": 1,`, `"format": 1,,`, "", "", ""},
-		{"other format", `"format": 1,`, `"format": 7,`, "format", "7", "1"},
+		{"malformed", `"format": 2,`, `"format": 2,,`, "", "", ""},
+		{"other format", `"format": 2,`, `"format": 7,`, "format", "7", "2"},
 		{"script in a name", `"kind": "taxi"`, `"kind": "<script>"`, "legs[0].kind", "<script>", "taxi"},
 	} {
 		if !strings.Contains(demo, c.old) {

@@ -76,31 +76,23 @@ func (h head) study(r *http.Request) (*study.Study, []views.Refusal, error) {
 	return study.Run(p, i, view), mistaken, nil
 }
 
-func (s *site) bench(w http.ResponseWriter, r *http.Request) error {
-	h, err := s.head(r)
-	if err != nil {
-		return err
-	}
-	return s.show(w, r, h, nil, "")
-}
-
-// show answers with the bench, or with its changed part for the page's script.
-func (s *site) show(w http.ResponseWriter, r *http.Request, h head, refused []views.Refusal, message string) error {
+// show answers with the page on which the edit was made, or with its changed part for the page's script.
+func (s *site) show(w http.ResponseWriter, r *http.Request, h head, name string, refused []views.Refusal, message string) error {
 	studied, mistaken, err := h.study(r)
 	if err != nil {
 		return err
 	}
-	st := views.BenchState{ProjectID: h.rev.Project, Revision: h.rev.Number, Saved: h.rev.Saved, CanUndo: h.rev.CanUndo, CanRedo: h.rev.CanRedo,
+	st := views.State{ProjectID: h.rev.Project, Page: name, Revision: h.rev.Number, Saved: h.rev.Saved, CanUndo: h.rev.CanUndo, CanRedo: h.rev.CanRedo,
 		Query: query(r.URL.Query()), Refusals: refused, Message: message, View: mistaken}
-	b := views.NewBench(studied, st)
 	code := http.StatusOK
 	if len(refused) > 0 || len(mistaken) > 0 {
 		code = http.StatusUnprocessableEntity
 	}
+	page, part := editPages[name].show(studied, st)
 	if swaps(r) {
-		return render(w, r, code, views.BenchBody(b))
+		return render(w, r, code, part)
 	}
-	return render(w, r, code, views.BenchPage(b))
+	return render(w, r, code, page)
 }
 
 // viewNames are the query's settings of the view.
@@ -188,12 +180,12 @@ func (s *site) step(move func(context.Context, int64) (store.Revision, error), d
 // settled answers an edit that was taken: the new page for the script, else a redirect to it.
 func (s *site) settled(w http.ResponseWriter, r *http.Request, h head, message string) error {
 	if swaps(r) {
-		return s.show(w, r, h, nil, message)
+		return s.show(w, r, h, pageName(r), nil, message)
 	}
 	id := chi.URLParam(r, "variant")
 	if _, ok := h.spec.Variant(id); !ok {
 		id = h.spec.Variants[0].ID
 	}
-	http.Redirect(w, r, fmt.Sprintf("/projects/%d/variants/%s%s", h.rev.Project, id, query(r.URL.Query())), http.StatusSeeOther)
+	http.Redirect(w, r, fmt.Sprintf("/projects/%d/variants/%s%s%s", h.rev.Project, id, editPages[pageName(r)].path, query(r.URL.Query())), http.StatusSeeOther)
 	return nil
 }

@@ -155,12 +155,13 @@ func (e *edit) value(shown input.Entry, text string) change {
 		if !ok {
 			return "", errGone
 		}
-		whose := owner(s, shown.Path)
+		whose, before := owner(s, shown.Path), views.EntryText(entry, sys)
 		said, err := set(entry, text, sys)
 		if said != "" {
 			said = whose + said
 		}
-		if err == nil && entry.Choice != nil {
+		if err == nil && said != "" && entry.Choice != nil {
+			input.Convert(s, shown.Path, before)
 			input.Settle(s) // what other choices offer may have changed
 		}
 		return said, err

@@ -68,7 +68,7 @@ func isConflict(err error) bool {
 
 func (s *site) answerEdit(w http.ResponseWriter, r *http.Request, h head, e *edit) error {
 	if len(e.refused) > 0 {
-		return s.show(w, r, h, e.refused, e.summary())
+		return s.show(w, r, h, pageName(r), e.refused, e.summary())
 	}
 	return s.settled(w, r, h, e.summary())
 }

@@ -50,7 +50,7 @@ func New(cfg Config) (http.Handler, error) {
 		r.Post("/unarchive", s.serve(s.archiveProject(false)))
 		r.Get("/history", s.serve(s.history))
 		r.Post("/restore/{revision}", s.serve(s.restore))
-		r.Get("/variants/{variant}", s.serve(s.bench))
+		r.Get("/variants/{variant}", s.serve(s.editable("")))
 		r.Post("/variants/{variant}", s.serve(s.edit))
 		r.Post("/variants/{variant}/units", s.serve(s.setUnits))
 		r.Post("/variants/{variant}/undo", s.serve(s.step(s.db.Undo, "undone")))

@@ -4,9 +4,7 @@ import (
 	"bytes"
 	"fmt"
 	"math"
-	"strconv"
 	"strings"
-	"time"
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/mission"
@@ -20,33 +18,19 @@ import (
 // A Bench is the page of one variant: inputs at one side, results at the other.
 type Bench struct {
 	Frame
-	Action      string // where edits are posted, with the view's query
-	UndoURL     string
-	RedoURL     string
-	SystemURL   string
-	Systems     []Option
-	System      string
-	Revision    string
-	Saved       string
-	CanUndo     bool
-	CanRedo     bool
-	Message     string // about the edit just made
-	Refused     int
-	RefusedText string
-	Loose       []string // what was refused and has no field on the page to stand beside
-	Verdict     Verdict
-	Tiles       []Tile
-	Groups      []Group
-	View        ViewForm
-	Speeds      Speeds
-	Charts      Charts
-	Strips      []StripTable
-	Climb       Grid
-	Legs        Grid
-	Plant       Grid
-	Figures     []Row
-	Warnings    []WarningView
-	Weak        string // how many inputs are placeholders
+	Editing
+	Verdict  Verdict
+	Tiles    []Tile
+	View     ViewForm
+	Speeds   Speeds
+	Charts   Charts
+	Strips   []StripTable
+	Climb    Grid
+	Legs     Grid
+	Plant    Grid
+	Figures  []Row
+	Warnings []WarningView
+	Weak     string // how many inputs are placeholders
 }
 
 // A Link is a way to another page.
@@ -141,38 +125,15 @@ type Charts struct {
 	Thrust, Power, Climb, Mission ChartView
 }
 
-// A BenchState is what the bench shows beside the study itself.
-type BenchState struct {
-	ProjectID int64
-	Revision  int64
-	Saved     time.Time
-	CanUndo   bool
-	CanRedo   bool
-	Query     string // of the view, with its question mark, or empty
-	Refusals  []Refusal
-	Message   string
-	View      []Refusal // conditions of the view that were not understood
-}
-
 // NewBench makes the page of a study.
-func NewBench(s *study.Study, st BenchState) Bench {
+func NewBench(s *study.Study, st State) Bench {
 	spec, v := s.Project.Spec, s.Variant()
 	sys := spec.System()
 	here := fmt.Sprintf("/projects/%d/variants/%s", st.ProjectID, v.ID)
-	b := Bench{
-		Frame: NewFrame(s, st.ProjectID, "", st.Query, st.View), Action: here + st.Query,
-		UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query,
-		System: string(sys), Revision: strconv.FormatInt(st.Revision, 10), Saved: st.Saved.Local().Format("15:04:05"),
-		CanUndo: st.CanUndo, CanRedo: st.CanRedo, Message: st.Message, Refused: len(st.Refusals),
-	}
-	for _, o := range units.Systems {
-		b.Systems = append(b.Systems, Option{string(o), o.Label(), o == sys})
-	}
+	b := Bench{Frame: NewFrame(s, st.ProjectID, "", st.Query, st.View), Editing: newEditing(s, st)}
 	b.Verdict = newVerdict(s, sys)
 	b.Tiles = tiles(s, sys, here+"/working")
-	b.Groups = newForm(spec, s.Index, st.Refusals).groups()
-	b.Loose = loose(st.Refusals, b.Groups)
-	b.RefusedText = refusedText(len(st.Refusals), len(b.Loose))
+	b.form(newForm(spec, s.Index, st.Refusals).groups(), st.Refusals)
 	summarise(b.Groups, s, sys)
 	b.View = newViewForm(s, sys, b.Frame)
 	b.Speeds = speeds(s, sys)

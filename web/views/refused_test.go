@@ -43,7 +43,7 @@ func TestRefusedIsShownOnce(t *testing.T) {
 	for _, path := range []string{field, idle, gone, basis, "action"} {
 		refusals = append(refusals, Refusal{Path: path, Text: "typed " + path, Why: "Why " + path + "."})
 	}
-	b := NewBench(study.Run(p, 0, study.DefaultView(p, 0)), BenchState{ProjectID: 1, Revision: 1, Refusals: refusals})
+	b := NewBench(study.Run(p, 0, study.DefaultView(p, 0)), State{ProjectID: 1, Revision: 1, Refusals: refusals})
 	want := []string{fmt.Sprintf("“typed %s”: Why %[1]s.", idle), fmt.Sprintf("“typed %s”: Why %[1]s.", gone), "“typed action”: Why action."}
 	if !slices.Equal(b.Loose, want) {
 		t.Errorf("at the top %q, want %q", b.Loose, want)

@@ -1,7 +1,6 @@
 package mission_test
 
 import (
-	"encoding/json"
 	"os"
 	"path/filepath"
 	"testing"
@@ -19,11 +18,11 @@ func scipyProject(t testing.TB) *project.Project {
 	if err != nil {
 		t.Fatal(err)
 	}
-	var s project.Spec
-	if err := json.Unmarshal(text, &s); err != nil {
+	s, err := project.Decode(text)
+	if err != nil {
 		t.Fatal(err)
 	}
-	return build(t, &s)
+	return build(t, s)
 }
 
 func build(t testing.TB, s *project.Spec) *project.Project {

@@ -19,7 +19,8 @@ const maxErrors = 200
 // Decode reads a project document and builds it once to prove it sound. Unlike
 // encoding/json it refuses unknown, duplicate, missing and null fields, and
 // matches keys exactly. Only notes, bases and inputs that the document's own choices
-// make idle may be missing; they become zero, empty or, for a choice, its first option. The error
+// make idle may be missing; they become zero, empty or, for a choice, its first option. A document of an
+// older format may also lack what came later (format.go). The error
 // joins *input.Error values, up to 200 of them, in the order of the text.
 func Decode(text []byte) (*Spec, error) {
 	d := &decoder{text: text, places: map[string]int{}, failed: map[string]bool{}}
@@ -27,7 +28,11 @@ func Decode(text []byte) (*Spec, error) {
 		return nil, err
 	}
 	s := &Spec{}
+	d.format = d.text.formatOf()
 	d.value(document(), reflect.ValueOf(s).Elem(), "", d.text.whole())
+	if d.format > 0 && s.Format == d.format {
+		s.Format = Format
+	}
 	d.complete(s)
 	rest := errors.Join(s.head(), input.Check(s), s.references())
 	if len(d.errs) == 0 {
@@ -49,6 +54,7 @@ func Decode(text []byte) (*Spec, error) {
 // A decoder reads one document.
 type decoder struct {
 	text    jsonText
+	format  int // that the document states; 0 when it is none that is read
 	errs    []*input.Error
 	failed  map[string]bool // paths at which errs stand, also those that were one too many
 	places  map[string]int  // where each value begins, by path

@@ -44,9 +44,9 @@ func TestDecodeSaysWhatIsWrong(t *testing.T) {
 		{`"values": {`, `"kind": "rubber", "values": {`, plant + ".kind", input.ErrDuplicate, "kind"},
 		{`"values": {`, `"valeus": {}, "values": {`, plant + ".valeus", input.ErrUnknown, "accepted: values"},
 		{`"values": {`, `"valeus": {`, plant + ".values", input.ErrRequired, ""},
-		{`"format": 1`, `"format": 2`, "format", input.ErrChoice, "accepted: 1"},
-		{`"format": 1`, `"format": 1.5`, "format", input.ErrType, "accepted: 1"},
-		{`"format": 1`, `"format": "1"`, "format", input.ErrType, "accepted: 1"},
+		{`"format": 2`, `"format": 3`, "format", input.ErrChoice, "accepted: 2"},
+		{`"format": 2`, `"format": 1.5`, "format", input.ErrType, "accepted: 2"},
+		{`"format": 2`, `"format": "2"`, "format", input.ErrType, "accepted: 2"},
 		{`"units": "SI"`, `"units": "ft"`, "units", input.ErrChoice, "accepted: SI"},
 		{`"kind": "measured"`, `"kind": "guessed"`, "variants[0].basis.airframe.span.kind", input.ErrChoice, ""},
 		{`"bound": "at-most"`, `"bound": "below"`, "requirements[0].bound", input.ErrChoice, "at-most, at-least"},
@@ -223,7 +223,7 @@ func FuzzDecode(f *testing.F) {
 	for _, s := range []*Spec{Demo(), New("x")} {
 		f.Add(encoded(f, s))
 	}
-	f.Add([]byte(`{"format":1,"day":{"given":5},"legs":[{"kind":"climb"}],"variants":[{"aircraft":{"powerplant":{"values":{},"kind":"piston-propeller"}}}]}`))
+	f.Add([]byte(`{"format":2,"day":{"given":5},"legs":[{"kind":"climb"}],"variants":[{"aircraft":{"powerplant":{"values":{},"kind":"piston-propeller"}}}]}`))
 	f.Add([]byte(`{"strips":[[["\ud800"]]],"":{"\u0000":-1e-400}}`))
 	f.Fuzz(func(t *testing.T, text []byte) {
 		s, err := Decode(text)

@@ -102,7 +102,7 @@ func (d *decoder) object(n *node, dst reflect.Value, path string, v span) {
 		d.value(f, dst.Field(f.index), where, m.span)
 	}
 	for _, f := range n.fields {
-		if !found[f.name] && !f.optional {
+		if !found[f.name] && !f.optional && !d.adopt(f, dst.Field(f.index)) {
 			d.missing = append(d.missing, missing{under(path, f.name), f})
 		}
 	}

@@ -16,9 +16,6 @@ import (
 	"legwright/internal/perf/units"
 )
 
-// Format is the number of the document format that this program writes.
-const Format = 1
-
 // Spec is a project document. Every number in it is in SI.
 type Spec struct {
 	Format       int              `json:"format"` // of the document

@@ -63,6 +63,7 @@ type node struct {
 	typ      reflect.Type // of the Go value that holds it
 	index    int          // of the field in its struct
 	optional bool         // may be missing whatever the choices are
+	adopted  string       // JSON value of a field that an older document does not have; empty for the first format's fields
 	entry    input.Entry  // describes a leaf that is an input, under a zero value's choices
 	fixed    *shape       // describes a leaf by its place; it goes before entry
 	fields   []*node      // of an object, in order
@@ -127,7 +128,7 @@ func (n *node) growFields(path string) {
 		f := grow(n.typ.Field(i).Type, where)
 		f.name, f.index = name, i
 		f.optional = name == "note" || name == "basis"
-		f.entry, f.fixed = entries[name], fixed[where]
+		f.entry, f.fixed, f.adopted = entries[name], fixed[where], added[where]
 		n.fields = append(n.fields, f)
 	}
 }

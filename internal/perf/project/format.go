@@ -1,0 +1,46 @@
+package project
+
+import (
+	"encoding/json"
+	"reflect"
+)
+
+// Format is the number of the document format that this program writes.
+const Format = 2
+
+// firstFormat is the oldest format that Decode reads.
+const firstFormat = 1
+
+// added lists the fields that format 1 did not have, by path without indices, each with
+// the JSON value that stands for what a document of that format meant.
+var added = map[string]string{}
+
+// formatOf is the number of the format that the document states, 0 where it states none that Decode reads.
+func (t jsonText) formatOf() int {
+	if t.first(t.whole()) != '{' {
+		return 0
+	}
+	members, _ := t.members(t.whole(), maxItems)
+	for _, m := range members {
+		if m.key != "format" || !numeric(t.first(m.span)) {
+			continue
+		}
+		for n := firstFormat; n <= Format; n++ {
+			if x, ok := t.number(m.span); ok && x == float64(n) {
+				return n
+			}
+		}
+	}
+	return 0
+}
+
+// adopt gives a field that an older document could not have the value that it meant.
+func (d *decoder) adopt(f *node, dst reflect.Value) bool {
+	if d.format == 0 || d.format == Format || f.adopted == "" {
+		return false
+	}
+	if err := json.Unmarshal([]byte(f.adopted), dst.Addr().Interface()); err != nil {
+		panic("project: the value for older documents of " + f.name + ": " + err.Error())
+	}
+	return true
+}
