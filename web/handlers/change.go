@@ -111,15 +111,11 @@ func (e *edit) differences(form url.Values) []change {
 	for _, entry := range input.Walk(e.base) {
 		if form.Has(entry.Path) && !isIdentifier(entry.Path) {
 			text := tidy(form.Get(entry.Path))
-			if text != tidy(views.EntryText(entry, e.sys)) {
+			if text != tidy(views.FieldText(e.base, entry, e.sys)) {
 				list = append(list, e.value(entry, text))
 			}
 		}
-		if kind := form.Get("basis:" + entry.Path); kind != "" {
-			if c, ok := e.basis(entry, kind); ok {
-				list = append(list, c)
-			}
-		}
+		list = append(list, e.basisChanges(entry, form)...)
 	}
 	return list
 }
@@ -156,7 +152,7 @@ func (e *edit) value(shown input.Entry, text string) change {
 			return "", errGone
 		}
 		whose, before := owner(s, shown.Path), views.EntryText(entry, sys)
-		said, err := set(entry, text, sys)
+		said, err := setIn(s, entry, text, sys)
 		if said != "" {
 			said = whose + said
 		}
@@ -250,35 +246,4 @@ func clipText(s string) string {
 		return string(r[:40]) + "…"
 	}
 	return s
-}
-
-// basis is the change of where an aircraft input comes from.
-func (e *edit) basis(shown input.Entry, kind string) (change, bool) {
-	path, ok := strings.CutPrefix(shown.Path, fmt.Sprintf("variants[%d].aircraft.", e.variant))
-	if !ok || e.base.Variants[e.variant].BasisOf(path).Kind == kind {
-		return change{}, false
-	}
-	clash := e.basisClash(shown, path, kind)
-	return change{path: "basis:" + shown.Path, text: kind, set: func(s *project.Spec) (string, error) {
-		if clash != nil {
-			return "", clash
-		}
-		v := &s.Variants[e.variant]
-		b := v.BasisOf(path)
-		b.Kind = kind
-		if v.Basis == nil {
-			v.Basis = map[string]project.Basis{}
-		}
-		v.Basis[path] = b
-		return fmt.Sprintf("%s is now %s", shown.Label(), basisWord(kind)), nil
-	}}, true
-}
-
-func basisWord(kind string) string {
-	for _, o := range project.BasisKinds {
-		if o.Value == kind {
-			return o.Label
-		}
-	}
-	return kind
 }

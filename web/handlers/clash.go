@@ -45,32 +45,14 @@ func (e *edit) clash(shown input.Entry, text string) error {
 	if e.moved(shown.Path) {
 		return errMoved
 	}
-	before, after := tidy(views.EntryText(shown, e.sys)), tidy(views.EntryText(now, e.sys))
+	before, after := tidy(views.FieldText(e.base, shown, e.sys)), tidy(views.FieldText(e.head, now, e.sys))
 	if after == before || after == text {
 		return nil
 	}
 	if now.Number != nil {
-		after = withUnit(e.sys, now.Number.Quantity, *now.Number.Value)
+		after = strings.TrimSpace(after + " " + e.sys.Unit(now.Number.Quantity).Symbol)
 	}
 	return errElsewhere(clipText(after))
-}
-
-// basisClash is clash for the basis of an input.
-func (e *edit) basisClash(shown input.Entry, path, kind string) error {
-	if e.base == e.head {
-		return nil
-	}
-	if _, ok := e.now[shown.Path]; !ok {
-		return errGone
-	}
-	if e.moved(shown.Path) {
-		return errMoved
-	}
-	before, after := e.base.Variants[e.variant].BasisOf(path).Kind, e.head.Variants[e.variant].BasisOf(path).Kind
-	if after == before || after == kind {
-		return nil
-	}
-	return errElsewhere(basisWord(after))
 }
 
 // actionClash keeps an action from another element than the one that its button stood beside.

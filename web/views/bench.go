@@ -30,7 +30,7 @@ type Bench struct {
 	Plant    Grid
 	Figures  []Row
 	Warnings []WarningView
-	Weak     string // how many inputs are placeholders
+	Weak     string // how many inputs are placeholders or estimates
 }
 
 // A Link is a way to another page.
@@ -98,11 +98,6 @@ type StripTable struct {
 	Why      string // says that it rests on placeholders; empty when it does not
 }
 
-// A WarningView is one warning as shown.
-type WarningView struct {
-	Code, Level, Word, Text, Clear string
-}
-
 // A ViewForm is the condition of the thrust chart.
 type ViewForm struct {
 	URL       string
@@ -142,23 +137,34 @@ func NewBench(s *study.Study, st State) Bench {
 	b.Strips[0].Why, b.Strips[1].Why = weakness(s, "take_off_distance"), weakness(s, "landing_distance")
 	b.Climb, b.Legs, b.Plant = climbGrid(s, sys), legGrid(s, sys), plantGrid(s, sys)
 	b.Figures = figures(s, sys, here+"/working")
-	for _, w := range s.Warnings {
-		b.Warnings = append(b.Warnings, WarningView{w.Code, string(w.Level), levelWord(w.Level), sentence(w.Text.In(sys)), w.Clear})
+	b.Warnings = warnings(s.Warnings, sys)
+	for i := range b.Groups {
+		b.Groups[i].Warnings = concerning(b.Warnings, groupSubjects[b.Groups[i].ID])
 	}
-	if n := len(s.Placeholders()); n > 0 {
-		b.Weak = fmt.Sprintf("%d of the aircraft's inputs are placeholders; a figure that rests on one is marked.", n)
-	}
+	b.Weak = firmness(s)
 	return b
 }
 
-func levelWord(l study.Level) string {
-	switch l {
-	case study.Stop:
-		return "Stop"
-	case study.Caution:
-		return "Caution"
+// firmness says how many of the aircraft's inputs are placeholders and how many estimates.
+func firmness(s *study.Study) string {
+	var parts []string
+	for _, k := range []struct{ kind, one, many string }{{project.Placeholder, "one placeholder", "%d placeholders"}, {project.Estimated, "one estimate", "%d estimates"}} {
+		switch n := len(s.OnBasis(k.kind)); n {
+		case 0:
+		case 1:
+			parts = append(parts, k.one)
+		default:
+			parts = append(parts, fmt.Sprintf(k.many, n))
+		}
 	}
-	return "Note"
+	if len(parts) == 0 {
+		return "Every input of the aircraft is measured, calculated or the maker's."
+	}
+	text := "Among the aircraft's inputs: " + strings.Join(parts, " and ") + "."
+	if len(s.Placeholders()) > 0 {
+		text += " A figure that rests on a placeholder is marked."
+	}
+	return text
 }
 
 // newVerdict words the answer to: does it fly the mission, and where is it tightest.

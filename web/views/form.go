@@ -23,10 +23,12 @@ type Field struct {
 	Head    string // column heads of a table
 	Note    string
 	Accepts string // the accepted range, for the hint
+	Typical string // the range that a reader would expect, with its source
 	Unusual string // the value lies outside the typical range
 	Error   string
 	Basis   []Option // nil when the input has no basis
 	Weak    bool     // placeholder
+	Remark  string   // note of the basis
 }
 
 // An Option is one choice of a select.
@@ -43,6 +45,8 @@ type Group struct {
 	Open    bool
 	Blocks  []Block
 	Adds    []Button // actions that add to a list
+
+	Warnings []WarningView // about what the group holds
 }
 
 // A Block is a run of fields under an optional heading.
@@ -95,14 +99,22 @@ func EntryText(e input.Entry, sys units.System) string {
 	return *e.Text.Value
 }
 
+// FieldText is EntryText, with the stated band of an aircraft's number.
+func FieldText(spec *project.Spec, e input.Entry, sys units.System) string {
+	if v, path, ours := spec.InAircraft(e.Path); ours && e.Number != nil {
+		return e.Number.WithBand(sys, *e.Number.Value, v.BasisOf(path).PlusMinus)
+	}
+	return EntryText(e, sys)
+}
+
 // field makes the field of one entry.
 func (f *form) field(e input.Entry) Field {
-	fd := Field{Path: e.Path, ID: elementID(e.Path), Label: e.Label(), Value: EntryText(e, f.sys)}
+	fd := Field{Path: e.Path, ID: elementID(e.Path), Label: e.Label(), Value: FieldText(f.spec, e, f.sys)}
 	switch {
 	case e.Number != nil:
 		u := f.sys.Unit(e.Number.Quantity)
 		fd.Kind, fd.Unit, fd.Note = "number", u.Symbol, e.Number.Note
-		fd.Accepts, fd.Unusual = e.Number.Accepted(u), e.Number.Unusual(*e.Number.Value, u)
+		fd.Accepts, fd.Typical, fd.Unusual = e.Number.Accepted(u), e.Number.Usual(u), e.Number.Unusual(*e.Number.Value, u)
 	case e.Table != nil:
 		fd.Kind, fd.Note, fd.Rows, fd.Head = "table", e.Table.Note, max(4, min(14, len(*e.Table.Value)+1)), tableHead(e.Table, f.sys)
 	case e.Choice != nil:
@@ -130,20 +142,22 @@ func tableHead(t *input.Table, sys units.System) string {
 
 // basis adds the basis of an aircraft's number or table.
 func (f *form) basis(e input.Entry, fd *Field) {
-	path, ours := strings.CutPrefix(e.Path, fmt.Sprintf("variants[%d].aircraft.", f.variant))
+	v, path, ours := f.spec.InAircraft(e.Path)
 	if !ours || (e.Number == nil && e.Table == nil) {
 		return
 	}
-	b := f.spec.Variants[f.variant].BasisOf(path)
-	fd.Weak = b.Kind == project.Placeholder
+	b := v.BasisOf(path)
+	fd.Weak, fd.Remark = b.Kind == project.Placeholder, b.Note
 	for _, o := range project.BasisKinds {
 		fd.Basis = append(fd.Basis, Option{o.Value, o.Label, o.Value == b.Kind})
 	}
-	if r, ok := f.refusals["basis:"+e.Path]; ok {
-		fd.Error = strings.TrimSpace(fd.Error + " Basis: " + lowerFirst(r.Why))
-	}
-	if b.PlusMinus > 0 && e.Number != nil {
-		fd.Note = strings.TrimSpace(fd.Note + " ± " + f.sys.Entry(e.Number.Quantity, b.PlusMinus) + " " + f.sys.Unit(e.Number.Quantity).Symbol + " as stated.")
+	for _, part := range []struct{ prefix, word string }{{"basis:", "Basis"}, {"note:", "Note"}} {
+		if r, ok := f.refusals[part.prefix+e.Path]; ok {
+			fd.Error = strings.TrimSpace(fd.Error + " " + part.word + ": " + lowerFirst(r.Why))
+			if part.prefix == "note:" {
+				fd.Remark = r.Text
+			}
+		}
 	}
 }
 

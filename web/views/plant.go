@@ -46,9 +46,7 @@ func newPlant(s *study.Study, p *study.Plant, frame Frame) Plant {
 	}
 	v.Lead = plantLead(s, p, sys)
 	v.Tiles = plantTiles(s, p, sys)
-	for _, w := range p.Cautions {
-		v.Cautions = append(v.Cautions, WarningView{w.Code, string(w.Level), levelWord(w.Level), sentence(w.Text.In(sys)), w.Clear})
-	}
+	v.Cautions = warnings(p.Cautions, sys)
 	v.Given = givenGrid(p)
 	v.charts(charts.NewPlantCharts(s, p, sys))
 	if p.Curves == nil {

@@ -9,7 +9,7 @@ func loose(refusals []Refusal, groups []Group) []string {
 		for _, b := range g.Blocks {
 			for _, f := range b.Fields {
 				if f.Error != "" {
-					marked[f.Path], marked["basis:"+f.Path] = true, true
+					marked[f.Path], marked["basis:"+f.Path], marked["note:"+f.Path] = true, true, true
 				}
 			}
 		}

@@ -18,7 +18,8 @@ type StripAnalysis struct {
 	Lead     string
 	Form     ViewForm
 	Sides    []StripSide
-	Source   string // of the published factors
+	Source   string        // of the published factors
+	Warnings []WarningView // of the take-off and landing of the mission; none when another mass is looked at
 }
 
 // A StripSide is one of the two.
@@ -76,6 +77,7 @@ func NewStrip(s *study.Study, frame Frame) StripAnalysis {
 		p.Lead += fmt.Sprintf("Both are flown at %s, in place of their masses in the mission: %s.", sys.Format(units.Mass, off.Present.Mass), mission)
 	} else {
 		p.Lead += fmt.Sprintf("Until a mass is given here, each is flown at its mass in the mission: %s.", mission)
+		p.Warnings = concerning(warnings(s.Warnings, sys), "strip")
 	}
 	return p
 }

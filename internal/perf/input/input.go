@@ -6,6 +6,7 @@ package input
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"legwright/internal/perf/units"
 )
@@ -73,7 +74,17 @@ func (s *Spec) Unusual(si float64, u units.Unit) string {
 	if t == nil || (si >= t.Low && si <= t.High) {
 		return ""
 	}
-	return fmt.Sprintf("Typical %s to %s %s (%s).", short(u.FromSI(t.Low)), short(u.FromSI(t.High)), u.Symbol, t.Source)
+	return s.Usual(u)
+}
+
+// Usual says in words the range that a reader would expect and where it comes from, or "" when none is known.
+func (s *Spec) Usual(u units.Unit) string {
+	t := s.Typical
+	if t == nil {
+		return ""
+	}
+	number := strings.TrimSpace(short(u.FromSI(t.High)) + " " + u.Symbol)
+	return fmt.Sprintf("Typical %s to %s (%s).", short(u.FromSI(t.Low)), number, t.Source)
 }
 
 func short(v float64) string { return units.Plain(round(v, 3)) }

@@ -53,36 +53,6 @@ type Variant struct {
 	Basis    map[string]Basis `json:"basis"` // of the aircraft's inputs, by path within it; an input without one is a placeholder
 }
 
-// A Basis says where an input comes from.
-type Basis struct {
-	Kind      string  `json:"kind"`       // one of BasisKinds
-	PlusMinus float64 `json:"plus_minus"` // half width of the stated band in the input's SI unit, >= 0; 0 when not stated
-	Note      string  `json:"note"`
-}
-
-// The kinds of basis, from the surest to the least.
-const (
-	Measured    = "measured"
-	Maker       = "maker"
-	Calculated  = "calculated"
-	Estimated   = "estimated"
-	Placeholder = "placeholder"
-)
-
-// BasisKinds lists the kinds of basis with their words.
-var BasisKinds = []input.Option{
-	{Value: Measured, Label: "measured"}, {Value: Maker, Label: "maker's data"}, {Value: Calculated, Label: "calculated"},
-	{Value: Estimated, Label: "estimated"}, {Value: Placeholder, Label: "placeholder"},
-}
-
-// BasisOf is the basis of the aircraft input at path. A path inside a table or a list has the basis of the whole.
-func (v *Variant) BasisOf(path string) Basis {
-	if b, ok := v.Basis[path]; ok {
-		return b
-	}
-	return Basis{Kind: Placeholder}
-}
-
 // Inputs describes the project's own inputs.
 func (s *Spec) Inputs() []input.Entry {
 	options := make([]input.Option, len(units.Systems))

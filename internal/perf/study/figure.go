@@ -182,11 +182,14 @@ func (s *Study) Unsure(f *Figure) []string {
 }
 
 // Placeholders lists the relevant aircraft inputs whose basis is placeholder, by path within the aircraft.
-func (s *Study) Placeholders() []string {
+func (s *Study) Placeholders() []string { return s.OnBasis(project.Placeholder) }
+
+// OnBasis lists the relevant aircraft inputs whose basis is of the kind, by path within the aircraft.
+func (s *Study) OnBasis(kind string) []string {
 	var list []string
 	v := s.Variant()
 	for _, e := range inputsOf(&v.Aircraft) {
-		if v.BasisOf(e.Path).Kind == project.Placeholder {
+		if v.BasisOf(e.Path).Kind == kind {
 			list = append(list, e.Path)
 		}
 	}

@@ -1,0 +1,61 @@
+package project
+
+import (
+	"strconv"
+	"strings"
+
+	"legwright/internal/perf/input"
+)
+
+// A Basis says where an input comes from.
+type Basis struct {
+	Kind      string  `json:"kind"`       // one of BasisKinds
+	PlusMinus float64 `json:"plus_minus"` // half width of the stated band in the input's SI unit, >= 0; 0 when not stated
+	Note      string  `json:"note"`
+}
+
+// The kinds of basis, from the surest to the least.
+const (
+	Measured    = "measured"
+	Maker       = "maker"
+	Calculated  = "calculated"
+	Estimated   = "estimated"
+	Placeholder = "placeholder"
+)
+
+// BasisKinds lists the kinds of basis with their words.
+var BasisKinds = []input.Option{
+	{Value: Measured, Label: "measured"}, {Value: Maker, Label: "maker's data"}, {Value: Calculated, Label: "calculated"},
+	{Value: Estimated, Label: "estimated"}, {Value: Placeholder, Label: "placeholder"},
+}
+
+// BasisOf is the basis of the aircraft input at path. A path inside a table or a list has the basis of the whole.
+func (v *Variant) BasisOf(path string) Basis {
+	if b, ok := v.Basis[path]; ok {
+		return b
+	}
+	return Basis{Kind: Placeholder}
+}
+
+// InAircraft splits the path of an input of the document into its variant and
+// the path within the variant's aircraft, by which a basis is kept.
+func (s *Spec) InAircraft(path string) (v *Variant, within string, ok bool) {
+	rest, ok := strings.CutPrefix(path, "variants[")
+	if !ok {
+		return nil, "", false
+	}
+	index, within, ok := strings.Cut(rest, "].aircraft.")
+	i, err := strconv.Atoi(index)
+	if !ok || err != nil || i < 0 || i >= len(s.Variants) {
+		return nil, "", false
+	}
+	return &s.Variants[i], within, true
+}
+
+// SetBasis gives the aircraft input at path a basis.
+func (v *Variant) SetBasis(path string, b Basis) {
+	if v.Basis == nil {
+		v.Basis = map[string]Basis{}
+	}
+	v.Basis[path] = b
+}

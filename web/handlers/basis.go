@@ -1,0 +1,128 @@
+package handlers
+
+import (
+	"fmt"
+	"net/url"
+	"strings"
+	"unicode/utf8"
+
+	"legwright/internal/perf/input"
+	"legwright/internal/perf/project"
+	"legwright/internal/perf/units"
+)
+
+// setIn puts the typed text into the input. What is typed into a number of an
+// aircraft may also state its band, "0.034 ± 0.003"; a text without one states none.
+func setIn(s *project.Spec, entry input.Entry, text string, sys units.System) (string, error) {
+	v, path, ours := s.InAircraft(entry.Path)
+	if entry.Number == nil || !ours {
+		return set(entry, text, sys)
+	}
+	n, basis := entry.Number, v.BasisOf(path)
+	before := n.WithBand(sys, *n.Value, basis.PlusMinus)
+	typed, band, stated := input.CutBand(text)
+	said, err := set(entry, typed, sys)
+	if err != nil {
+		return "", err
+	}
+	width := 0.0
+	if stated {
+		if width, err = n.ParseBand(band, *n.Value, sys); err != nil {
+			return "", err
+		}
+	}
+	if width == basis.PlusMinus {
+		return said, nil
+	}
+	basis.PlusMinus = width
+	v.SetBasis(path, basis)
+	return strings.TrimSpace(fmt.Sprintf("%s %s → %s %s", entry.Label(), before, n.WithBand(sys, *n.Value, width), sys.Unit(n.Quantity).Symbol)), nil
+}
+
+// A facet is one thing that a basis says beside the band, and how the form carries it.
+type facet struct {
+	prefix string // of the name of its form field, before the input's path
+	get    func(project.Basis) string
+	set    func(*project.Basis, string) error
+	said   func(label, text string) string
+}
+
+var facets = []facet{
+	{"basis:", func(b project.Basis) string { return b.Kind },
+		func(b *project.Basis, text string) error { b.Kind = text; return nil },
+		func(label, text string) string { return fmt.Sprintf("%s is now %s", label, basisWord(text)) }},
+	{"note:", func(b project.Basis) string { return b.Note },
+		func(b *project.Basis, text string) error {
+			if utf8.RuneCountInString(text) > longestNote {
+				return fmt.Errorf("a note has up to %d characters", longestNote)
+			}
+			b.Note = text
+			return nil
+		},
+		func(label, text string) string {
+			if text == "" {
+				return label + ": note removed"
+			}
+			return label + ": note “" + clipText(text) + "”"
+		}},
+}
+
+// longestNote is how many characters a note of a basis may have.
+const longestNote = 500
+
+// basisChanges are the changes of where an aircraft input comes from.
+func (e *edit) basisChanges(shown input.Entry, form url.Values) []change {
+	was, path, ours := e.base.InAircraft(shown.Path)
+	if !ours || was.ID != e.base.Variants[e.variant].ID {
+		return nil
+	}
+	var list []change
+	for _, f := range facets {
+		name := f.prefix + shown.Path
+		text := tidy(form.Get(name))
+		if !form.Has(name) || text == f.get(was.BasisOf(path)) || f.prefix == "basis:" && text == "" {
+			continue
+		}
+		clash := e.basisClash(shown, path, f, text)
+		list = append(list, change{path: name, text: text, set: func(s *project.Spec) (string, error) {
+			if clash != nil {
+				return "", clash
+			}
+			v := &s.Variants[e.variant]
+			b := v.BasisOf(path)
+			if err := f.set(&b, text); err != nil {
+				return "", err
+			}
+			v.SetBasis(path, b)
+			return f.said(shown.Label(), text), nil
+		}})
+	}
+	return list
+}
+
+// basisClash is clash for what a basis says.
+func (e *edit) basisClash(shown input.Entry, path string, f facet, text string) error {
+	if e.base == e.head {
+		return nil
+	}
+	if _, ok := e.now[shown.Path]; !ok {
+		return errGone
+	}
+	if e.moved(shown.Path) {
+		return errMoved
+	}
+	before, after := f.get(e.base.Variants[e.variant].BasisOf(path)), f.get(e.head.Variants[e.variant].BasisOf(path))
+	if after == before || after == text {
+		return nil
+	}
+	return errElsewhere(clipText(basisWord(after)))
+}
+
+func basisWord(kind string) string {
+	for _, o := range project.BasisKinds {
+		if o.Value == kind {
+			return o.Label
+		}
+	}
+	return kind
+}
