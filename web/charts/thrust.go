@@ -162,7 +162,11 @@ func speedMarks(s *study.Study, m measure) []Mark {
 // conditionWords says the view: "570 m, ISA +15 °C, 586.0 kg, clean".
 func conditionWords(s *study.Study, sys units.System) string {
 	v := s.View
-	return fmt.Sprintf("%s, %s, %s, %s", sys.Format(units.Altitude, v.Altitude), dayWords(sys, v.Deviation), massWords(sys, v.Mass), v.Config)
+	text := fmt.Sprintf("%s, %s, %s, %s", sys.Format(units.Altitude, v.Altitude), dayWords(sys, v.Deviation), massWords(sys, v.Mass), v.Config)
+	if v.Setting < 1 {
+		text += ", power lever at " + sys.Format(units.Fraction, v.Setting)
+	}
+	return text
 }
 
 func (k balance) title(s *study.Study, sys units.System) string {
@@ -198,7 +202,11 @@ func (k balance) words(s *study.Study, sys units.System) string {
 		return text + " The powerplant gives no answer at any speed."
 	}
 	b := &curve[most]
-	text += fmt.Sprintf(" At full power most %s is in hand near %s: %s available less %s required leaves %s.", k.noun, speed.prose(b.TAS),
+	lever := "At full power"
+	if s.View.Setting < 1 {
+		lever = "With the lever there"
+	}
+	text += fmt.Sprintf(" %s most %s is in hand near %s: %s available less %s required leaves %s.", lever, k.noun, speed.prose(b.TAS),
 		m.prose(k.of(b, b.Available)), m.prose(k.of(b, b.Required)), m.prose(k.of(b, b.InHand())))
 	switch fast := s.Speeds.LevelMax; {
 	case fast.Err != nil:

@@ -18,7 +18,7 @@ func (s *site) analysis(path string, show func(*study.Study, views.Frame) templ.
 		if err != nil {
 			return err
 		}
-		st, mistaken, err := h.study(r)
+		st, mistaken, err := h.study(r, path == "/working")
 		if err != nil {
 			return err
 		}

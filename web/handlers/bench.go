@@ -62,8 +62,9 @@ func (h head) variant(r *http.Request) (int, error) {
 }
 
 // study computes the variant that the address names under the view that its query
-// sets, and says which of the query's settings were not understood.
-func (h head) study(r *http.Request) (*study.Study, []views.Refusal, error) {
+// sets, and says which of the query's settings were not understood. The setting of
+// the power lever counts on pages that say so; the others are at full power.
+func (h head) study(r *http.Request, lever bool) (*study.Study, []views.Refusal, error) {
 	i, err := h.variant(r)
 	if err != nil {
 		return nil, nil, err
@@ -73,12 +74,15 @@ func (h head) study(r *http.Request) (*study.Study, []views.Refusal, error) {
 		return nil, nil, err
 	}
 	view, mistaken := viewOf(r.URL.Query(), p, i)
+	if !lever {
+		view.Setting = 1
+	}
 	return study.Run(p, i, view), mistaken, nil
 }
 
 // show answers with the page on which the edit was made, or with its changed part for the page's script.
 func (s *site) show(w http.ResponseWriter, r *http.Request, h head, name string, refused []views.Refusal, message string) error {
-	studied, mistaken, err := h.study(r)
+	studied, mistaken, err := h.study(r, name == "")
 	if err != nil {
 		return err
 	}
@@ -96,7 +100,7 @@ func (s *site) show(w http.ResponseWriter, r *http.Request, h head, name string,
 }
 
 // viewNames are the query's settings of the view.
-var viewNames = []string{"altitude", "isa", "mass", "config"}
+var viewNames = []string{"altitude", "isa", "mass", "config", "lever"}
 
 // query keeps only the settings of the view.
 func query(q url.Values) string {
@@ -115,6 +119,7 @@ func query(q url.Values) string {
 var (
 	viewAltitude  = input.Spec{Name: "altitude", Label: "Altitude of the chart", Quantity: units.Altitude, Min: -500, Max: 25000}
 	viewMass      = input.Spec{Name: "mass", Label: "Mass of the chart", Quantity: units.Mass, Min: 0.05, Max: 1e5}
+	viewSetting   = input.Spec{Name: "lever", Label: "Power lever", Quantity: units.Fraction, Min: 0, Max: 1}
 	viewDeviation = input.Spec{Name: "isa", Label: "Deviation from standard", Quantity: units.TemperatureStep, Min: -60, Max: 60}
 )
 
@@ -123,7 +128,7 @@ func viewOf(q url.Values, p *project.Project, variant int) (study.View, []views.
 	v := study.DefaultView(p, variant)
 	sys := p.Spec.System()
 	var mistaken []views.Refusal
-	for _, n := range []*input.Number{{Spec: &viewAltitude, Value: &v.Altitude}, {Spec: &viewMass, Value: &v.Mass}, {Spec: &viewDeviation, Value: &v.Deviation}} {
+	for _, n := range []*input.Number{{Spec: &viewAltitude, Value: &v.Altitude}, {Spec: &viewMass, Value: &v.Mass}, {Spec: &viewDeviation, Value: &v.Deviation}, {Spec: &viewSetting, Value: &v.Setting}} {
 		text := q.Get(n.Name)
 		if text == "" {
 			continue

@@ -104,6 +104,7 @@ type ViewForm struct {
 	Altitude  Field
 	Mass      Field
 	Deviation Field
+	Setting   Field // shown where the lever means something
 	Config    Field
 	Errors    []string
 }
@@ -335,12 +336,13 @@ func newViewForm(s *study.Study, sys units.System, f Frame) ViewForm {
 		return Field{Path: name, ID: "view-" + name, Label: label, Kind: "number", Value: text, Unit: sys.Unit(q).Symbol}
 	}
 	v := ViewForm{URL: f.URL, Altitude: number("altitude", "altitude", units.Altitude, s.View.Altitude, given.Altitude), Mass: number("mass", "mass", units.Mass, s.View.Mass, given.Mass),
-		Deviation: number("isa", "ISA", units.TemperatureStep, s.View.Deviation, given.Deviation), Config: Field{Path: "config", ID: "view-config", Label: "configuration", Kind: "choice"}}
+		Deviation: number("isa", "ISA", units.TemperatureStep, s.View.Deviation, given.Deviation),
+		Setting:   number("lever", "power lever", units.Fraction, s.View.Setting, given.Setting), Config: Field{Path: "config", ID: "view-config", Label: "configuration", Kind: "choice"}}
 	for _, c := range []aircraft.Config{aircraft.Clean, aircraft.TakeOff, aircraft.Landing} {
 		v.Config.Options = append(v.Config.Options, Option{c.String(), c.String(), c == s.View.Config})
 	}
 	for _, r := range f.Mistaken {
-		for _, field := range []*Field{&v.Altitude, &v.Mass, &v.Deviation} {
+		for _, field := range []*Field{&v.Altitude, &v.Mass, &v.Deviation, &v.Setting} {
 			if field.Path == r.Path {
 				field.Value, field.Error = r.Text, r.Why
 			}

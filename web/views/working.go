@@ -41,6 +41,9 @@ func NewWorking(s *study.Study, frame Frame) Working {
 	p := Working{Frame: frame,
 		Lead: fmt.Sprintf("%s, ISA %s, %s, %s. Formulas stand in SI units; symbols are explained where they are used.", sys.Format(units.Altitude, s.View.Altitude),
 			signed(sys, units.TemperatureStep, s.View.Deviation), sys.Format(units.Mass, s.View.Mass), s.View.Config)}
+	if s.View.Setting < 1 {
+		p.Lead += " The thrust available of the speeds of note is that with the power lever at " + sys.Format(units.Fraction, s.View.Setting) + "."
+	}
 	w := s.Working()
 	seen := map[string]bool{}
 	for _, step := range w.Steps {

@@ -17,6 +17,7 @@ type Point struct {
 	Air    atmos.Air
 	Mass   float64 // in kg, > 0
 	Config aircraft.Config
+	Lever  float64 // how far the power lever is pulled back from full, as a share of its way, 0 to 1
 }
 
 // Weight is the weight in N.
@@ -71,9 +72,9 @@ func ThrustRequired(a *aircraft.Aircraft, p *Point, tas float64, w *formula.Work
 	return Drag(a, p, tas, weight, 1, w)
 }
 
-// ThrustAvailable is the powerplant's output at full setting at the true airspeed tas in m/s, >= 0.
+// ThrustAvailable is the powerplant's output at full setting, less what the lever is pulled back, at the true airspeed tas in m/s, >= 0.
 func ThrustAvailable(a *aircraft.Aircraft, p *Point, tas float64, w *formula.Working) (powerplant.Output, error) {
-	return a.Plant().Run(p.Condition(tas), 1, w)
+	return a.Plant().Run(p.Condition(tas), 1-p.Lever, w)
 }
 
 // A Balance is thrust available against thrust required at one speed.

@@ -22,6 +22,7 @@ type View struct {
 	Mass      float64 // in kg
 	Deviation float64 // of temperature from standard in K
 	Config    aircraft.Config
+	Setting   float64 // of the power lever for the thrust available, 0 to 1
 }
 
 // A Study is everything computed of one variant.
@@ -85,7 +86,7 @@ type Strip struct {
 
 // DefaultView is the departure strip on the project's day at start mass, clean.
 func DefaultView(p *project.Project, variant int) View {
-	return View{Altitude: p.Departure.Air.PressureAltitude, Mass: p.Aircraft[variant].StartMass(), Deviation: p.Plan.Day.Deviation, Config: aircraft.Clean}
+	return View{Altitude: p.Departure.Air.PressureAltitude, Mass: p.Aircraft[variant].StartMass(), Deviation: p.Plan.Day.Deviation, Config: aircraft.Clean, Setting: 1}
 }
 
 // Run studies the variant with the given index under the view. Everything that
@@ -135,7 +136,7 @@ func (s *Study) point(a *aircraft.Aircraft) {
 		s.glideErr = err
 		return
 	}
-	s.Point = pointperf.Point{Air: air, Mass: v.Mass, Config: v.Config}
+	s.Point = pointperf.Point{Air: air, Mass: v.Mass, Config: v.Config, Lever: 1 - v.Setting}
 	s.Speeds = pointperf.AllSpeeds(a, &s.Point)
 	s.Glide, s.glideErr = pointperf.BestGlide(a, &s.Point)
 	vs := s.Speeds.Stall.TAS

@@ -63,7 +63,7 @@ func (s *Study) viewWorking(w *formula.Working) error {
 	if err != nil {
 		return err
 	}
-	p := &pointperf.Point{Air: air, Mass: v.Mass, Config: v.Config}
+	p := &pointperf.Point{Air: air, Mass: v.Mass, Config: v.Config, Lever: 1 - v.Setting}
 	w.Heading(partStall)
 	pointperf.Stall(a, p, w)
 	w.Heading(partRate)
