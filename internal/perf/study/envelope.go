@@ -148,7 +148,9 @@ func (e *Envelope) excess(s *Study, a *aircraft.Aircraft) {
 	const above = 1.06 // of the ceiling, so that the thrust limit closes below the top
 	v := s.View
 	low := math.Min(0, v.Altitude)
-	high := math.Min(low+above*(e.roof(v)-low), atmos.MaxAltitude)
+	// Rounded up, the top holds still while an edit moves the ceiling by a little.
+	step := roundStep(e.roof(v)-low, s.Project.Spec.System())
+	high := math.Min(math.Ceil((low+above*(e.roof(v)-low))/step)*step, atmos.MaxAltitude)
 	e.Grid, e.GridErr = envelope.NewGrid(envelope.Case{Aircraft: a, Day: e.Day, Mass: v.Mass, Config: v.Config, Load: 1}, low, high, gridSpeeds, gridAltitudes)
 	best, _, ok := e.Grid.Most()
 	if e.GridErr == nil && !ok {
