@@ -13,6 +13,7 @@ import (
 	"net/http"
 	"os"
 	"os/signal"
+	"path/filepath"
 	"syscall"
 	"time"
 
@@ -48,6 +49,9 @@ func run(ctx context.Context, args []string, getenv func(string) string, stdout,
 		_, err := fmt.Fprintln(stdout, "Legwright", version)
 		return err
 	}
+	if o.restore != "" {
+		return restore(ctx, o, stdout)
+	}
 	log := slog.New(slog.NewTextHandler(stderr, &slog.HandlerOptions{Level: o.level}))
 
 	// The database comes before the port: of two programs on the same folder and
@@ -56,10 +60,19 @@ func run(ctx context.Context, args []string, getenv func(string) string, stdout,
 	if err != nil {
 		return err
 	}
+	if o.backup != "" {
+		return errors.Join(backUp(ctx, o, db, stdout), db.Close())
+	}
 	if err := begin(ctx, db); err != nil {
 		return errors.Join(err, db.Close())
 	}
-	return errors.Join(serve(ctx, o, db, log, stdout), db.Close())
+	at := ""
+	if o.project != "" {
+		if at, err = openFile(ctx, db, o.project); err != nil {
+			return errors.Join(err, db.Close())
+		}
+	}
+	return errors.Join(serve(ctx, o, db, log, stdout, at), db.Close())
 }
 
 // begin puts the demo project into a new database, so that the first page shows a full result.
@@ -77,7 +90,7 @@ func begin(ctx context.Context, db *store.DB) error {
 	return err
 }
 
-func serve(ctx context.Context, o options, db *store.DB, log *slog.Logger, stdout io.Writer) error {
+func serve(ctx context.Context, o options, db *store.DB, log *slog.Logger, stdout io.Writer, opened string) error {
 	l, err := listen(ctx, o)
 	if err != nil {
 		return err
@@ -104,6 +117,11 @@ func serve(ctx context.Context, o options, db *store.DB, log *slog.Logger, stdou
 	}
 	if _, err := fmt.Fprintf(stdout, "Legwright is at %s\n", o.url(at.Port)); err != nil {
 		return err
+	}
+	if opened != "" {
+		if _, err := fmt.Fprintf(stdout, "%s is at %s%s\n", filepath.Base(o.project), o.url(at.Port), opened); err != nil {
+			return err
+		}
 	}
 
 	ended := make(chan error, 1)

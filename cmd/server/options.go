@@ -22,6 +22,9 @@ type options struct {
 	data         string
 	level        slog.Level
 	version      bool
+	backup       string // file to write a backup to, and end
+	restore      string // backup to put in the place of the database, and end
+	project      string // project file to open
 }
 
 // parseOptions reads the flags; where one is not given, its environment
@@ -39,15 +42,18 @@ func parseOptions(args []string, getenv func(string) string, out io.Writer) (opt
 	f.StringVar(&o.data, "data", "", "`folder` of the database (LEGWRIGHT_DATA; default legwright in the user's configuration folder)")
 	f.StringVar(&level, "log", "info", "`level` of the log on standard error, info or debug (LEGWRIGHT_LOG)")
 	f.BoolVar(&o.version, "version", false, "print the version and end")
+	f.StringVar(&o.backup, "backup", "", "write a checked backup of the whole database to this new `file` and end")
+	f.StringVar(&o.restore, "restore", "", "put the backup in this `file` in the place of the database, keep what was there, and end")
 	f.VisitAll(func(fl *flag.Flag) {
 		name := "LEGWRIGHT_" + strings.ToUpper(strings.ReplaceAll(fl.Name, "-", "_"))
-		if v := getenv(name); v != "" && fl.Name != "version" {
+		if v := getenv(name); v != "" && !slices.Contains([]string{"version", "backup", "restore"}, fl.Name) {
 			fl.Value.Set(v) // texts only: parsed below, as those of flags are
 		}
 	})
 	err := f.Parse(args)
 	if errors.Is(err, flag.ErrHelp) {
-		fmt.Fprintln(out, "Legwright checks a powerplant against a mission. It is used with a web browser on this computer.")
+		fmt.Fprintln(out, "Legwright checks a powerplant against a mission. It is used with a web browser on this computer.\n"+
+			"After the flags the name of a project file may stand: it is taken into the database and opened.")
 		f.SetOutput(out)
 		f.PrintDefaults()
 		return o, err
@@ -55,8 +61,12 @@ func parseOptions(args []string, getenv func(string) string, out io.Writer) (opt
 	if err != nil {
 		return o, fmt.Errorf("%w; -help lists the flags", err)
 	}
-	if f.NArg() > 0 {
-		return o, fmt.Errorf("%q is not a flag; -help lists the flags", f.Arg(0))
+	if f.NArg() > 1 {
+		return o, fmt.Errorf("one project file can be opened, not also %q; flags stand before it; -help lists them", f.Arg(1))
+	}
+	o.project = f.Arg(0)
+	if o.backup != "" && o.restore != "" || (o.backup != "" || o.restore != "") && o.project != "" {
+		return o, errors.New("-backup, -restore and a project file exclude one another")
 	}
 	if o.version {
 		return o, nil

@@ -29,8 +29,8 @@ func (s *Spec) Encode() ([]byte, error) {
 	if err := e.Encode(c); err != nil {
 		return nil, err
 	}
-	if b.Len() > maxBytes {
-		return nil, &input.Error{Text: fmt.Sprintf("a document of %d bytes", b.Len()), Accepts: fmt.Sprintf("up to %d bytes", maxBytes), Err: input.ErrRange}
+	if b.Len() > MaxBytes {
+		return nil, &input.Error{Text: fmt.Sprintf("a document of %d bytes", b.Len()), Accepts: fmt.Sprintf("up to %d bytes", MaxBytes), Err: input.ErrRange}
 	}
 	return b.Bytes(), nil
 }

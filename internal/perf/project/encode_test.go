@@ -82,7 +82,7 @@ func TestEncodeRefusesWhatDecodeCannotRead(t *testing.T) {
 		"no model":    {func(s *Spec) { s.Variants[0].Aircraft.Powerplant = powerplant.Spec{} }, "variants[0].aircraft.powerplant.kind"},
 		"many legs":   {func(s *Spec) { s.Legs = make([]mission.Leg, 201) }, "legs"},
 		"other kind":  {func(s *Spec) { s.Variants[0].Aircraft.Powerplant.Kind = "rubber" }, "variants[0].aircraft.powerplant.kind"},
-		"huge a text": {func(s *Spec) { s.Note = strings.Repeat("x", maxBytes) }, ""},
+		"huge a text": {func(s *Spec) { s.Note = strings.Repeat("x", MaxBytes) }, ""},
 	} {
 		s := Demo()
 		test.change(s)

@@ -27,8 +27,8 @@ type member struct {
 
 // check refuses text that is too large, not JSON, or nested too deeply.
 func (t jsonText) check() error {
-	if len(t) > maxBytes {
-		return &input.Error{Text: fmt.Sprintf("a document of %d bytes", len(t)), Accepts: fmt.Sprintf("up to %d bytes", maxBytes), Err: input.ErrRange}
+	if len(t) > MaxBytes {
+		return &input.Error{Text: fmt.Sprintf("a document of %d bytes", len(t)), Accepts: fmt.Sprintf("up to %d bytes", MaxBytes), Err: input.ErrRange}
 	}
 	if !utf8.Valid(t) {
 		return t.malformed(t.firstInvalid(), "bytes that are not UTF-8")

@@ -11,11 +11,13 @@ import (
 	"legwright/internal/perf/units"
 )
 
-// Limits on a document, so that reading one takes bounded time and memory.
+// MaxBytes is how much JSON text a document may have.
+const MaxBytes = 4 << 20
+
+// Further limits on a document, so that reading one takes bounded time and memory.
 const (
-	maxBytes = 4 << 20 // of JSON text
-	maxDepth = 32      // of arrays and objects in each other
-	maxItems = 10000   // of an array or object that has no limit of its own
+	maxDepth = 32    // of arrays and objects in each other
+	maxItems = 10000 // of an array or object that has no limit of its own
 )
 
 // A size is how many items a list has, both inclusive.
