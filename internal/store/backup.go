@@ -64,6 +64,9 @@ func verify(ctx context.Context, path string) error {
 // backupFolder holds the backups that KeepBackup makes, below the data folder.
 const backupFolder = "backups"
 
+// Folder is the data folder.
+func (db *DB) Folder() string { return filepath.Dir(db.path) }
+
 // A Kept is a backup in the data folder.
 type Kept struct {
 	Name string // of the file

@@ -198,8 +198,8 @@ func TestInterfaceStatus(t *testing.T) {
 		{"a form", []string{"Content-Type", "application/x-www-form-urlencoded"}, demo, 415},
 		{"text", []string{"Content-Type", "text/plain"}, demo, 415},
 		{"no type", []string{"Content-Type", ""}, demo, 415},
-		{"too large", nil, strings.Repeat(" ", maxAPI) + demo, 413},
-		{"larger than a document", nil, strings.Repeat(" ", maxAPI/2) + demo, 422},
+		{"too large", nil, strings.Repeat(" ", maxProject) + demo, 413},
+		{"larger than a document", nil, strings.Repeat(" ", maxProject/2) + demo, 422},
 		{"empty", nil, "", 422},
 		{"from another site", []string{"Sec-Fetch-Site", "cross-site"}, demo, 403},
 		{"from another site, old browser", []string{"Origin", "http://elsewhere.example"}, demo, 403},
@@ -211,7 +211,7 @@ func TestInterfaceStatus(t *testing.T) {
 		}
 	}
 	// A body that does not say its length is cut off while it is read.
-	v.send("POST", "/api/evaluate", unsized{strings.NewReader(strings.Repeat(" ", maxAPI) + demo)}, "Content-Type", "application/json")
+	v.send("POST", "/api/evaluate", unsized{strings.NewReader(strings.Repeat(" ", maxProject) + demo)}, "Content-Type", "application/json")
 	if v.reply.Code != 413 || !json.Valid(v.reply.Body.Bytes()) {
 		t.Errorf("too large, length unknown: status %d, %s", v.reply.Code, v.reply.Body)
 	}

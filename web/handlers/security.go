@@ -19,11 +19,10 @@ import (
 const policy = "default-src 'none'; script-src 'self'; style-src 'self'; img-src 'self' data:; font-src 'self'; " +
 	"connect-src 'self'; form-action 'self'; base-uri 'none'; frame-ancestors 'none'"
 
-// Largest bodies in bytes: forms, and the JSON interface, which carries whole
-// projects.
+// Largest bodies in bytes: forms, and what carries whole projects: the JSON interface and imports.
 const (
-	maxForm = 1 << 20
-	maxAPI  = 8 << 20
+	maxForm    = 1 << 20
+	maxProject = 8 << 20
 )
 
 // guards returns the checks in the order in which they must run. The log comes
@@ -119,8 +118,8 @@ func refuseForeignReads(next http.Handler) http.Handler {
 func limitBody(next http.Handler) http.Handler {
 	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
 		limit := int64(maxForm)
-		if r.URL.Path == "/api" || strings.HasPrefix(r.URL.Path, "/api/") {
-			limit = maxAPI
+		if r.URL.Path == "/api" || strings.HasPrefix(r.URL.Path, "/api/") || r.URL.Path == "/projects/import" {
+			limit = maxProject
 		}
 		if r.ContentLength > limit {
 			http.Error(w, "This is too large to be taken.", http.StatusRequestEntityTooLarge)

@@ -127,8 +127,8 @@ func TestBodyLimits(t *testing.T) {
 		{"/p", maxForm + 1, 413},
 		{"/apiary", maxForm + 1, 413},
 		{"/api", maxForm + 1, 200},
-		{"/api/v", maxAPI, 200},
-		{"/api/v", maxAPI + 1, 413},
+		{"/api/v", maxProject, 200},
+		{"/api/v", maxProject + 1, 413},
 	} {
 		for _, sized := range []bool{true, false} {
 			h, _ := guarded(readBody)

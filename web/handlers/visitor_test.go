@@ -2,8 +2,10 @@ package handlers
 
 import (
 	"bytes"
+	"errors"
 	"io"
 	"log/slog"
+	"mime/multipart"
 	"net/http"
 	"net/http/httptest"
 	"net/url"
@@ -125,12 +127,39 @@ func (v *visitor) submit(form *html.Node, changes url.Values, action string, hea
 		}
 		values.Set("action", action)
 	}
+	if attr(form, "enctype") == "multipart/form-data" {
+		body, kind := multiparts(v.t, form, values)
+		v.send("POST", attr(form, "action"), body, append(header, "Content-Type", kind)...)
+		return
+	}
 	if strings.EqualFold(attr(form, "method"), "post") {
 		v.post(attr(form, "action"), values, header...)
 		return
 	}
 	to := url.URL{Path: attr(form, "action"), RawQuery: values.Encode()}
 	v.get(to.String(), header...)
+}
+
+// multiparts is the body of a form with files, of which none is chosen, and its type.
+func multiparts(t testing.TB, form *html.Node, values url.Values) (io.Reader, string) {
+	t.Helper()
+	var body bytes.Buffer
+	w := multipart.NewWriter(&body)
+	var errs []error
+	for name, list := range values {
+		for _, text := range list {
+			if n := one(form, `input[name="`+name+`"]`); n != nil && attr(n, "type") == "file" {
+				_, err := w.CreateFormFile(name, "")
+				errs = append(errs, err)
+				continue
+			}
+			errs = append(errs, w.WriteField(name, text))
+		}
+	}
+	if err := errors.Join(append(errs, w.Close())...); err != nil {
+		t.Fatal(err)
+	}
+	return &body, w.FormDataContentType()
 }
 
 // controls is what a browser would send of a form. An input of one line loses

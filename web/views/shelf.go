@@ -11,6 +11,8 @@ type Shelf struct {
 	Archived []ShelfItem
 	Error    string
 	Typed    string
+	File     string   // that was refused
+	Faults   []string // of that file
 }
 
 // A ShelfItem is one project on the shelf.
@@ -47,4 +49,12 @@ func (s Shelf) described() string {
 		return "new-error new-hint"
 	}
 	return "new-hint"
+}
+
+// fileDescribed lists the ids of the texts that explain the file to import.
+func (s Shelf) fileDescribed() string {
+	if len(s.Faults) > 0 {
+		return "import-error import-hint"
+	}
+	return "import-hint"
 }
