@@ -20,6 +20,8 @@ type Entry struct {
 	// Path is where the entry stands in the document, "airframe.wing_area";
 	// a struct's own Inputs give the last element and Walk completes it.
 	Path string
+	// Lone marks a choice on which no other input depends, so that whoever asks what depends on what need not try it.
+	Lone bool
 	// Idle marks an input that the current choices make irrelevant: it is kept, not shown and not checked.
 	Idle bool
 }
@@ -65,6 +67,12 @@ func Num(s *Spec, v *float64) Entry { return Entry{Number: &Number{s, v}, Path: 
 // If marks e idle unless relevant.
 func (e Entry) If(relevant bool) Entry {
 	e.Idle = !relevant
+	return e
+}
+
+// Alone marks e as a choice on which no other input depends.
+func (e Entry) Alone() Entry {
+	e.Lone = true
 	return e
 }
 

@@ -184,6 +184,16 @@ func levelBounds(a *aircraft.Aircraft, p *Point, vs, top float64) (slow, fast Be
 	return slow, fast
 }
 
+// LevelMax is the speed of the fastest level flight and the thrust there.
+func LevelMax(a *aircraft.Aircraft, p *Point) Best {
+	vs, top := Stall(a, p, nil), topSpeed(a, p)
+	if top <= vs {
+		return Best{Err: stallAboveLimit(vs, top)}
+	}
+	_, fast := levelBounds(a, p, vs, top)
+	return fast
+}
+
 func crossing(f func(float64) float64, a, b float64) Best {
 	r, err := numeric.Root(f, a, b, 1e-11)
 	if err != nil {

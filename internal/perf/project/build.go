@@ -128,9 +128,9 @@ func (s *Spec) resolve(p *Project) error {
 		if l.Kind != mission.TakeOff && l.Kind != mission.Landing {
 			continue
 		}
-		place, ok := p.place(l.Strip)
+		place, ok := p.Place(l.Strip)
 		if !ok {
-			errs = append(errs, &input.Error{Path: fmt.Sprintf("legs[%d].strip", i), Text: l.Strip, Accepts: "the name of one of the project's strips, or nothing for the first", Err: input.ErrChoice})
+			errs = append(errs, noStrip(fmt.Sprintf("legs[%d].strip", i), l.Strip))
 			continue
 		}
 		if l.Kind == mission.Landing {
@@ -139,10 +139,21 @@ func (s *Spec) resolve(p *Project) error {
 			p.Departure, first = place, false
 		}
 	}
+	for i := range s.Requirements {
+		r := &s.Requirements[i]
+		if _, ok := p.Place(r.Strip); !ok && r.StripGiven == NamedStrip && r.Kind().Takes&Ground != 0 {
+			errs = append(errs, noStrip(fmt.Sprintf("requirements[%d].strip", i), r.Strip))
+		}
+	}
 	return errors.Join(errs...)
 }
 
-func (p *Project) place(name string) (runway.Place, bool) {
+func noStrip(path, name string) error {
+	return &input.Error{Path: path, Text: name, Accepts: "the name of one of the project's strips, or nothing for the first", Err: input.ErrChoice}
+}
+
+// Place is the strip of that name on the project's day, the first for no name.
+func (p *Project) Place(name string) (runway.Place, bool) {
 	for _, place := range p.Plan.Places {
 		if name == "" || place.Strip.Name == name {
 			return place, true

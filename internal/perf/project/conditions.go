@@ -87,14 +87,15 @@ func conditions(t reflect.Type) rules {
 	return r
 }
 
-// discover lists d's choices with every option that any state of the others offers.
+// discover lists d's choices with every option that any state of the others offers,
+// less those on which nothing depends: the combinations multiply.
 func discover(d input.Described) []axis {
 	var axes []axis
 	for grown := true; grown; {
 		grown = false
 		for c := range combinations(d, axes) {
 			for _, e := range c {
-				if e.Choice != nil && extend(&axes, e.Path, values(e.Choice.Options)) {
+				if e.Choice != nil && !e.Lone && extend(&axes, e.Path, values(e.Choice.Options)) {
 					grown = true
 				}
 			}

@@ -21,7 +21,7 @@ func New(name string) *Spec {
 		Legs:      outAndBack(0, 1500, 200e3),
 		Variants:  []Variant{{ID: "a", Name: "A", Aircraft: typicalAircraft(), Basis: map[string]Basis{}}},
 	}
-	s.Requirements = []Requirement{{Figure: "take_off_distance", Bound: AtMost, Limit: 600}, {Figure: "climb_rate", Bound: AtLeast, Limit: 2.5}}
+	s.Requirements = []Requirement{Require("take_off_distance", AtMost, 600), Require("climb_rate", AtLeast, 2.5)}
 	return s
 }
 
@@ -78,11 +78,11 @@ func Demo() *Spec {
 		s.Legs[i].HeadWind, s.Legs[i].SpeedRule, s.Legs[i].Speed = wind, mission.ByTAS, 50
 	}
 	s.Requirements = []Requirement{
-		{Figure: "take_off_distance", Bound: AtMost, Limit: 450},
-		{Figure: "climb_rate", Bound: AtLeast, Limit: 2.5},
-		{Figure: "stall_landing", Bound: AtMost, Limit: 23.5},
-		{Figure: "thrust_in_hand", Bound: AtLeast, Limit: 0.1},
-		{Figure: "reserve_time", Bound: AtLeast, Limit: 1800},
+		Require("take_off_distance", AtMost, 450),
+		Require("climb_rate", AtLeast, 2.5),
+		Require("stall_landing", AtMost, 23.5),
+		Require("thrust_in_hand", AtLeast, 0.1),
+		Require("reserve_time", AtLeast, 1800),
 	}
 	a := &s.Variants[0]
 	a.ID, a.Name, a.Note = "a", "A · 60 kW, climb propeller", "The engine at hand."

@@ -112,7 +112,7 @@ func shuffled(t *rapid.T) *Spec {
 	valid(func(s *Spec) { s.Strips = append(s.Strips, s.Strips[0]) })
 	valid(func(s *Spec) { s.Requirements = s.Requirements[:rapid.IntRange(0, 2).Draw(t, "requirements")] })
 	valid(func(s *Spec) {
-		s.Requirements = append(s.Requirements, Requirement{"tip_mach", AtMost, rapid.Float64Range(-1e9, 1e9).Draw(t, "limit")})
+		s.Requirements = append(s.Requirements, Require("tip_mach", AtMost, rapid.Float64Range(-1e9, 1e9).Draw(t, "limit")))
 	})
 	valid(func(s *Spec) { s.Legs = s.Legs[:rapid.IntRange(0, len(s.Legs)).Draw(t, "legs")] })
 	valid(func(s *Spec) {

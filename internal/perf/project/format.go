@@ -13,7 +13,17 @@ const firstFormat = 1
 
 // added lists the fields that format 1 did not have, by path without indices, each with
 // the JSON value that stands for what a document of that format meant.
-var added = map[string]string{}
+var added = map[string]string{
+	"requirements.altitude_given": `"strip"`, "requirements.altitude": `0`,
+	"requirements.day_given": `"project"`, "requirements.isa_deviation": `0`,
+	"requirements.mass_given": `"as-flown"`, "requirements.mass": `600`,
+	"requirements.configuration": `"clean"`,
+	"requirements.strip_given":   `"mission"`, "requirements.strip": `""`,
+	"requirements.distance": `"unfactored"`, "requirements.airspeed": `"true"`,
+	"requirements.turn_given": `"best"`, "requirements.turn_speed": `35`,
+	"requirements.power": `0.75`, "requirements.climb_to": `3000`, "requirements.kept": `0`,
+	"requirements.clause": `""`, "requirements.note": `""`,
+}
 
 // formatOf is the number of the format that the document states, 0 where it states none that Decode reads.
 func (t jsonText) formatOf() int {

@@ -31,19 +31,6 @@ type Spec struct {
 	Variants     []Variant        `json:"variants"`
 }
 
-// A Requirement is a wanted number.
-type Requirement struct {
-	Figure string  `json:"figure"` // identifier of a figure of the study
-	Bound  string  `json:"bound"`  // AtLeast or AtMost
-	Limit  float64 `json:"limit"`  // in the SI unit of the figure
-}
-
-// Bounds of a requirement.
-const (
-	AtLeast = "at-least"
-	AtMost  = "at-most"
-)
-
 // A Variant is one complete aircraft.
 type Variant struct {
 	ID       string           `json:"id"` // unique in the project, never reused

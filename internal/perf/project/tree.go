@@ -129,7 +129,7 @@ func (n *node) growFields(path string) {
 		where := strings.TrimPrefix(path+"."+name, ".")
 		f := grow(n.typ.Field(i).Type, where)
 		f.name, f.index = name, i
-		f.optional = name == "note" || name == "basis"
+		f.optional = name == "note" || name == "basis" || name == "clause"
 		f.entry, f.fixed, f.adopted = entries[name], fixed[where], added[where]
 		n.fields = append(n.fields, f)
 	}

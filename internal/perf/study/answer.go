@@ -2,6 +2,7 @@ package study
 
 import (
 	"math"
+	"strings"
 
 	"legwright/internal/perf/mission"
 	"legwright/internal/perf/pointperf"
@@ -67,6 +68,15 @@ type RequirementAnswer struct {
 	Limit  float64 `json:"limit"` // in the SI unit of the figure
 	Met    bool    `json:"met"`
 	Reason string  `json:"reason,omitempty"`
+
+	Conditions string   `json:"conditions,omitempty"` // that it sets for itself
+	Where      string   `json:"where,omitempty"`      // the whole condition that the value holds for
+	Value      *float64 `json:"value,omitempty"`      // of the figure, in unit
+	Unit       string   `json:"unit"`                 // SI
+	Margin     *float64 `json:"margin,omitempty"`     // on the wanted side of the limit, in unit; negative when missed
+	Share      *float64 `json:"share,omitempty"`      // margin over the limit, dimensionless
+	Clause     string   `json:"clause,omitempty"`
+	Note       string   `json:"note,omitempty"`
 }
 
 // A WarningAnswer is one warning.
@@ -171,9 +181,7 @@ func (s *Study) Answer() Answer {
 		a.Figures = append(a.Figures, figureAnswer(&s.Figures[i]))
 	}
 	for i := range s.Requirements {
-		v := &s.Requirements[i]
-		r := v.Requirement
-		a.Requirements = append(a.Requirements, RequirementAnswer{r.Figure, r.Bound, r.Limit, v.Met, v.Reason.In(units.Metric)})
+		a.Requirements = append(a.Requirements, requirementAnswer(&s.Requirements[i]))
 	}
 	for _, w := range s.Warnings {
 		a.Warnings = append(a.Warnings, WarningAnswer{w.Code, w.Level, w.About, w.Text.In(units.Metric), w.Clear})
@@ -200,6 +208,26 @@ func figureAnswer(f *Figure) FigureAnswer {
 	a := FigureAnswer{ID: f.ID, Label: f.Label, Unit: f.Quantity.SI(), Where: f.Where.In(units.Metric), Reason: f.Reason.In(units.Metric)}
 	if f.Has() {
 		a.Value = finite(f.Value)
+	}
+	return a
+}
+
+func requirementAnswer(v *Verdict) RequirementAnswer {
+	r := &v.Requirement
+	a := RequirementAnswer{Figure: r.Figure, Bound: r.Bound, Limit: r.Limit, Met: v.Met, Reason: v.Reason.In(units.Metric), Clause: r.Clause, Note: r.Note}
+	var conditions []string
+	for _, m := range r.Stated() {
+		conditions = append(conditions, m.In(units.Metric))
+	}
+	a.Conditions = strings.Join(conditions, ", ")
+	if v.Figure != nil {
+		a.Unit, a.Where = v.Figure.Quantity.SI(), v.Figure.Where.In(units.Metric)
+	}
+	if v.Judged() {
+		a.Value, a.Margin = finite(v.Figure.Value), finite(v.Margin())
+		if share, ok := v.Share(); ok {
+			a.Share = finite(share)
+		}
 	}
 	return a
 }

@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/mission"
 	"legwright/internal/perf/pointperf"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/units"
@@ -30,27 +31,38 @@ var (
 	plantInputs = []string{"powerplant"}
 	clean       = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.clean", "airframe.never_exceed"})
 	off         = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off"})
+	flapped     = slices.Concat(clean, []string{"airframe.take_off", "airframe.landing"})
 	flown       = slices.Concat(clean, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off", "airframe.landing"})
 )
 
 // rests gives the inputs of the figures that do not rest on all of a flown mission.
 var rests = map[string][]string{
 	"take_off_distance": off, "take_off_roll": off, "climb_gradient": off,
-	"climb_rate": clean, "service_ceiling": clean, "absolute_ceiling": clean, "level_max": clean,
+	"climb_rate": flapped, "steepest_gradient": flapped, "glide_ratio": flapped, "turn_load": flapped,
+	"balked_gradient": slices.Concat(clean, []string{"airframe.landing"}),
+	"service_ceiling": clean, "absolute_ceiling": clean, "level_max": clean, "cruise_speed": clean, "time_to_climb": clean, "range": clean, "endurance": clean,
 	"static_thrust": plantInputs, "static_speed": plantInputs,
+	"static_thrust_ratio": slices.Concat(massInputs, plantInputs), "power_loading": slices.Concat(massInputs, plantInputs),
 }
 
-// blank lists every figure without its value, in the order shown.
-func blank() []Figure {
-	kinds := project.FigureKinds()
-	list := make([]Figure, len(kinds))
-	for i, k := range kinds {
-		list[i] = Figure{FigureKind: k, Rests: flown}
-		if r, ok := rests[k.ID]; ok {
-			list[i].Rests = r
-		}
+// blank is a figure without its value.
+func (s *Study) blank(kind project.FigureKind) Figure {
+	f := Figure{FigureKind: kind, Rests: flown}
+	if r, ok := rests[kind.ID]; ok {
+		f.Rests = r
 	}
-	return list
+	stall := slices.Concat([]string{"airframe.wing_area"}, massInputs, s.weighs())
+	switch kind.ID {
+	case "stall_clean":
+		f.Rests = append(stall, "airframe.clean.cl_max")
+	case "stall_take_off":
+		f.Rests = append(stall, "airframe.take_off.cl_max")
+	case "stall_landing":
+		f.Rests = append(stall, "airframe.landing.cl_max")
+	case "wing_loading":
+		f.Rests = stall
+	}
+	return f
 }
 
 // Figure finds a figure by its identifier; nil when there is none of that name.
@@ -64,7 +76,11 @@ func (s *Study) Figure(id string) *Figure {
 }
 
 func (s *Study) set(id string, value float64, where units.Message, err error) {
-	f := s.Figure(id)
+	s.Figure(id).take(value, where, err)
+}
+
+// take gives the figure its value in SI, or the reason why there is none.
+func (f *Figure) take(value float64, where units.Message, err error) {
 	f.Where = where
 	switch {
 	case err != nil:
@@ -76,13 +92,13 @@ func (s *Study) set(id string, value float64, where units.Message, err error) {
 	}
 }
 
-// figures fills every figure.
+// figures fills every figure that is computed whether or not a requirement asks for it.
 func (s *Study) figures(a *aircraft.Aircraft) {
-	s.Figures = blank()
-	stall := slices.Concat([]string{"airframe.wing_area"}, massInputs, s.weighs())
-	s.Figure("stall_clean").Rests = append(slices.Clone(stall), "airframe.clean.cl_max")
-	s.Figure("stall_landing").Rests = append(slices.Clone(stall), "airframe.landing.cl_max")
-
+	for _, k := range project.FigureKinds() {
+		if !k.Asked {
+			s.Figures = append(s.Figures, s.blank(k))
+		}
+	}
 	strip := s.TakeOff
 	on := stripCondition(strip)
 	s.set("take_off_distance", strip.Run.Total, on, strip.Err)
@@ -97,26 +113,29 @@ func (s *Study) figures(a *aircraft.Aircraft) {
 	p := &pointperf.Point{Air: air, Mass: mass}
 	best := pointperf.BestRate(a, p)
 	s.set("climb_rate", best.Value, here, best.Err)
-	speeds := pointperf.AllSpeeds(a, p)
-	s.set("level_max", speeds.LevelMax.TAS, here, speeds.LevelMax.Err)
-	s.set("stall_clean", pointperf.Stall(a, p, nil), here, nil)
-	land := &pointperf.Point{Air: air, Mass: mass, Config: aircraft.Landing}
-	s.set("stall_landing", pointperf.Stall(a, land, nil), here, nil)
+	fast := pointperf.LevelMax(a, p)
+	s.set("level_max", fast.TAS, here, fast.Err)
+	for id, c := range map[string]aircraft.Config{"stall_clean": aircraft.Clean, "stall_take_off": aircraft.TakeOff, "stall_landing": aircraft.Landing} {
+		s.set(id, pointperf.Stall(a, &pointperf.Point{Air: air, Mass: mass, Config: c}, nil), here, nil)
+	}
 	atMass := units.Say("{}", units.Of(units.Mass, mass))
 	s.set("service_ceiling", s.Service.Value, atMass, s.Service.Err)
 	s.set("absolute_ceiling", s.Absolute.Value, atMass, s.Absolute.Err)
 
 	s.set("static_thrust", s.Static.Thrust, units.Say("{}", units.Of(units.Altitude, air.PressureAltitude)), s.staticErr)
+	s.set("static_thrust_ratio", s.Static.Thrust/p.Weight(), here, s.staticErr)
 	s.set("static_speed", s.Static.Shaft.EngineSpeed, units.Message{}, s.shaftErr())
+	s.set("power_loading", mass/s.Static.Shaft.Power, here, s.shaftErr())
+	s.set("wing_loading", mass/a.WingArea(), atMass, nil)
 	s.set("tip_mach", s.tipMach(), units.Message{}, s.shaftErr())
 	s.missionFigures()
 }
 
 func (s *Study) shaftErr() error {
-	if s.staticErr == nil && s.Static.Shaft.Speed == 0 {
-		return units.Errorf(nil, "this powerplant turns no propeller")
+	if s.staticErr != nil {
+		return s.staticErr
 	}
-	return s.staticErr
+	return turns(s.Static)
 }
 
 // weighs lists the powerplant inputs that decide mass, by full path prefix.
@@ -156,6 +175,8 @@ func (s *Study) missionFigures() {
 	s.set("mission_time", f.Time, none, err)
 	s.set("mission_distance", f.Distance, none, err)
 	s.set("mission_fuel", f.Fuel, none, err)
+	s.set("energy_left", s.energyLeft(), none, err)
+	s.groundSpeed()
 	r := f.Reserve
 	reserveErr := err
 	if reserveErr == nil && !r.Asked {
@@ -163,6 +184,45 @@ func (s *Study) missionFigures() {
 	}
 	s.set("reserve_time", r.Flown, none, reserveErr)
 	s.set("fuel_left", r.Left, none, reserveErr)
+}
+
+// energyLeft is the least share of a store of energy that the mission without its reserve leaves, dimensionless.
+func (s *Study) energyLeft() float64 {
+	aboard, left := s.Aircraft().Stores(), 1.0
+	if aboard.Fuel > 0 {
+		left = math.Min(left, 1-s.Flight.Fuel/aboard.Fuel)
+	}
+	if aboard.Charge > 0 {
+		left = math.Min(left, 1-s.Flight.Energy/aboard.Charge)
+	}
+	return left
+}
+
+// groundSpeed finds the greatest ground speed of the mission as flown; a leg that
+// circles meets its wind from behind.
+func (s *Study) groundSpeed() {
+	greatest, at := math.Inf(-1), -1
+	for i := range s.Flight.Trace {
+		t := &s.Flight.Trace[i]
+		leg := &s.Project.Spec.Legs[t.Leg]
+		wind := leg.HeadWind
+		switch leg.Kind {
+		case mission.TakeOff:
+			wind = s.TakeOff.Place.HeadWind
+		case mission.Landing:
+			wind = s.Landing.Place.HeadWind
+		case mission.Loiter, mission.Reserve:
+			wind = -math.Abs(wind)
+		}
+		if v := math.Sqrt(math.Max(0, t.TAS*t.TAS-t.Rate*t.Rate)) - wind; v > greatest {
+			greatest, at = v, t.Leg
+		}
+	}
+	if at < 0 {
+		s.set("ground_speed", 0, units.Message{}, units.Errorf(nil, "no leg was flown"))
+		return
+	}
+	s.set("ground_speed", greatest, units.Say("in “{}”", units.Text(s.legName(at))), nil)
 }
 
 // legName is the name of the leg with the given index.

@@ -99,7 +99,7 @@ func TestRestsAreTrue(t *testing.T) {
 		}
 	}
 	for _, f := range before.Figures {
-		if !moved[f.ID] && f.ID != "reserve_time" {
+		if !moved[f.ID] && f.ID != "reserve_time" && f.ID != "ground_speed" { // the demo's cruises have given speeds
 			t.Errorf("%s changed with no input at all", f.ID)
 		}
 	}

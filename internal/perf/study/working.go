@@ -23,6 +23,8 @@ const (
 	partCeiling  = "Ceilings"
 	partTightest = "Tightest point of the mission"
 	partMission  = "Mission, leg by leg"
+	partLoading  = "Loading"
+	partAsked    = "Requirements under conditions of their own"
 )
 
 // parts says in which part of the working each figure is derived.
@@ -33,11 +35,22 @@ var parts = map[string]string{
 	"service_ceiling": partCeiling, "absolute_ceiling": partCeiling,
 	"static_thrust": partRest, "static_speed": partRest, "tip_mach": partTightest,
 	"thrust_in_hand": partTightest, "mission_time": partMission, "mission_distance": partMission, "mission_fuel": partMission,
-	"reserve_time": partMission, "fuel_left": partMission,
+	"reserve_time": partMission, "fuel_left": partMission, "energy_left": partMission, "ground_speed": partMission,
+	"stall_take_off": partTakeOff, "static_thrust_ratio": partLoading, "wing_loading": partLoading, "power_loading": partLoading,
+	"steepest_gradient": partAsked, "balked_gradient": partAsked, "time_to_climb": partAsked, "cruise_speed": partAsked, "range": partAsked, "endurance": partAsked,
+	"glide_ratio": partAsked, "turn_load": partAsked,
 }
 
 // WorkingPart is the heading of the part of the working that derives a figure, empty for an unknown one.
 func WorkingPart(figure string) string { return parts[figure] }
+
+// WorkingPart is the heading of the part of the working that derives the figure of the verdict.
+func (v *Verdict) WorkingPart() string {
+	if v.ownTerms() {
+		return partAsked
+	}
+	return WorkingPart(v.Requirement.Figure)
+}
 
 // Working derives the numbers of the view, then those of the strip, the ceilings
 // and the mission, step by step from the inputs, as an engineer would on paper.
@@ -45,7 +58,7 @@ func WorkingPart(figure string) string { return parts[figure] }
 // Where a part has no answer, the reason stands in its place.
 func (s *Study) Working() *formula.Working {
 	w := &formula.Working{}
-	for _, part := range []func(*formula.Working) error{s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking} {
+	for _, part := range []func(*formula.Working) error{s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
 		if err := part(w); err != nil {
 			w.Note("No answer: %s.", units.Explain(err).In(units.Metric))
 		}
@@ -108,6 +121,8 @@ func (s *Study) takeOffWorking(w *formula.Working) error {
 	w.Heading(partTakeOff)
 	a, t, how := s.Aircraft(), &s.TakeOff, s.Project.Plan.Technique
 	p := &pointperf.Point{Air: t.Place.Air, Mass: t.Mass, Config: aircraft.TakeOff}
+	w.Note("The stall of the figures is that at the departure strip and start mass, %s; the take-off itself begins with what the taxi leaves.", in(units.Mass, a.StartMass()))
+	pointperf.Stall(a, &pointperf.Point{Air: s.Project.Departure.Air, Mass: a.StartMass(), Config: aircraft.TakeOff}, w)
 	w.Note("%s, %s.", t.Place.Strip.Name, in(units.Mass, t.Mass))
 	stall := pointperf.Stall(a, p, w)
 	v := how.LiftOffFactor * stall
@@ -200,6 +215,12 @@ func (s *Study) missionWorking(w *formula.Working) error {
 	}
 	w.Note("Together, without reserve: %s, %s, %s of fuel. Distance, altitude and energy of each leg are integrated in time, the mass falling with the fuel.",
 		in(units.Duration, f.Time), in(units.Distance, f.Distance), in(units.Mass, f.Fuel))
+	if left := s.Figure("energy_left"); left.Has() {
+		w.Note("Of the fuel or charge aboard at the start that leaves %s, before any reserve.", in(units.Fraction, left.Value))
+	}
+	if g := s.Figure("ground_speed"); g.Has() {
+		w.Note("The greatest ground speed is the true airspeed along the ground less the head wind of the leg, %s %s; where a leg circles, its wind is met from behind.", in(units.Speed, g.Value), g.Where.In(units.Metric))
+	}
 	if f.Failure != nil {
 		return f.Failure.Err
 	}

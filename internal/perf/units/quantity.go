@@ -37,6 +37,8 @@ const (
 	FuelFlow                        // kg/s
 	SpecificRange                   // distance per fuel, m/kg
 	GasConstant                     // J/(kg·K)
+	WingLoading                     // mass per wing area, kg/m²
+	PowerLoading                    // mass per shaft power, kg/W
 	quantities                      // count
 )
 
@@ -103,6 +105,12 @@ var (
 	lbfFoot    = Unit{Symbol: "lbf·ft", Scale: poundForce * foot, Aliases: []string{"lbf ft", "lb ft"}}
 	metreSec2  = Unit{Symbol: "m/s²", Scale: 1, Aliases: []string{"m/s2"}}
 	pascalSec  = Unit{Symbol: "Pa·s", Scale: 1}
+	kgSqMetre  = Unit{Symbol: "kg/m²", Scale: 1, Aliases: []string{"kg/m2", "kg/m^2"}}
+	lbSqFoot   = Unit{Symbol: "lb/ft²", Scale: pound / (foot * foot), Aliases: []string{"lb/ft2", "lb/sq ft", "psf"}}
+	gramSqDec  = Unit{Symbol: "g/dm²", Scale: 0.1, Aliases: []string{"g/dm2"}}
+	kgKilowatt = Unit{Symbol: "kg/kW", Scale: 1e-3}
+	lbHorse    = Unit{Symbol: "lb/hp", Scale: pound / horsepower}
+	gramWatt   = Unit{Symbol: "g/W", Scale: 1e-3}
 	joulePer   = Unit{Symbol: "J/(kg·K)", Scale: 1}
 )
 
@@ -137,6 +145,8 @@ var table = [quantities]row{
 	FuelFlow:        {"fuel flow", "kg/s", shown{lbHour, 1}, shown{kgHour, 2}, shown{gramMin, 2}, []Unit{kgSec}},
 	SpecificRange:   {"specific range", "m/kg", shown{nmPerLb, 2}, shown{kmPerKg, 2}, shown{kmPerKg, 1}, []Unit{{Symbol: "m/kg", Scale: 1}}},
 	GasConstant:     {"gas constant", "J/(kg·K)", shown{joulePer, 3}, shown{joulePer, 3}, shown{joulePer, 3}, nil},
+	WingLoading:     {"wing loading", "kg/m²", shown{lbSqFoot, 1}, shown{kgSqMetre, 1}, shown{kgSqMetre, 2}, []Unit{gramSqDec}},
+	PowerLoading:    {"power loading", "kg/W", shown{lbHorse, 1}, shown{kgKilowatt, 2}, shown{gramWatt, 2}, []Unit{{Symbol: "kg/W", Scale: 1}}},
 }
 
 // Quantities lists every quantity.
