@@ -1,6 +1,7 @@
 package handlers
 
 import (
+	"cmp"
 	"fmt"
 	"slices"
 	"strconv"
@@ -51,10 +52,25 @@ func act(s *project.Spec, variant int, action string) (string, error) {
 		s.Variants = append(s.Variants, copied)
 		return fmt.Sprintf("Variant “%s” copied", v.Name), nil
 	case "add-requirement":
-		s.Requirements = append(s.Requirements, project.Requirement{Figure: "service_ceiling", Bound: project.AtLeast, Limit: 3000})
-		return "Requirement added", nil
+		kind, ok := project.LookupFigure(cmp.Or(arg, "service_ceiling"))
+		if !ok {
+			return "", noAction(action)
+		}
+		s.Requirements = append(s.Requirements, project.Require(kind.ID, kind.Bound, kind.Usual))
+		return "Requirement added: " + kind.Label, nil
+	case "add-preset":
+		preset, ok := project.LookupPreset(arg)
+		if !ok {
+			return "", noAction(action)
+		}
+		lacking := preset.Lacking(s)
+		s.Requirements = append(s.Requirements, lacking...)
+		if len(lacking) == 0 {
+			return "", nil
+		}
+		return fmt.Sprintf("Added from %s: %s", preset.Clause, preset.Title), nil
 	case "remove-requirement":
-		return removed(&s.Requirements, arg, "Requirement", func(i int) string { return s.Requirements[i].Figure })
+		return removed(&s.Requirements, arg, "Requirement", func(i int) string { return s.Requirements[i].Kind().Label })
 	}
 	return "", noAction(action)
 }

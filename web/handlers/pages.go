@@ -18,7 +18,8 @@ type editPage struct {
 
 // editPages are the pages that answer the edits made on them, by the name that their forms carry in the field "page".
 var editPages = map[string]editPage{
-	"": {"", benchPage},
+	"":             {"", benchPage},
+	"requirements": {"/requirements", requirementsPage},
 }
 
 // pageName is the page on which the edit was made; the bench answers for one that is not known.
@@ -44,4 +45,9 @@ func (s *site) editable(name string) page {
 func benchPage(st *study.Study, state views.State) (page, part templ.Component) {
 	b := views.NewBench(st, state)
 	return views.BenchPage(b), views.BenchBody(b)
+}
+
+func requirementsPage(st *study.Study, state views.State) (page, part templ.Component) {
+	p := views.NewRequirements(st, state)
+	return views.RequirementsPage(p), views.RequirementsBody(p)
 }

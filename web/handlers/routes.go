@@ -63,6 +63,7 @@ func New(cfg Config) (http.Handler, error) {
 		r.Post("/variants/{variant}/redo", s.serve(s.step(s.db.Redo, "done again")))
 		r.Get("/variants/{variant}/climb", s.serve(s.analysis("/climb", climb)))
 		r.Get("/variants/{variant}/strip", s.serve(s.analysis("/strip", strip)))
+		r.Get("/variants/{variant}/requirements", s.serve(s.editable("requirements")))
 		r.Get("/variants/{variant}/powerplant", s.serve(s.analysis("/powerplant", plant)))
 		r.Get("/variants/{variant}/working", s.serve(s.analysis("/working", working)))
 	})

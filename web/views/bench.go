@@ -2,8 +2,10 @@ package views
 
 import (
 	"bytes"
+	"cmp"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"legwright/internal/perf/aircraft"
@@ -21,6 +23,8 @@ type Bench struct {
 	Editing
 	Verdict  Verdict
 	Tiles    []Tile
+	More     string // says how many requirements have no tile; empty when each has one
+	MoreURL  string // of the page of requirements
 	View     ViewForm
 	Speeds   Speeds
 	Charts   Charts
@@ -128,7 +132,8 @@ func NewBench(s *study.Study, st State) Bench {
 	here := fmt.Sprintf("/projects/%d/variants/%s", st.ProjectID, v.ID)
 	b := Bench{Frame: NewFrame(s, st.ProjectID, "", st.Query, st.View), Editing: newEditing(s, st)}
 	b.Verdict = newVerdict(s, sys)
-	b.Tiles = tiles(s, sys, here+"/working")
+	b.Tiles, b.More = tiles(s, sys, here+"/working")
+	b.MoreURL = here + "/requirements" + st.Query
 	b.form(newForm(spec, s.Index, st.Refusals).groups(), st.Refusals)
 	summarise(b.Groups, s, sys)
 	b.View = newViewForm(s, sys, b.Frame)
@@ -229,12 +234,16 @@ func missed(s *study.Study) string {
 		}
 	}
 	text := ""
-	switch n := len(s.Requirements); len(names) {
+	all := len(names)
+	if all > 4 {
+		names = append(names[:3], fmt.Sprintf("%d more", all-3))
+	}
+	switch n := len(s.Requirements); all {
 	case 0:
 	case 1:
 		text = fmt.Sprintf("Misses one requirement of %d: %s.", n, names[0])
 	default:
-		text = fmt.Sprintf("Misses %d requirements of %d: %s.", len(names), n, strings.Join(names, "; "))
+		text = fmt.Sprintf("Misses %d requirements of %d: %s.", all, n, strings.Join(names, "; "))
 	}
 	if open > 0 {
 		text = strings.TrimSpace(text + " " + plural(open) + " cannot be judged.")
@@ -267,19 +276,29 @@ func whenIn(s *study.Study, t *mission.Sample, sys units.System) string {
 	return sys.Format(units.Duration, since) + " into"
 }
 
-// tiles holds every requirement against its figure, with a link to its working on the page at the given address.
-func tiles(s *study.Study, sys units.System, page string) []Tile {
-	var list []Tile
+// mostTiles is how many requirements the verdict shows one by one.
+const mostTiles = 8
+
+// tiles holds requirements against their figures, each with a link to its working on the page
+// at the given address. Where there are too many, those that are missed or were not judged go first,
+// and more says how many are left out.
+func tiles(s *study.Study, sys units.System, page string) (list []Tile, more string) {
+	shown := make([]*study.Verdict, 0, len(s.Requirements))
 	for i := range s.Requirements {
-		r := &s.Requirements[i]
-		if r.Figure == nil {
-			continue
+		if s.Requirements[i].Figure != nil {
+			shown = append(shown, &s.Requirements[i])
 		}
-		sign := "≤"
-		if r.Requirement.Bound == project.AtLeast {
-			sign = "≥"
+	}
+	if n := len(shown) - mostTiles; n > 0 {
+		slices.SortStableFunc(shown, func(a, b *study.Verdict) int { return cmp.Compare(urgency(a), urgency(b)) })
+		more = fmt.Sprintf("and %d more", n)
+		shown = shown[:mostTiles]
+	}
+	for _, r := range shown {
+		t := Tile{Caption: lowerFirst(r.Figure.Label) + ", " + wanted(&r.Requirement, sys)}
+		if under := stated(&r.Requirement, sys); under != "" {
+			t.Caption += "; " + under
 		}
-		t := Tile{Caption: lowerFirst(r.Figure.Label) + ", " + sign + "\u00a0" + sys.Format(r.Figure.Quantity, r.Requirement.Limit)}
 		switch {
 		case !r.Judged():
 			t.Value, t.Word, t.Tone = "–", "not judged: "+r.Reason.In(sys), "caution"
@@ -288,10 +307,21 @@ func tiles(s *study.Study, sys units.System, page string) []Tile {
 		default:
 			t.Value, t.Word, t.Tone = sys.Format(r.Figure.Quantity, r.Figure.Value), "missed", "bad"
 		}
-		t.Why, t.URL = weakness(s, r.Figure.ID), workingURL(page, r.Figure.ID)
+		t.Why, t.URL = weaknessOf(s, r.Figure), page+"#"+anchors[r.WorkingPart()]
 		list = append(list, t)
 	}
-	return list
+	return list, more
+}
+
+// urgency puts what is missed before what was not judged, and that before what is met.
+func urgency(v *study.Verdict) int {
+	switch {
+	case !v.Judged():
+		return 1
+	case v.Met:
+		return 2
+	}
+	return 0
 }
 
 // summarise gives each group its line of what matters.
@@ -414,8 +444,10 @@ func chartView(c charts.Chart) ChartView {
 }
 
 // weakness says that a figure rests on placeholders; empty when it does not.
-func weakness(s *study.Study, id string) string {
-	switch n := len(s.Unsure(s.Figure(id))); n {
+func weakness(s *study.Study, id string) string { return weaknessOf(s, s.Figure(id)) }
+
+func weaknessOf(s *study.Study, f *study.Figure) string {
+	switch n := len(s.Unsure(f)); n {
 	case 0:
 		return ""
 	case 1:

@@ -45,6 +45,7 @@ type Group struct {
 	Open    bool
 	Blocks  []Block
 	Adds    []Button // actions that add to a list
+	More    string   // where the rest of the subject is entered; empty when all of it is here
 
 	Warnings []WarningView // about what the group holds
 }
@@ -284,9 +285,11 @@ func (f *form) legs() Group {
 }
 
 func (f *form) requirements() Group {
-	g := Group{ID: "requirements", Title: "Requirements", Adds: []Button{{Action: "add-requirement", Label: "Add a requirement"}}}
+	g := Group{ID: "requirements", Title: "Requirements", More: "Conditions, margins and published rules stand on the page Requirements.",
+		Adds: []Button{{Action: "add-requirement", Label: "Add a requirement"}}}
 	for i := range f.spec.Requirements {
-		g.Blocks = append(g.Blocks, Block{Compact: true, Fields: f.under(fmt.Sprintf("requirements[%d]", i)),
+		path := fmt.Sprintf("requirements[%d]", i)
+		g.Blocks = append(g.Blocks, Block{Compact: true, Title: stated(&f.spec.Requirements[i], f.sys), Fields: f.own(path+".figure", path+".bound", path+".limit"),
 			Buttons: []Button{{Action: "remove-requirement " + strconv.Itoa(i), Label: "Remove", Title: "Remove this requirement"}}})
 	}
 	return g

@@ -23,6 +23,7 @@ var tabs = []struct{ Path, Label string }{
 	{"", "Bench"},
 	{"/climb", "Climb and envelope"},
 	{"/strip", "Strip"},
+	{"/requirements", "Requirements"},
 	{"/powerplant", "Powerplant and propeller"},
 	{"/working", "Working"},
 }

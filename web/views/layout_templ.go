@@ -40,7 +40,7 @@ func layout(title string) templ.Component {
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
-		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 2, " · Legwright</title><link rel=\"icon\" href=\"/static/icon.svg\" type=\"image/svg+xml\"><link rel=\"stylesheet\" href=\"/static/tokens.css\"><link rel=\"stylesheet\" href=\"/static/page.css\"><link rel=\"stylesheet\" href=\"/static/bench.css\"><link rel=\"stylesheet\" href=\"/static/charts.css\"><link rel=\"stylesheet\" href=\"/static/climb.css\"><link rel=\"stylesheet\" href=\"/static/strip.css\"><link rel=\"stylesheet\" href=\"/static/plant.css\"><script src=\"/static/enhance.js\" defer></script><script src=\"/static/htmx.min.js\" defer></script><script src=\"/static/charts.js\" defer></script></head><body><a class=\"skip\" href=\"#main\">Skip to the content</a>")
+		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 2, " · Legwright</title><link rel=\"icon\" href=\"/static/icon.svg\" type=\"image/svg+xml\"><link rel=\"stylesheet\" href=\"/static/tokens.css\"><link rel=\"stylesheet\" href=\"/static/page.css\"><link rel=\"stylesheet\" href=\"/static/bench.css\"><link rel=\"stylesheet\" href=\"/static/charts.css\"><link rel=\"stylesheet\" href=\"/static/climb.css\"><link rel=\"stylesheet\" href=\"/static/strip.css\"><link rel=\"stylesheet\" href=\"/static/plant.css\"><link rel=\"stylesheet\" href=\"/static/requirements.css\"><script src=\"/static/enhance.js\" defer></script><script src=\"/static/htmx.min.js\" defer></script><script src=\"/static/charts.js\" defer></script></head><body><a class=\"skip\" href=\"#main\">Skip to the content</a>")
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
