@@ -41,7 +41,7 @@ type RequirementRow struct {
 	Reason     string // why it was not evaluated
 	Weak       string // which placeholders it rests on; empty when on none
 	URL        string // of its working
-	EditID     string // of its inputs on this page
+	EditID     string // of its form on this page; the browser opens the group around it
 }
 
 // A Bar draws a margin from its middle, in the units of a box 100 wide.
@@ -133,7 +133,7 @@ func requirementRow(s *study.Study, i int, sys units.System, working string) Req
 	v := &s.Requirements[i]
 	r := &v.Requirement
 	row := RequirementRow{Number: strconv.Itoa(i + 1), Label: r.Kind().Label, Conditions: stated(r, sys), Clause: r.Clause, Note: r.Note,
-		Wanted: wanted(r, sys), EditID: "group-requirement-" + strconv.Itoa(i), URL: working + "#" + anchors[v.WorkingPart()]}
+		Wanted: wanted(r, sys), EditID: "form-requirement-" + strconv.Itoa(i), URL: working + "#" + anchors[v.WorkingPart()]}
 	if v.Figure == nil {
 		row.Word, row.Tone, row.Reason = "not evaluated", "caution", sentence(v.Reason.In(sys))
 		return row
