@@ -277,6 +277,30 @@ func TestAskedDistances(t *testing.T) {
 	}
 }
 
+// A landing is held for the strip of arrival, a take-off for that of departure.
+func TestAskedOnItsOwnStrip(t *testing.T) {
+	away := func(s *project.Spec) {
+		s.Strips = append(s.Strips, runway.Strip{Name: "Lake", Length: 900, Elevation: 900, Surface: "dry-asphalt", Obstacle: 15.24})
+		for i := range s.Legs {
+			if s.Legs[i].Kind == mission.Landing {
+				s.Legs[i].Strip = "Lake"
+			}
+		}
+	}
+	for figure, name := range map[string]string{"landing_distance": "Lake", "take_off_distance": "Sorrel Down 08"} {
+		r := project.Require(figure, project.AtMost, 500)
+		r.MassGiven = project.AtGreatest
+		_, v := held(t, r, away)
+		if where := v.Figure.Where.In(units.Metric); !strings.HasPrefix(where, name) {
+			t.Errorf("%s holds at %s", figure, where)
+		}
+		r.StripGiven, r.Strip = project.NamedStrip, name
+		if _, named := held(t, r, away); named.Figure.Value != v.Figure.Value {
+			t.Errorf("%s: %g m, %g m on %s", figure, v.Figure.Value, named.Figure.Value, name)
+		}
+	}
+}
+
 // The demo's return is flown at 50 m/s with 3 m/s from behind; what is left of the fuel is what was not burnt.
 func TestMissionShares(t *testing.T) {
 	st := study.All(built(t, project.Demo()))[0]
