@@ -81,7 +81,7 @@ func TestLayout(t *testing.T) {
 	p.shot("failing-1280-light")
 	p.fitsAt("failing bench")
 	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "history": "/projects/1/history", "problem": "/projects/99"} {
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
 		p.open(s.url + path)
 		p.shot(name + "-1280-light")
 		p.fitsAt(name)
@@ -137,6 +137,11 @@ func ugly() *project.Spec {
 		}
 	}
 	s.Strips[0].Name = long("Stripname", 80)
+	for _, k := range project.FigureKinds() {
+		r := project.Require(k.ID, k.Bound, k.Usual)
+		r.Clause, r.Note, r.StripGiven, r.Strip = long("Clause", 120), long("Remark", 500), project.NamedStrip, s.Strips[0].Name
+		s.Requirements = append(s.Requirements, r)
+	}
 	for i := range s.Legs {
 		s.Legs[i].Name = long("Legname", 60)
 		if s.Legs[i].Distance > 0 {
@@ -160,7 +165,7 @@ func TestUgly(t *testing.T) {
 	p.openAll()
 	p.fitsAt("ugly bench")
 	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "history": "/projects/1/history"} {
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history"} {
 		p.open(s.url + path)
 		p.fitsAt("ugly " + name)
 	}

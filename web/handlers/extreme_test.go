@@ -25,7 +25,7 @@ func TestExtremes(t *testing.T) {
 	entries := slices.DeleteFunc(input.Walk(project.Demo()), func(e input.Entry) bool {
 		return e.Idle || strings.HasPrefix(e.Path, "variants[1]") || len(extremes(e)) == 0
 	})
-	tabs := []string{"working", "climb", "strip", "powerplant"}
+	tabs := []string{"working", "climb", "strip", "powerplant", "requirements"}
 	taken := 0
 	for seed := range *seeds {
 		chance := rand.New(rand.NewPCG(1, uint64(seed)))
