@@ -307,7 +307,7 @@ func tiles(s *study.Study, sys units.System, page string) (list []Tile, more str
 		default:
 			t.Value, t.Word, t.Tone = sys.Format(r.Figure.Quantity, r.Figure.Value), "missed", "bad"
 		}
-		t.Why, t.URL = weaknessOf(s, r.Figure), page+"#"+anchors[r.WorkingPart()]
+		t.Why, t.URL = weaknessOf(s, r.Figure), page+"#"+anchor(r.WorkingPart())
 		list = append(list, t)
 	}
 	return list, more

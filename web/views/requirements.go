@@ -133,7 +133,7 @@ func requirementRow(s *study.Study, i int, sys units.System, working string) Req
 	v := &s.Requirements[i]
 	r := &v.Requirement
 	row := RequirementRow{Number: strconv.Itoa(i + 1), Label: r.Kind().Label, Conditions: stated(r, sys), Clause: r.Clause, Note: r.Note,
-		Wanted: wanted(r, sys), EditID: "form-requirement-" + strconv.Itoa(i), URL: working + "#" + anchors[v.WorkingPart()]}
+		Wanted: wanted(r, sys), EditID: "form-requirement-" + strconv.Itoa(i), URL: working + "#" + anchor(v.WorkingPart())}
 	if v.Figure == nil {
 		row.Word, row.Tone, row.Reason = "not evaluated", "caution", sentence(v.Reason.In(sys))
 		return row

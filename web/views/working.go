@@ -48,7 +48,7 @@ func NewWorking(s *study.Study, frame Frame) Working {
 	seen := map[string]bool{}
 	for _, step := range w.Steps {
 		if step.Heading || len(p.Parts) == 0 {
-			p.Parts = append(p.Parts, Part{ID: anchors[step.Note], Title: step.Note})
+			p.Parts = append(p.Parts, Part{ID: anchor(step.Note), Title: step.Note})
 			continue
 		}
 		part := &p.Parts[len(p.Parts)-1]
@@ -70,6 +70,14 @@ var anchors = func() map[string]string {
 	}
 	return m
 }()
+
+// anchor is the id of the part of the working with that heading, empty for one that nothing points to.
+func anchor(heading string) string {
+	if number, _, ok := strings.Cut(heading, ": "); ok && strings.HasPrefix(number, "Requirement ") {
+		return "working-requirement-" + strings.TrimPrefix(number, "Requirement ")
+	}
+	return anchors[heading]
+}
 
 // workingURL is the address of the working of a figure on the working page.
 func workingURL(page, figure string) string { return page + "#" + anchors[study.WorkingPart(figure)] }

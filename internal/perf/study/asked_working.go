@@ -38,16 +38,19 @@ func (v *Verdict) ownTerms() bool {
 // askedWorking derives the figure of every requirement that sets conditions of its own.
 func (s *Study) askedWorking(w *formula.Working) error {
 	w.Heading(partAsked)
-	none := true
+	w.Note("A requirement that sets no conditions is held against the figures derived above; each of the others follows here.")
 	for i := range s.Requirements {
 		v := &s.Requirements[i]
 		if !v.ownTerms() {
 			continue
 		}
-		none = false
 		r := &v.Requirement
-		w.Note("Requirement %d: %s. Condition: %s.", i+1, v.Figure.Label, v.Figure.Where.In(units.Metric))
+		w.Heading(v.WorkingPart())
+		w.Note("Condition: %s.", v.Figure.Where.In(units.Metric))
 		c, err := s.under(v.Figure.FigureKind, r)
+		if air, wrong := c.day.At(c.point.Air.PressureAltitude, nil); wrong == nil && air == c.point.Air {
+			c.day.At(air.PressureAltitude, w)
+		}
 		if err == nil {
 			err = s.derive(v.Figure.ID, r, &c, w)
 		}
@@ -58,9 +61,6 @@ func (s *Study) askedWorking(w *formula.Working) error {
 		if v.Figure.Has() {
 			w.Note("%s is %s.", v.Figure.Label, in(v.Figure.Quantity, v.Figure.Value))
 		}
-	}
-	if none {
-		w.Note("No requirement sets conditions of its own.")
 	}
 	return nil
 }

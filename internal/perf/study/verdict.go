@@ -12,6 +12,7 @@ import (
 
 // A Verdict is a requirement held against its figure.
 type Verdict struct {
+	Number      int // its place in the list, from 1
 	Requirement project.Requirement
 	Figure      *Figure // under the requirement's conditions; nil when the study has no figure of that name
 	Met         bool
@@ -42,8 +43,8 @@ func (v *Verdict) Share() (share float64, ok bool) {
 
 // judge holds every requirement against its figure.
 func (s *Study) judge() {
-	for _, r := range s.Project.Spec.Requirements {
-		v := Verdict{Requirement: r}
+	for i, r := range s.Project.Spec.Requirements {
+		v := Verdict{Number: i + 1, Requirement: r}
 		if kind, ok := project.LookupFigure(r.Figure); ok {
 			v.Figure = s.asked(kind, &r)
 		}

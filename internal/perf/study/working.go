@@ -1,6 +1,8 @@
 package study
 
 import (
+	"fmt"
+
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
 	"legwright/internal/perf/formula"
@@ -47,7 +49,7 @@ func WorkingPart(figure string) string { return parts[figure] }
 // WorkingPart is the heading of the part of the working that derives the figure of the verdict.
 func (v *Verdict) WorkingPart() string {
 	if v.ownTerms() {
-		return partAsked
+		return fmt.Sprintf("Requirement %d: %s", v.Number, v.Figure.Label)
 	}
 	return WorkingPart(v.Requirement.Figure)
 }
