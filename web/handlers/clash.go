@@ -76,7 +76,8 @@ func (e *edit) moved(path string) bool {
 		if c != ']' {
 			continue
 		}
-		for _, name := range []string{"id", "name", "figure"} {
+		// Several requirements may name one figure; what they come from tells them apart as well.
+		for _, name := range []string{"id", "name", "figure", "clause"} {
 			key := path[:i+1] + "." + name
 			shown, ok := e.shown[key]
 			if !ok {
@@ -86,7 +87,9 @@ func (e *edit) moved(path string) bool {
 			if key != path && (!ok || views.EntryText(now, e.sys) != views.EntryText(shown, e.sys)) {
 				return true
 			}
-			break
+			if name != "figure" {
+				break
+			}
 		}
 	}
 	return false

@@ -415,6 +415,15 @@ func TestMargin(t *testing.T) {
 			t.Errorf("%s %g: met %v, margin %g, share %g", c.bound, c.limit, v.Met, v.Margin(), share)
 		}
 	}
+	r := ask("stall_landing", 0, 600)
+	r.Clause, r.Note = "a rule", "a note"
+	st, v := held(t, r)
+	a := st.Answer().Requirements[0]
+	share, _ := v.Share()
+	if a.Value == nil || *a.Value != v.Figure.Value || *a.Margin != v.Margin() || *a.Share != share || a.Unit != "m/s" || a.Clause != "a rule" || a.Note != "a note" ||
+		a.Conditions != "0\u00a0m, standard day, 600.0\u00a0kg" || a.Where != a.Conditions {
+		t.Errorf("answers %+v", a)
+	}
 	if _, v := held(t, project.Require("wing_loading", project.AtLeast, 0)); v.Met != true {
 		t.Error("not met at 0")
 	} else if _, ok := v.Share(); ok {
