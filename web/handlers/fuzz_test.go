@@ -24,6 +24,8 @@ func FuzzEditForm(f *testing.F) {
 		"variants[0].aircraft.powerplant.kind=rubber&variants[0].aircraft.powerplant.values.propeller.kind=constant-speed",
 		"display=small&day.given=temperature&day.temperature=-500+C&strips[0].name=&legs[1].strip=zz",
 		"requirements[0].figure=nothing&requirements[0].limit=1e300&action=add-requirement",
+		"page=requirements&action=add-preset+vla&requirements[0].figure=turn_load&requirements[0].turn_given=given&requirements[0].turn_speed=9e9&requirements[1].mass_given=given&requirements[1].mass=1e-9",
+		"page=requirements&action=add-requirement+no_such&requirements[0].strip_given=named&requirements[0].strip=%00&requirements[0].clause=%ed%a0%80&requirements[1].altitude_given=altitude&requirements[1].altitude=25000",
 		"requirements[0].figure=climb_rate&requirements[0].limit=0&requirements[0].bound=%3D",
 		"name=+&note=" + strings.Repeat("x", 2001) + "&variants[0].id=q&format=2",
 		"legs[0].name=%f0%9f%9b%a9&legs[0].time=1h&%zz=1;a=b&=&&&===",
