@@ -159,6 +159,12 @@ func (e *edit) value(shown input.Entry, text string) change {
 		if err == nil && said != "" && entry.Choice != nil {
 			input.Convert(s, shown.Path, before)
 			input.Settle(s) // what other choices offer may have changed
+			if views.EntryText(entry, sys) == before {
+				return "", errNoWay
+			}
+		}
+		if err == nil && said != "" && (entry.Number != nil || entry.Table != nil) {
+			forget(s, shown.Path)
 		}
 		return said, err
 	}}
@@ -227,6 +233,18 @@ func set(entry input.Entry, text string, sys units.System) (string, error) {
 		*entry.Text.Value = text
 	}
 	return fmt.Sprintf("%s: %s", entry.Label(), clipText(text)), nil
+}
+
+// errNoWay is why a Converter has set its choice back.
+var errNoWay = errors.New("what is given now cannot be said in that way: it stands for no parabola with drag and lift-dependent drag above 0")
+
+// forget drops the note of how an aircraft's input followed from others, as it no longer does.
+func forget(s *project.Spec, path string) {
+	for i := range s.Variants {
+		if within, ok := strings.CutPrefix(path, fmt.Sprintf("variants[%d].aircraft.", i)); ok {
+			s.Variants[i].Typed(within)
+		}
+	}
 }
 
 var errNoName = errors.New("a name is required")
