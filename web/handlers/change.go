@@ -227,12 +227,23 @@ func set(entry input.Entry, text string, sys units.System) (string, error) {
 		if err := entry.Check(); err != nil {
 			return "", err
 		}
+		text = optionLabel(entry.Choice, text)
 	case text == "" && needsName(entry.Path):
 		return "", errNoName
 	default:
 		*entry.Text.Value = text
 	}
 	return fmt.Sprintf("%s: %s", entry.Label(), clipText(text)), nil
+}
+
+// optionLabel is how the page words an option.
+func optionLabel(c *input.Choice, value string) string {
+	for _, o := range c.Options {
+		if o.Value == value && o.Label != "" {
+			return o.Label
+		}
+	}
+	return value
 }
 
 // errNoWay is why a Converter has set its choice back.

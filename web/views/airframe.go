@@ -56,7 +56,7 @@ func polarSays(spec *aircraft.Spec, sys units.System) string {
 	if err != nil {
 		return "No parabola with drag above 0 comes near this table, so it cannot be said in the other ways."
 	}
-	text := fmt.Sprintf("f %s, best L/D %s at %s EAS at %s, CDmin %s, e %s, K %s.", sys.Format(units.DragArea, e.DragArea), figures3(e.GlideRatio),
+	text := fmt.Sprintf("f\u00a0%s, best L/D\u00a0%s at %s EAS at %s, CDmin\u00a0%s, e\u00a0%s, K\u00a0%s.", sys.Format(units.DragArea, e.DragArea), figures3(e.GlideRatio),
 		sys.Format(units.Speed, e.GlideSpeed), sys.Format(units.Mass, e.Mass), figures3(e.CDMin), figures3(e.Efficiency), figures3(e.K))
 	if e.Fitted {
 		text = fmt.Sprintf("As a parabola, fitted to within %s in CD: %s CL at minimum drag %s.", figures3(e.Worst), text, figures3(e.CLMinDrag))
@@ -67,7 +67,7 @@ func polarSays(spec *aircraft.Spec, sys units.System) string {
 // liftSays says the greatest lift of a configuration in the other way.
 func liftSays(spec *aircraft.Spec, c aircraft.Config, sys units.System) string {
 	p := spec.Stall(c)
-	return joined(fmt.Sprintf("CLmax %s: stalls at %s CAS at %s, at sea level.", figures3(p.CLMax), sys.Format(units.Speed, p.Speed), sys.Format(units.Mass, p.Mass)), p.Unusual)
+	return joined(fmt.Sprintf("CLmax\u00a0%s: stalls at %s CAS at %s, at sea level.", figures3(p.CLMax), sys.Format(units.Speed, p.Speed), sys.Format(units.Mass, p.Mass)), p.Unusual)
 }
 
 // joined puts two sentences behind each other, either of which may be empty.
