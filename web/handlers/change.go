@@ -17,6 +17,7 @@ import (
 type change struct {
 	path string // of the form field
 	text string // as typed
+	last bool   // it converts what was typed beside it, which belongs to the way that the form showed
 	set  func(*project.Spec) (string, error)
 }
 
@@ -117,6 +118,15 @@ func (e *edit) differences(form url.Values) []change {
 		}
 		list = append(list, e.basisChanges(entry, form)...)
 	}
+	slices.SortStableFunc(list, func(a, b change) int {
+		switch {
+		case a.last == b.last:
+			return 0
+		case a.last:
+			return 1
+		}
+		return -1
+	})
 	return list
 }
 
@@ -143,7 +153,7 @@ func tidy(text string) string { return strings.TrimSpace(strings.ReplaceAll(text
 func (e *edit) value(shown input.Entry, text string) change {
 	sys := e.sys
 	clash := e.clash(shown, text)
-	return change{path: shown.Path, text: text, set: func(s *project.Spec) (string, error) {
+	return change{path: shown.Path, text: text, last: shown.Choice != nil && shown.Choice.Ways, set: func(s *project.Spec) (string, error) {
 		if clash != nil {
 			return "", clash
 		}

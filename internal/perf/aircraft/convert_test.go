@@ -102,6 +102,36 @@ func TestWaysAgree(t *testing.T) {
 	})
 }
 
+// Also after an edit in any of the ways: each switch keeps the polar that was flown before it.
+func TestEditedWaysAgree(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		s := shaped(t)
+		for range 5 {
+			edited := *s
+			edited.Airframe.Components = slices.Clone(edited.Airframe.Components)
+			for _, e := range input.Walk(&edited.Airframe) {
+				if e.Number != nil && !e.Idle {
+					*e.Number.Value *= rapid.Float64Range(0.9, 1.1).Draw(t, e.Path)
+				}
+			}
+			if _, err := edited.Build(); err == nil {
+				s = &edited
+			}
+			before := built(t, s)
+			from, way := s.Airframe.DragGiven, rapid.SampledFrom(ways[:4]).Draw(t, "way")
+			toWay(s, way)
+			after, err := s.Build()
+			if err != nil { // out of the range of the other way
+				s.Airframe.DragGiven = from
+				continue
+			}
+			for _, cl := range []float64{0, 0.4, 1.1} {
+				near(t, from+" to "+way+", CD", after.Polar(aircraft.Clean).CD(cl, 1, nil), before.Polar(aircraft.Clean).CD(cl, 1, nil), 1e-9)
+			}
+		}
+	})
+}
+
 // What does not change keeps the digits typed: there and back leaves the document as it was but for what was filled.
 func TestThereAndBackIsExact(t *testing.T) {
 	for _, way := range []string{aircraft.ByDragArea, aircraft.ByBuildUp, aircraft.ByBestGlide} {

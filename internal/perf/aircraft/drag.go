@@ -58,7 +58,7 @@ func (f *Airframe) Inputs() []input.Entry {
 		input.Num(&wingArea, &f.WingArea),
 		input.Num(&span, &f.Span),
 		input.Num(&height, &f.WingHeight),
-		input.Pick("drag_given", "Drag polar given as", &f.DragGiven, DragWays...),
+		input.Ways("drag_given", "Drag polar given as", &f.DragGiven, DragWays...),
 		input.Num(&cdMin, &f.CDMin).If(!table && !glide && !build && way != ByDragArea),
 		input.Num(&dragArea, &f.DragArea).If(way == ByDragArea),
 		input.Num(&glideRatio, &f.GlideRatio).If(glide),

@@ -30,7 +30,7 @@ var (
 func (c *Configuration) Inputs() []input.Entry {
 	stall := c.LiftGiven == ByStall
 	return []input.Entry{
-		input.Pick("lift_given", "Greatest lift given as", &c.LiftGiven, input.Option{Value: ByCLMax, Label: "CLmax"}, input.Option{Value: ByStall, Label: "stall speed at a mass"}),
+		input.Ways("lift_given", "Greatest lift given as", &c.LiftGiven, input.Option{Value: ByCLMax, Label: "CLmax"}, input.Option{Value: ByStall, Label: "stall speed at a mass"}),
 		input.Num(&clMax, &c.CLMax).If(!stall),
 		input.Num(&stallSpeed, &c.StallSpeed).If(stall),
 		input.Num(&stallMass, &c.StallMass).If(stall),
