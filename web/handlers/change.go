@@ -173,8 +173,8 @@ func (e *edit) value(shown input.Entry, text string) change {
 				return "", errNoWay
 			}
 		}
-		if err == nil && said != "" && (entry.Number != nil || entry.Table != nil) {
-			forget(s, shown.Path)
+		if v, path, ours := s.InAircraft(shown.Path); ours && err == nil && said != "" {
+			v.Typed(path)
 		}
 		return said, err
 	}}
@@ -258,15 +258,6 @@ func optionLabel(c *input.Choice, value string) string {
 
 // errNoWay is why a Converter has set its choice back.
 var errNoWay = errors.New("what is given now cannot be said in that way: it stands for no parabola with drag and lift-dependent drag above 0")
-
-// forget drops the note of how an aircraft's input followed from others, as it no longer does.
-func forget(s *project.Spec, path string) {
-	for i := range s.Variants {
-		if within, ok := strings.CutPrefix(path, fmt.Sprintf("variants[%d].aircraft.", i)); ok {
-			s.Variants[i].Typed(within)
-		}
-	}
-}
 
 var errNoName = errors.New("a name is required")
 

@@ -26,18 +26,16 @@ func (v *Variant) Convert(choice, from string) {
 		if d.Rate != 0 {
 			b.PlusMinus = math.Abs(d.Rate) * v.BasisOf(d.From[0]).PlusMinus
 		}
-		if v.Basis == nil {
-			v.Basis = map[string]Basis{}
-		}
-		v.Basis[d.Path] = b
+		v.SetBasis(d.Path, b)
 	}
 }
 
 // Typed tells that the input at the path within the aircraft was given by itself:
-// a note of how Convert filled it, and the band that came with that, hold no more.
+// a note of how Convert filled it holds no more.
 func (v *Variant) Typed(path string) {
-	if b, ok := v.Basis[path]; ok && b.Note != "" && aircraft.DerivedNote(b.Note) {
-		v.Basis[path] = Basis{Kind: b.Kind}
+	if b, ok := v.Basis[path]; ok && aircraft.DerivedNote(b.Note) {
+		b.Note = ""
+		v.Basis[path] = b
 	}
 }
 
