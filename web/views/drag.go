@@ -16,16 +16,17 @@ import (
 // A DragPage is the drag polar and the greatest lift of a variant, said in every way.
 type DragPage struct {
 	Frame
-	Lead   string
-	Mass   string // at which the speeds hold
-	Polar  ChartView
-	Ratio  ChartView
-	Ways   []Row
-	Fit    string // how well a parabola stands for a table, or why none does; empty where there is no table
-	Lift   Grid
-	Build  Grid
-	Method string // of the build-up; empty when there is no list
-	Warn   string // about a build-up of clean skin; empty when there is none to give
+	Lead    string
+	Mass    string // at which the speeds hold
+	Polar   ChartView
+	Ratio   ChartView
+	Ways    []Row
+	Fit     string // how well a parabola stands for a table, or why none does; empty where there is no table
+	Unusual string // which of the numbers that follow lie outside their typical range; empty when none does
+	Lift    Grid
+	Build   Grid
+	Method  string        // of the build-up; empty when there is no list
+	Warn    []WarningView // about what the drag rests on
 }
 
 // NewDrag makes the page.
@@ -46,11 +47,7 @@ func NewDrag(s *study.Study, f Frame) DragPage {
 		p.Method = fmt.Sprintf("Friction of a smooth flat plate at %s TAS, %s, standard day: laminar after Blasius, turbulent after Prandtl and Schlichting, with Prandtl's correction for the laminar run. Form factors: Raymer 1992, Hoerner 1965. The working has each step.",
 			sys.Format(units.Speed, spec.Airframe.FrictionTAS), sys.Format(units.Altitude, spec.Airframe.FrictionAlt))
 	}
-	for _, w := range s.Warnings {
-		if w.Code == "skin-only" {
-			p.Warn = sentence(w.Text.In(sys)) + " " + w.Clear
-		}
-	}
+	p.Warn = concerning(warnings(s.Warnings, sys), "airframe")
 	return p
 }
 
@@ -65,7 +62,7 @@ func (p *DragPage) ways(spec *aircraft.Spec, sys units.System) {
 	p.Lead = fmt.Sprintf("Given as %s. Choosing another way on the bench fills it with what stands here.", given)
 	e, err := spec.Equivalent()
 	if err != nil {
-		p.Fit = polarSays(spec, sys)
+		p.Fit, _ = polarSays(spec, sys)
 		return
 	}
 	p.Ways = []Row{
@@ -73,9 +70,7 @@ func (p *DragPage) ways(spec *aircraft.Spec, sys units.System) {
 		{Label: "Flat-plate area f", Value: sys.Format(units.DragArea, e.DragArea), Remark: "CDmin times the wing area; it compares aircraft of different sizes"},
 		{Label: "Best L/D", Value: figures3(e.GlideRatio) + " at " + sys.Format(units.Speed, e.GlideSpeed) + " EAS", Remark: fmt.Sprintf("at %s, CL %s, without propeller drag", sys.Format(units.Mass, e.Mass), figures3(e.GlideCL))},
 	}
-	if e.Unusual != "" {
-		p.Ways = append(p.Ways, Row{Label: "Outside what is typical", Value: e.Unusual})
-	}
+	p.Unusual = e.Unusual
 	if e.Fitted {
 		p.Fit = fmt.Sprintf("These are of the parabola that comes nearest to the table: its CD is within %s of every row, %s at the root of the mean square. The table itself is flown.", figures3(e.Worst), figures3(e.RMS))
 	}

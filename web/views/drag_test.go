@@ -44,8 +44,17 @@ func TestBuildUpTable(t *testing.T) {
 			t.Errorf("row %d of %q, want %q", i, p.Build.Rows, want)
 		}
 	}
-	if p.Method == "" || p.Warn != "" {
-		t.Errorf("method %q, warning %q", p.Method, p.Warn)
+	if p.Method == "" || len(p.Warn) > 0 {
+		t.Errorf("method %q, warning %v", p.Method, p.Warn)
+	}
+	// Without gear and leaks it is skin alone, of a drag that no such aircraft has.
+	p = dragOf(t, func(f *aircraft.Airframe) {
+		listed(f)
+		f.Leakage, f.Components = 0, f.Components[:1]
+		f.Components[0].WettedArea = 40
+	})
+	if len(p.Warn) != 1 || !strings.Contains(p.Unusual, "CDmin follows as 0.0145; typical 0.016") {
+		t.Errorf("warnings %v, unusual %q", p.Warn, p.Unusual)
 	}
 	// A list that is not in use is a check on what is; without its corrections.
 	p = dragOf(t, func(f *aircraft.Airframe) {

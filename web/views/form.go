@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strconv"
 	"strings"
+	"unicode/utf8"
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/input"
@@ -31,6 +32,12 @@ type Field struct {
 	Basis   []Option // nil when the input has no basis
 	Weak    bool     // placeholder
 	Remark  string   // note of the basis
+}
+
+// long reports whether what stands in the entry of a number needs more room than its column has.
+func (f Field) long() bool {
+	const room = 14 // characters
+	return f.Kind == "number" && utf8.RuneCountInString(f.Value)+utf8.RuneCountInString(f.Unit) > room
 }
 
 // An Option is one choice of a select.

@@ -24,10 +24,19 @@ func (v *Variant) Convert(choice, from string) {
 			b.Kind = Placeholder
 		}
 		if d.Rate != 0 {
-			b.PlusMinus = math.Abs(d.Rate) * v.BasisOf(d.From[0]).PlusMinus
+			b.PlusMinus = twoDigits(math.Abs(d.Rate) * v.BasisOf(d.From[0]).PlusMinus)
 		}
 		v.SetBasis(d.Path, b)
 	}
+}
+
+// twoDigits rounds a band >= 0 to two significant digits.
+func twoDigits(band float64) float64 {
+	if band < 1e-300 {
+		return band
+	}
+	scale := math.Pow(10, 1-math.Floor(math.Log10(band)))
+	return math.Round(band*scale) / scale
 }
 
 // Typed tells that the input at the path within the aircraft was given by itself:
