@@ -7,6 +7,7 @@
 //	numeric     roots, maxima, monotone tables, differential equations; no physics
 //	atmos       the air at an altitude on a day; altitudes; TAS, EAS, CAS and Mach
 //	polar       drag coefficient against lift coefficient
+//	dragbuild   minimum drag from the parts: friction, form, interference
 //	propeller   thrust and power coefficients; the loaded disc
 //	powerplant  what turns stored energy into thrust; one kind a file
 //	aircraft    an aircraft as entered (Spec) and as flown (Aircraft)

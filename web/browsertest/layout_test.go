@@ -80,7 +80,7 @@ func TestLayout(t *testing.T) {
 	p.swapped(func() { p.press(tabKey) })
 	p.shot("failing-1280-light")
 	p.fitsAt("failing bench")
-	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb",
+	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
 		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
 		p.open(s.url + path)
 		p.shot(name + "-1280-light")
@@ -164,7 +164,7 @@ func TestUgly(t *testing.T) {
 	p.shot("ugly-1280-light")
 	p.openAll()
 	p.fitsAt("ugly bench")
-	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb",
+	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
 		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history"} {
 		p.open(s.url + path)
 		p.fitsAt("ugly " + name)

@@ -24,9 +24,11 @@ func act(s *project.Spec, variant int, action string) (string, error) {
 		return "Item added", nil
 	case "remove-item":
 		return removed(items, arg, "Item", func(i int) string {
-			v.Basis = shifted(v.Basis, i)
+			v.Basis = shifted(v.Basis, "weights.items", i)
 			return (*items)[i].Name
 		})
+	case "add-component", "copy-component", "remove-component":
+		return actOnComponents(v, verb, arg)
 	case "add-leg":
 		s.Legs = append(s.Legs, mission.NewLeg(mission.Cruise, "New leg"))
 		return "Leg added", nil
@@ -111,18 +113,18 @@ func noAction(text string) error {
 	return &input.Error{Path: "action", Text: text, Accepts: "something that is still there", Err: input.ErrUnknown}
 }
 
-// shifted moves the bases of the items after a removed one to their new places.
-func shifted(bases map[string]project.Basis, gone int) map[string]project.Basis {
+// shifted moves the bases of the elements of a list after a removed one to their new places.
+func shifted(bases map[string]project.Basis, list string, gone int) map[string]project.Basis {
 	moved := map[string]project.Basis{}
 	for path, b := range bases {
-		rest, ok := strings.CutPrefix(path, "weights.items[")
+		rest, ok := strings.CutPrefix(path, list+"[")
 		n, tail, _ := strings.Cut(rest, "]")
 		i, err := strconv.Atoi(n)
 		switch {
 		case !ok || err != nil || i < gone:
 			moved[path] = b
 		case i > gone:
-			moved[fmt.Sprintf("weights.items[%d]%s", i-1, tail)] = b
+			moved[fmt.Sprintf("%s[%d]%s", list, i-1, tail)] = b
 		}
 	}
 	return moved

@@ -30,6 +30,10 @@ func (s *site) analysis(path string, show func(*study.Study, views.Frame) templ.
 	}
 }
 
+func drag(st *study.Study, f views.Frame) templ.Component {
+	return views.DragOfVariant(views.NewDrag(st, f))
+}
+
 func climb(st *study.Study, f views.Frame) templ.Component {
 	return views.ClimbAndEnvelope(views.NewClimbPage(st, st.Envelope(), f))
 }

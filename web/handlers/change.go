@@ -17,6 +17,7 @@ import (
 type change struct {
 	path string // of the form field
 	text string // as typed
+	last bool   // it converts what was typed beside it, which belongs to the way that the form showed
 	set  func(*project.Spec) (string, error)
 }
 
@@ -117,6 +118,15 @@ func (e *edit) differences(form url.Values) []change {
 		}
 		list = append(list, e.basisChanges(entry, form)...)
 	}
+	slices.SortStableFunc(list, func(a, b change) int {
+		switch {
+		case a.last == b.last:
+			return 0
+		case a.last:
+			return 1
+		}
+		return -1
+	})
 	return list
 }
 
@@ -143,7 +153,7 @@ func tidy(text string) string { return strings.TrimSpace(strings.ReplaceAll(text
 func (e *edit) value(shown input.Entry, text string) change {
 	sys := e.sys
 	clash := e.clash(shown, text)
-	return change{path: shown.Path, text: text, set: func(s *project.Spec) (string, error) {
+	return change{path: shown.Path, text: text, last: shown.Choice != nil && shown.Choice.Ways, set: func(s *project.Spec) (string, error) {
 		if clash != nil {
 			return "", clash
 		}
@@ -159,6 +169,12 @@ func (e *edit) value(shown input.Entry, text string) change {
 		if err == nil && said != "" && entry.Choice != nil {
 			input.Convert(s, shown.Path, before)
 			input.Settle(s) // what other choices offer may have changed
+			if views.EntryText(entry, sys) == before {
+				return "", errNoWay
+			}
+		}
+		if v, path, ours := s.InAircraft(shown.Path); ours && err == nil && said != "" {
+			v.Typed(path)
 		}
 		return said, err
 	}}
@@ -221,6 +237,7 @@ func set(entry input.Entry, text string, sys units.System) (string, error) {
 		if err := entry.Check(); err != nil {
 			return "", err
 		}
+		text = optionLabel(entry.Choice, text)
 	case text == "" && needsName(entry.Path):
 		return "", errNoName
 	default:
@@ -228,6 +245,19 @@ func set(entry input.Entry, text string, sys units.System) (string, error) {
 	}
 	return fmt.Sprintf("%s: %s", entry.Label(), clipText(text)), nil
 }
+
+// optionLabel is how the page words an option.
+func optionLabel(c *input.Choice, value string) string {
+	for _, o := range c.Options {
+		if o.Value == value && o.Label != "" {
+			return o.Label
+		}
+	}
+	return value
+}
+
+// errNoWay is why a Converter has set its choice back.
+var errNoWay = errors.New("what is given now cannot be said in that way: it stands for no parabola with drag and lift-dependent drag above 0")
 
 var errNoName = errors.New("a name is required")
 

@@ -58,7 +58,8 @@ func (e *edit) clash(shown input.Entry, text string) error {
 // actionClash keeps an action from another element than the one that its button stood beside.
 func (e *edit) actionClash(action string) error {
 	verb, arg, _ := strings.Cut(action, " ")
-	list := map[string]string{"remove-item": fmt.Sprintf("variants[%d].aircraft.weights.items", e.variant), "remove-leg": "legs", "move-leg-up": "legs", "insert-leg": "legs",
+	ours := fmt.Sprintf("variants[%d].aircraft.", e.variant)
+	list := map[string]string{"remove-item": ours + "weights.items", "copy-component": ours + componentList, "remove-component": ours + componentList, "remove-leg": "legs", "move-leg-up": "legs", "insert-leg": "legs",
 		"remove-requirement": "requirements"}[verb]
 	if _, err := strconv.Atoi(arg); err != nil || list == "" || e.base == e.head {
 		return nil

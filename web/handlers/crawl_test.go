@@ -8,6 +8,8 @@ import (
 
 	"golang.org/x/net/html"
 
+	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/dragbuild"
 	"legwright/internal/perf/project"
 )
 
@@ -28,6 +30,7 @@ const most = 400
 func TestCrawl(t *testing.T) {
 	c := &crawler{visitor: visit(t), known: map[string]bool{}}
 	c.keep(project.New("Second"))
+	c.keep(builtUp())
 	c.add("/")
 	for len(c.waiting) > 0 && c.pages+c.sent < most {
 		next := c.waiting[0]
@@ -37,18 +40,28 @@ func TestCrawl(t *testing.T) {
 	if c.pages+c.sent >= most {
 		t.Errorf("stopped after %d pages and %d forms, %d addresses left", c.pages, c.sent, len(c.waiting))
 	}
-	for _, path := range []string{"/projects/1/variants/a", "/projects/1/variants/b", "/projects/2/variants/a", "/projects/1/variants/a/working", "/projects/1/variants/a/climb",
+	for _, path := range []string{"/projects/1/variants/a", "/projects/1/variants/b", "/projects/2/variants/a", "/projects/1/variants/a/working", "/projects/1/variants/a/climb", "/projects/1/variants/a/drag",
 		"/projects/1/variants/a/strip", "/projects/1/variants/a/powerplant", "/projects/1/variants/a/requirements", "/projects/1/history", "/static/htmx.min.js"} {
 		if !c.known[path] {
 			t.Errorf("never reached %s", path)
 		}
 	}
-	for _, form := range []string{"form-weights remove-item #", "form-mission move-leg-up #", "form-requirements add-requirement", "form-requirement-# remove-requirement #", "add-form", "presets-form add-preset vla", "view-form", "undo-form", "redo-form", "units-form"} {
+	for _, form := range []string{"form-weights remove-item #", "form-airframe remove-component #", "form-mission move-leg-up #", "form-requirements add-requirement", "form-requirement-# remove-requirement #", "add-form", "presets-form add-preset vla", "view-form", "undo-form", "redo-form", "units-form"} {
 		if !c.known[form] {
 			t.Errorf("never sent %s", form)
 		}
 	}
 	t.Logf("%d pages, %d forms", c.pages, c.sent)
+}
+
+// builtUp is a project whose drag is a build-up and whose lift is a stall speed.
+func builtUp() *project.Spec {
+	s := project.New("Built up")
+	f := &s.Variants[0].Aircraft.Airframe
+	f.DragGiven, f.FrictionTAS, f.Unlisted = aircraft.ByBuildUp, 45, 0.3
+	f.Components = []dragbuild.Component{dragbuild.New(dragbuild.Surface, "Wing"), dragbuild.New(dragbuild.ByDragArea, "Gear")}
+	f.Clean.LiftGiven, f.Clean.StallSpeed, f.Clean.StallMass = aircraft.ByStall, 24, 600
+	return s
 }
 
 func (c *crawler) add(address string) {

@@ -61,6 +61,7 @@ func New(cfg Config) (http.Handler, error) {
 		r.Post("/variants/{variant}/units", s.serve(s.setUnits))
 		r.Post("/variants/{variant}/undo", s.serve(s.step(s.db.Undo, "undone")))
 		r.Post("/variants/{variant}/redo", s.serve(s.step(s.db.Redo, "done again")))
+		r.Get("/variants/{variant}/drag", s.serve(s.analysis("/drag", drag)))
 		r.Get("/variants/{variant}/climb", s.serve(s.analysis("/climb", climb)))
 		r.Get("/variants/{variant}/strip", s.serve(s.analysis("/strip", strip)))
 		r.Get("/variants/{variant}/requirements", s.serve(s.editable("requirements")))

@@ -4,7 +4,9 @@ import (
 	"fmt"
 	"strconv"
 	"strings"
+	"unicode/utf8"
 
+	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/input"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/units"
@@ -26,9 +28,16 @@ type Field struct {
 	Typical string // the range that a reader would expect, with its source
 	Unusual string // the value lies outside the typical range
 	Error   string
+	Says    string   // what a choice of how to give something comes to in the other ways
 	Basis   []Option // nil when the input has no basis
 	Weak    bool     // placeholder
 	Remark  string   // note of the basis
+}
+
+// long reports whether what stands in the entry of a number needs more room than its column has.
+func (f Field) long() bool {
+	const room = 14 // characters
+	return f.Kind == "number" && utf8.RuneCountInString(f.Value)+utf8.RuneCountInString(f.Unit) > room
 }
 
 // An Option is one choice of a select.
@@ -179,12 +188,11 @@ func (f *form) groups() []Group {
 	a := fmt.Sprintf("variants[%d].aircraft", f.variant)
 	v := &f.spec.Variants[f.variant].Aircraft
 	list := []Group{
-		{ID: "airframe", Title: "Airframe", Open: true, Blocks: []Block{
-			{Fields: f.under(a + ".airframe")}}},
+		f.airframe(a + ".airframe"),
 		{ID: "configurations", Title: "Flaps and gear", Blocks: []Block{
-			{Title: "Clean", Fields: f.under(a + ".airframe.clean")},
-			{Title: "Take-off", Fields: f.under(a + ".airframe.take_off")},
-			{Title: "Landing", Fields: f.under(a + ".airframe.landing")}}},
+			{Title: "Clean", Fields: f.lift(a+".airframe.clean", aircraft.Clean)},
+			{Title: "Take-off", Fields: f.lift(a+".airframe.take_off", aircraft.TakeOff)},
+			{Title: "Landing", Fields: f.lift(a+".airframe.landing", aircraft.Landing)}}},
 		f.weights(a, len(v.Weights.Items)),
 	}
 	list = append(list, f.plant(a+".powerplant.values")...)

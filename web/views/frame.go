@@ -21,6 +21,7 @@ type Frame struct {
 // tabs lists the pages of a variant in order; the bench has no path of its own.
 var tabs = []struct{ Path, Label string }{
 	{"", "Bench"},
+	{"/drag", "Drag"},
 	{"/climb", "Climb and envelope"},
 	{"/strip", "Strip"},
 	{"/requirements", "Requirements"},

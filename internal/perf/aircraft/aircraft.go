@@ -45,36 +45,20 @@ func (s *Spec) Build() (*Aircraft, error) {
 	if err := input.Check(s); err != nil {
 		return nil, err
 	}
-	base, err := s.Airframe.polar()
+	base, err := s.Airframe.polar(nil)
 	plant, plantErr := s.Powerplant.Model.Build()
-	if err := errors.Join(input.Within("airframe", err), input.Within("powerplant.values", plantErr)); err != nil {
+	if err := errors.Join(input.Within("airframe", errors.Join(s.Airframe.checkLift(), err)), input.Within("powerplant.values", plantErr)); err != nil {
 		return nil, err
 	}
-	f, w := s.Airframe, s.Weights
+	f, w := &s.Airframe, &s.Weights
 	a := &Aircraft{area: f.WingArea, span: f.Span, height: f.WingHeight, groundCL: f.GroundCL, neverExceed: f.NeverExceed,
 		empty: w.Empty + s.Powerplant.Model.InstalledMass(), payload: w.PayloadMass(), maxTakeOff: w.MaxTakeOff,
 		plant: plant, stores: s.Powerplant.Model.Stores()}
-	for c, cfg := range [configs]Configuration{f.Clean, f.TakeOff, f.Landing} {
+	for c, cfg := range f.configurations() {
 		a.polars[c] = base.Configured(cfg.DeltaCD, cfg.DeltaCLM)
-		a.clMax[c] = cfg.CLMax
+		a.clMax[c] = cfg.lift(f.WingArea, nil)
 	}
 	return a, nil
-}
-
-func (f *Airframe) polar() (polar.Polar, error) {
-	if f.DragGiven != ByTable {
-		aspect := f.Span * f.Span / f.WingArea
-		return polar.Parabolic(f.CDMin, polar.InducedFactor(aspect, f.Efficiency, nil), f.CLMinDrag), nil
-	}
-	cl, cd := make([]float64, len(f.Polar)), make([]float64, len(f.Polar))
-	for i, r := range f.Polar {
-		cl[i], cd[i] = r[0], r[1]
-	}
-	p, err := polar.Tabulated(cl, cd)
-	if err != nil {
-		return p, &input.Error{Path: "polar", Text: err.Error(), Accepts: "rows with rising CL", Err: input.ErrOrder}
-	}
-	return p, f.reach(cl[0], cl[len(cl)-1])
 }
 
 // reach checks that a tabulated polar covers every lift coefficient that is flown.
@@ -87,12 +71,28 @@ func (f *Airframe) reach(low, high float64) error {
 			break
 		}
 	}
-	names := [configs]string{"clean", "take_off", "landing"}
-	for i, c := range [configs]Configuration{f.Clean, f.TakeOff, f.Landing} {
-		if c.CLMax-c.DeltaCLM > high+1e-9 || -c.DeltaCLM < low-1e-9 {
-			errs = append(errs, &input.Error{Path: names[i] + ".cl_max", Spec: &clMax, Text: units.Plain(c.CLMax), Err: input.ErrConflict,
+	for i, c := range f.configurations() {
+		if most := c.lift(f.WingArea, nil); most-c.DeltaCLM > high+1e-9 || -c.DeltaCLM < low-1e-9 {
+			path, spec := c.liftPath()
+			errs = append(errs, &input.Error{Path: configPaths[i] + "." + path, Spec: spec, Text: units.Plain(most), Err: input.ErrConflict,
 				Accepts: fmt.Sprintf("the drag polar runs from CL %s to %s and must reach from 0 to CLmax, less the shift", units.Plain(low), units.Plain(high))})
 		}
+	}
+	return errors.Join(errs...)
+}
+
+// configPaths are the JSON names of the configurations.
+var configPaths = [configs]string{"clean", "take_off", "landing"}
+
+func (f *Airframe) configurations() [configs]*Configuration {
+	return [configs]*Configuration{&f.Clean, &f.TakeOff, &f.Landing}
+}
+
+// checkLift checks what the stall speeds given mean.
+func (f *Airframe) checkLift() error {
+	var errs []error
+	for i, c := range f.configurations() {
+		errs = append(errs, input.Within(configPaths[i], c.checkLift(f.WingArea)))
 	}
 	return errors.Join(errs...)
 }

@@ -21,9 +21,9 @@ func sample() *aircraft.Spec {
 		Airframe: aircraft.Airframe{
 			WingArea: 12, Span: 9.4, WingHeight: 0.9, DragGiven: aircraft.ByParabola, CDMin: 0.034, Efficiency: 0.77, CLMinDrag: 0.1,
 			Polar:    [][]float64{{-0.2, 0.038}, {0.1, 0.034}, {0.5, 0.043}, {1, 0.08}, {1.5, 0.144}, {2.2, 0.27}},
-			Clean:    aircraft.Configuration{CLMax: 1.45},
-			TakeOff:  aircraft.Configuration{CLMax: 1.65, DeltaCD: 0.012, DeltaCLM: 0.1},
-			Landing:  aircraft.Configuration{CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
+			Clean:    aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.45},
+			TakeOff:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.65, DeltaCD: 0.012, DeltaCLM: 0.1},
+			Landing:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
 			GroundCL: 0.45, NeverExceed: 75,
 		},
 		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650},
@@ -87,7 +87,7 @@ func TestBuildErrors(t *testing.T) {
 	}{
 		{func(s *aircraft.Spec) { s.Airframe.WingArea = 0 }, "airframe.wing_area", input.ErrRange, "0.02 to 500 m²; got 0"},
 		{func(s *aircraft.Spec) { s.Airframe.CDMin = math.NaN() }, "airframe.cd_min", input.ErrRange, "0.003 to 0.5"},
-		{func(s *aircraft.Spec) { s.Airframe.DragGiven = "guess" }, "airframe.drag_given", input.ErrChoice, "parabola, table"},
+		{func(s *aircraft.Spec) { s.Airframe.DragGiven = "guess" }, "airframe.drag_given", input.ErrChoice, "parabola, drag-area, best-glide, build-up, table"},
 		{func(s *aircraft.Spec) { s.Airframe.TakeOff.CLMax = 9 }, "airframe.take_off.cl_max", input.ErrRange, "got 9"},
 		{func(s *aircraft.Spec) { s.Weights.Items[1].Mass = -1 }, "weights.items[1].mass", input.ErrRange, "got -1 kg"},
 		{func(s *aircraft.Spec) { s.Weights.Items[0].Name = strings.Repeat("long ", 20) }, "weights.items[0].name", input.ErrRange, "up to 80 characters"},

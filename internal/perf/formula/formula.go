@@ -125,15 +125,16 @@ type function struct {
 }
 
 var funcs = map[string]function{
-	"sqrt": {1, func(a []float64) float64 { return math.Sqrt(a[0]) }},
-	"pow":  {2, func(a []float64) float64 { return math.Pow(a[0], a[1]) }},
-	"exp":  {1, func(a []float64) float64 { return math.Exp(a[0]) }},
-	"sin":  {1, func(a []float64) float64 { return math.Sin(a[0]) }},
-	"cos":  {1, func(a []float64) float64 { return math.Cos(a[0]) }},
-	"tan":  {1, func(a []float64) float64 { return math.Tan(a[0]) }},
-	"asin": {1, func(a []float64) float64 { return math.Asin(a[0]) }},
-	"min":  {0, func(a []float64) float64 { return slices.Min(a) }},
-	"max":  {0, func(a []float64) float64 { return slices.Max(a) }},
+	"sqrt":  {1, func(a []float64) float64 { return math.Sqrt(a[0]) }},
+	"pow":   {2, func(a []float64) float64 { return math.Pow(a[0], a[1]) }},
+	"exp":   {1, func(a []float64) float64 { return math.Exp(a[0]) }},
+	"log10": {1, func(a []float64) float64 { return math.Log10(a[0]) }},
+	"sin":   {1, func(a []float64) float64 { return math.Sin(a[0]) }},
+	"cos":   {1, func(a []float64) float64 { return math.Cos(a[0]) }},
+	"tan":   {1, func(a []float64) float64 { return math.Tan(a[0]) }},
+	"asin":  {1, func(a []float64) float64 { return math.Asin(a[0]) }},
+	"min":   {0, func(a []float64) float64 { return slices.Min(a) }},
+	"max":   {0, func(a []float64) float64 { return slices.Max(a) }},
 }
 
 func (f *Formula) eval(e ast.Expr, env map[string]float64) (float64, error) {

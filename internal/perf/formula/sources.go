@@ -14,6 +14,8 @@ var (
 	Anderson           = Source{"Anderson 1999", "J. D. Anderson, Aircraft Performance and Design, McGraw-Hill, 1999"}
 	AndersonIntro      = Source{"Anderson 2005", "J. D. Anderson, Introduction to Flight, 5th edition, McGraw-Hill, 2005"}
 	Raymer             = Source{"Raymer 1992", "D. P. Raymer, Aircraft Design: A Conceptual Approach, 2nd edition, AIAA, 1992"}
+	Hoerner            = Source{"Hoerner 1965", "S. F. Hoerner, Fluid-Dynamic Drag, published by the author, 1965"}
+	Schlichting        = Source{"Schlichting 1979", "H. Schlichting, Boundary-Layer Theory, 7th edition, McGraw-Hill, 1979"}
 	GaggFerrar         = Source{"Gagg & Ferrar 1934", "R. F. Gagg and E. V. Ferrar, Altitude Performance of Aircraft Engines Equipped with Gear-Driven Superchargers, SAE Transactions 29, 1934, p. 217"}
 	BrooksGarlock      = Source{"NACA TR 426", "D. B. Brooks and E. A. Garlock, The Effect of Humidity on Engine Power at Altitude, NACA TR 426, 1932"}
 	Glauert            = Source{"Glauert 1935", "H. Glauert, Airplane Propellers, in W. F. Durand (ed.), Aerodynamic Theory, vol. IV, division L, Springer, 1935"}

@@ -48,6 +48,7 @@ type Choice struct {
 	Label   string
 	Options []Option
 	Value   *string
+	Ways    bool // the options are ways of giving the same thing, which its owner converts
 }
 
 // An Option is one value that a Choice accepts.
@@ -84,7 +85,14 @@ func Rows(t Table, v *[][]float64) Entry {
 
 // Pick describes a choice held in v.
 func Pick(name, label string, v *string, options ...Option) Entry {
-	return Entry{Choice: &Choice{name, label, options, v}, Path: name}
+	return Entry{Choice: &Choice{Name: name, Label: label, Options: options, Value: v}, Path: name}
+}
+
+// Ways describes a choice held in v of how to give what its owner, a Converter, keeps the same.
+func Ways(name, label string, v *string, options ...Option) Entry {
+	e := Pick(name, label, v, options...)
+	e.Choice.Ways = true
+	return e
 }
 
 // Line describes a line of text held in v.

@@ -28,7 +28,7 @@ var (
 type Error struct {
 	Path    string  // where it stands in the document, "mission.legs[2].altitude"
 	Spec    *Spec   // nil where the input is not a number
-	Value   float64 // in the SI unit of Spec.Quantity; set only for ErrRange of a number
+	Value   float64 // in the SI unit of Spec.Quantity; of a number that is out of range, or in conflict when Text is empty
 	Text    string  // what was given, when it is not a number in range terms
 	Accepts string  // what is accepted, when Spec does not say it
 	Err     error   // one of the sentinels above
@@ -51,9 +51,13 @@ func (e *Error) Sentence(sys units.System) string {
 	u := sys.Unit(e.Spec.Quantity)
 	accepted := lower(e.Spec.Label) + " must be " + e.Spec.Accepted(u)
 	if e.Err == ErrRange {
-		return fmt.Sprintf("%s; got %s", accepted, strings.TrimSpace(units.Plain(round(u.FromSI(e.Value), 6))+" "+u.Symbol))
+		return fmt.Sprintf("%s; got %s", accepted, withUnit(e.Value, u))
 	}
-	text := fmt.Sprintf("“%s” is %v", clip(e.Text), e.Err)
+	given := clip(e.Text)
+	if given == "" && e.Err == ErrConflict {
+		given = withUnit(e.Value, u)
+	}
+	text := fmt.Sprintf("“%s” is %v", given, e.Err)
 	if e.Err == ErrRequired {
 		text = "a value is required"
 	}
@@ -61,6 +65,11 @@ func (e *Error) Sentence(sys units.System) string {
 		return text + "; " + e.Accepts
 	}
 	return text + "; " + accepted
+}
+
+// withUnit writes a number as it is told back to the person who typed it.
+func withUnit(si float64, u units.Unit) string {
+	return strings.TrimSpace(units.Plain(round(u.FromSI(si), 6)) + " " + u.Symbol)
 }
 
 func (e *Error) plain() string {

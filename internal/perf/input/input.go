@@ -87,6 +87,16 @@ func (s *Spec) Usual(u units.Unit) string {
 	return fmt.Sprintf("Typical %s to %s (%s).", short(u.FromSI(t.Low)), number, t.Source)
 }
 
+// Unusually says in words that a number of that name which is not typed but follows,
+// in the SI unit, lies outside the typical range of s, or "" when it does not. It is for quantities without a unit.
+func (s *Spec) Unusually(name string, si float64) string {
+	t := s.Typical
+	if t == nil || (si >= t.Low && si <= t.High) {
+		return ""
+	}
+	return fmt.Sprintf("%s follows as %s; typical %s to %s (%s).", name, short(si), short(t.Low), short(t.High), t.Source)
+}
+
 func short(v float64) string { return units.Plain(round(v, 3)) }
 
 func round(v float64, digits int) float64 {

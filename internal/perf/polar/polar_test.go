@@ -163,6 +163,7 @@ func TestWorking(t *testing.T) {
 			t.Fatalf("%d steps", len(w.Steps))
 		}
 		record.Check(t, w)
+		givenWorking(t, record)
 	})
 	record.Complete(t)
 }

@@ -6,6 +6,7 @@ import (
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/dragbuild"
 	"legwright/internal/perf/mission"
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/runway"
@@ -54,10 +55,10 @@ func typicalAircraft() aircraft.Spec {
 		Airframe: aircraft.Airframe{
 			WingArea: 12, Span: 9.4, WingHeight: 0.9, DragGiven: aircraft.ByParabola, CDMin: 0.034, Efficiency: 0.77, CLMinDrag: 0.1,
 			Polar:    [][]float64{{-0.2, 0.038}, {0.1, 0.034}, {0.5, 0.043}, {1, 0.08}, {1.5, 0.144}, {2.2, 0.27}},
-			Clean:    aircraft.Configuration{CLMax: 1.45},
-			TakeOff:  aircraft.Configuration{CLMax: 1.65, DeltaCD: 0.012, DeltaCLM: 0.1},
-			Landing:  aircraft.Configuration{CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
-			GroundCL: 0.45, NeverExceed: 75,
+			Clean:    aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.45},
+			TakeOff:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.65, DeltaCD: 0.012, DeltaCLM: 0.1},
+			Landing:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
+			GroundCL: 0.45, NeverExceed: 75, Components: []dragbuild.Component{},
 		},
 		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650},
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: kind.New()},

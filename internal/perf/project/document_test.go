@@ -10,6 +10,7 @@ import (
 	"strings"
 	"testing"
 
+	"legwright/internal/perf/dragbuild"
 	"legwright/internal/perf/input"
 	"pgregory.net/rapid"
 )
@@ -32,6 +33,7 @@ func small() *Spec {
 	v.Basis = map[string]Basis{"airframe.span": {Kind: Measured}}
 	v.Aircraft.Weights.Items = v.Aircraft.Weights.Items[:1]
 	v.Aircraft.Airframe.Polar = v.Aircraft.Airframe.Polar[:3]
+	v.Aircraft.Airframe.Components = []dragbuild.Component{dragbuild.New(dragbuild.Surface, "Wing")}
 	p := piston(s)
 	for _, rows := range []*[][]float64{&p.Engine.ConsumptionCurve, &p.Engine.PowerCurve, &p.Propeller.Coefficients} {
 		*rows = append((*rows)[:2:2], (*rows)[len(*rows)-1])

@@ -54,7 +54,9 @@ func TestAdded(t *testing.T) {
 			visit(f, strings.TrimPrefix(path+"."+f.name, "."))
 		}
 		if n.item != nil {
-			visit(n.item, path)
+			for _, f := range n.item.fields {
+				visit(f, strings.TrimPrefix(path+"."+f.name, "."))
+			}
 		}
 		for _, k := range n.kinds {
 			visit(k, path+".values")

@@ -83,6 +83,7 @@ func (s *Spec) Clone() *Spec {
 		v.Basis = maps.Clone(v.Basis)
 		v.Aircraft.Weights.Items = slices.Clone(v.Aircraft.Weights.Items)
 		v.Aircraft.Airframe.Polar = cloneRows(v.Aircraft.Airframe.Polar)
+		v.Aircraft.Airframe.Components = slices.Clone(v.Aircraft.Airframe.Components)
 		v.Aircraft.Powerplant = v.Aircraft.Powerplant.Clone()
 	}
 	return &c

@@ -25,11 +25,12 @@ type size struct{ least, most int }
 
 // sizes are the limits of the document's lists, by path without indices.
 var sizes = map[string]size{
-	"strips":                          {1, 50},
-	"legs":                            {0, 200},
-	"requirements":                    {0, 100},
-	"variants":                        {1, 24},
-	"variants.aircraft.weights.items": {0, 200},
+	"strips":                                {1, 50},
+	"legs":                                  {0, 200},
+	"requirements":                          {0, 100},
+	"variants":                              {1, 24},
+	"variants.aircraft.weights.items":       {0, 200},
+	"variants.aircraft.airframe.components": {0, 100},
 }
 
 // fixed describes the leaves that are no inputs, and those whose unit depends on a choice, by path without indices.

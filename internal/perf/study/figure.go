@@ -26,7 +26,9 @@ func (f *Figure) Has() bool { return f.Reason.Empty() }
 
 // Groups of aircraft inputs that figures rest on, by path prefix.
 var (
-	polarInputs = []string{"airframe.wing_area", "airframe.span", "airframe.drag_given", "airframe.cd_min", "airframe.efficiency", "airframe.cl_min_drag", "airframe.polar"}
+	polarInputs = []string{"airframe.wing_area", "airframe.span", "airframe.drag_given", "airframe.cd_min", "airframe.efficiency", "airframe.cl_min_drag", "airframe.polar",
+		"airframe.drag_area", "airframe.glide_ratio", "airframe.glide_speed", "airframe.glide_mass",
+		"airframe.components", "airframe.leakage", "airframe.unlisted", "airframe.friction_tas", "airframe.friction_alt"}
 	massInputs  = []string{"weights.empty", "weights.items"}
 	plantInputs = []string{"powerplant"}
 	clean       = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.clean", "airframe.never_exceed"})
@@ -54,11 +56,11 @@ func (s *Study) blank(kind project.FigureKind) Figure {
 	stall := slices.Concat([]string{"airframe.wing_area"}, massInputs, s.weighs())
 	switch kind.ID {
 	case "stall_clean":
-		f.Rests = append(stall, "airframe.clean.cl_max")
+		f.Rests = append(stall, "airframe.clean.cl_max", "airframe.clean.stall_speed", "airframe.clean.stall_mass")
 	case "stall_take_off":
-		f.Rests = append(stall, "airframe.take_off.cl_max")
+		f.Rests = append(stall, "airframe.take_off.cl_max", "airframe.take_off.stall_speed", "airframe.take_off.stall_mass")
 	case "stall_landing":
-		f.Rests = append(stall, "airframe.landing.cl_max")
+		f.Rests = append(stall, "airframe.landing.cl_max", "airframe.landing.stall_speed", "airframe.landing.stall_mass")
 	case "wing_loading":
 		f.Rests = stall
 	}

@@ -87,7 +87,7 @@ func (s *Study) asked(kind project.FigureKind, r *project.Requirement) *Figure {
 func inputsOf(a *aircraft.Spec) []input.Entry {
 	var list []input.Entry
 	for _, e := range input.Walk(a) {
-		if !e.Idle && (e.Number != nil || e.Table != nil) {
+		if !e.Idle && !a.Unused(e.Path) && (e.Number != nil || e.Table != nil) {
 			list = append(list, e)
 		}
 	}

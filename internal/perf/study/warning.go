@@ -24,7 +24,7 @@ const (
 type Warning struct {
 	Code  string // stable
 	Level Level
-	About string // what it concerns: weights, strip, mission, powerplant, inputs
+	About string // what it concerns: airframe, weights, strip, mission, powerplant, inputs
 	Text  units.Message
 	Clear string // how to clear it
 }
@@ -49,12 +49,23 @@ func (s *Study) warn(a *aircraft.Aircraft) {
 	s.warnStrip("landing", s.Landing)
 	s.warnMission(a)
 	s.warnPlant()
+	s.warnDrag()
 	if n := len(s.Placeholders()); n > 0 {
 		s.add("placeholders", Caution, "inputs", "Give each its measured, maker's, calculated or estimated value and basis.",
 			units.Say("{} inputs are still placeholders", units.Of(units.Coefficient, float64(n))))
 	}
 	if s.Project.Spec.Day.Humidity == 0 {
 		s.add("dry-air", Info, "inputs", "Give the day's relative humidity.", units.Say("the air is taken as dry; on a humid day engine power is a few per cent lower"))
+	}
+}
+
+// warnDrag names a build-up that leaves out what small aircraft have most of: gear,
+// turrets and the like were near half of the parasite drag of ten unmanned
+// aircraft (CEAS Aeronautical Journal, 2021, doi 10.1007/s13272-021-00522-w; its abstract was read).
+func (s *Study) warnDrag() {
+	if s.Variant().Aircraft.Airframe.SkinOnly() {
+		s.add("skin-only", Caution, "airframe", "Add gear, struts, cooling, aerials, gaps and the like by their drag areas, or a share for leakage and protuberances.",
+			units.Say("the drag build-up counts clean skin alone; what sticks out and leaks made near half of the parasite drag of ten small unmanned aircraft (doi 10.1007/s13272-021-00522-w)"))
 	}
 }
 

@@ -15,6 +15,7 @@ import (
 
 // The parts of the working, by their headings.
 const (
+	partDrag     = "Drag polar and greatest lift"
 	partAir      = "Air"
 	partStall    = "Stall"
 	partRate     = "Best rate of climb"
@@ -60,7 +61,7 @@ func (v *Verdict) WorkingPart() string {
 // Where a part has no answer, the reason stands in its place.
 func (s *Study) Working() *formula.Working {
 	w := &formula.Working{}
-	for _, part := range []func(*formula.Working) error{s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
+	for _, part := range []func(*formula.Working) error{s.dragWorking, s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
 		if err := part(w); err != nil {
 			w.Note("No answer: %s.", units.Explain(err).In(units.Metric))
 		}
@@ -69,6 +70,23 @@ func (s *Study) Working() *formula.Working {
 }
 
 func in(q units.Quantity, si float64) string { return units.Metric.Format(q, si) }
+
+// dragWorking derives the clean polar and the greatest lift from what they are given by.
+func (s *Study) dragWorking(w *formula.Working) error {
+	w.Heading(partDrag)
+	f := &s.Variant().Aircraft.Airframe
+	f.DragWorking(w)
+	for _, c := range []struct {
+		name aircraft.Config
+		of   *aircraft.Configuration
+	}{{aircraft.Clean, &f.Clean}, {aircraft.TakeOff, &f.TakeOff}, {aircraft.Landing, &f.Landing}} {
+		if c.of.LiftGiven == aircraft.ByStall {
+			w.Note("CLmax, %s, from the stall speed given:", c.name)
+			c.of.LiftWorking(f.WingArea, w)
+		}
+	}
+	return nil
+}
 
 // viewWorking derives the speeds of note under the view.
 func (s *Study) viewWorking(w *formula.Working) error {

@@ -15,6 +15,7 @@ const (
 	FieldLength                     // along a strip, m
 	Distance                        // flown, m
 	Area                            // m²
+	DragArea                        // drag per dynamic pressure, m²
 	Volume                          // m³
 	Speed                           // m/s
 	ClimbRate                       // m/s
@@ -123,6 +124,7 @@ var table = [quantities]row{
 	FieldLength:     {"field length", "m", shown{feet, 0}, shown{metre, 0}, shown{metre, 0}, []Unit{kilometre}},
 	Distance:        {"distance", "m", shown{nautMile, 1}, shown{kilometre, 1}, shown{kilometre, 2}, []Unit{metre, statMile, feet}},
 	Area:            {"area", "m²", shown{sqFoot, 1}, shown{sqMetre, 2}, shown{sqMetre, 3}, []Unit{sqDecim}},
+	DragArea:        {"drag area", "m²", shown{sqFoot, 2}, shown{sqMetre, 3}, shown{sqMetre, 4}, []Unit{sqDecim}},
 	Volume:          {"volume", "m³", shown{gallonUS, 1}, shown{litre, 1}, shown{litre, 3}, []Unit{gallonImp, millilitre, {Symbol: "m³", Scale: 1, Aliases: []string{"m3"}}}},
 	Speed:           {"speed", "m/s", shown{knot, 1}, shown{metreSec, 1}, shown{metreSec, 1}, []Unit{kilometreH, milesHour, feetSec}},
 	ClimbRate:       {"rate of climb", "m/s", shown{feetMinute, 0}, shown{metreSec, 2}, shown{metreSec, 2}, []Unit{feetSec, knot, kilometreH}},

@@ -69,7 +69,7 @@ func newBook(r reference.Row) *Book {
 		column string
 		into   *aircraft.Configuration
 	}{{"cl_max", &f.Clean}, {"cl_max_take_off", &f.TakeOff}, {"cl_max_landing", &f.Landing}} {
-		c.into.CLMax = r.Num("cl_max")
+		c.into.LiftGiven, c.into.CLMax = aircraft.ByCLMax, r.Num("cl_max")
 		if r.Has(c.column) {
 			c.into.CLMax = r.Num(c.column)
 		}

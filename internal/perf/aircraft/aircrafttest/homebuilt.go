@@ -16,9 +16,9 @@ func Homebuilt(propeller string) aircraft.Spec {
 	return aircraft.Spec{
 		Airframe: aircraft.Airframe{
 			WingArea: 11.5, Span: 9.2, WingHeight: 0.9, DragGiven: aircraft.ByParabola, CDMin: 0.031, Efficiency: 0.78, CLMinDrag: 0.1,
-			Clean:    aircraft.Configuration{CLMax: 1.45},
-			TakeOff:  aircraft.Configuration{CLMax: 1.65, DeltaCD: 0.012, DeltaCLM: 0.1},
-			Landing:  aircraft.Configuration{CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
+			Clean:    aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.45},
+			TakeOff:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.65, DeltaCD: 0.012, DeltaCLM: 0.1},
+			Landing:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
 			GroundCL: 0.45, NeverExceed: 72,
 		},
 		Weights:    aircraft.Weights{Empty: 270, Items: []aircraft.Item{{Name: "Crew", Mass: 165}}, MaxTakeOff: 650},
