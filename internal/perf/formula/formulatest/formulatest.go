@@ -62,7 +62,7 @@ func (r Record) Complete(t testing.TB) {
 }
 
 // Declared reads every formula.Formula literal of the Go files in and below the
-// folder root: identifier, expression and the names of the symbols, all of it as written.
+// folder root: identifier, expression, and name and meaning of the symbols, all of it as written.
 func Declared(t testing.TB, root string) []formula.Formula {
 	t.Helper()
 	var list []formula.Formula
@@ -84,7 +84,7 @@ func Declared(t testing.TB, root string) []formula.Formula {
 func read(t testing.TB, files []string) []formula.Formula {
 	t.Helper()
 	var trees []*ast.File
-	symbols := map[string]string{}
+	symbols := map[string]formula.Symbol{}
 	for _, name := range files {
 		if strings.HasSuffix(name, "_test.go") {
 			continue
@@ -120,7 +120,7 @@ func read(t testing.TB, files []string) []formula.Formula {
 }
 
 // literal reads one formula.
-func literal(t testing.TB, lit *ast.CompositeLit, symbols map[string]string) formula.Formula {
+func literal(t testing.TB, lit *ast.CompositeLit, symbols map[string]formula.Symbol) formula.Formula {
 	t.Helper()
 	var f formula.Formula
 	for _, e := range lit.Elts {
@@ -138,11 +138,11 @@ func literal(t testing.TB, lit *ast.CompositeLit, symbols map[string]string) for
 		case "Expr":
 			f.Expr = unquoted(kv.Value)
 		case "Out":
-			f.Out.Name = symbol(kv.Value, symbols)
+			f.Out = symbol(kv.Value, symbols)
 		case "In":
 			if in, ok := kv.Value.(*ast.CompositeLit); ok {
 				for _, s := range in.Elts {
-					f.In = append(f.In, formula.Symbol{Name: symbol(s, symbols)})
+					f.In = append(f.In, symbol(s, symbols))
 				}
 			}
 		}
@@ -153,17 +153,17 @@ func literal(t testing.TB, lit *ast.CompositeLit, symbols map[string]string) for
 	return f
 }
 
-// symbol is the name in formula.Sym("V", …), or in the variable that holds it.
-func symbol(e ast.Expr, symbols map[string]string) string {
+// symbol is name and meaning in formula.Sym("V", "speed", …), or in the variable that holds it.
+func symbol(e ast.Expr, symbols map[string]formula.Symbol) formula.Symbol {
 	switch e := e.(type) {
 	case *ast.Ident:
 		return symbols[e.Name]
 	case *ast.CallExpr:
-		if len(e.Args) > 0 {
-			return unquoted(e.Args[0])
+		if len(e.Args) > 1 {
+			return formula.Symbol{Name: unquoted(e.Args[0]), Meaning: unquoted(e.Args[1])}
 		}
 	}
-	return ""
+	return formula.Symbol{}
 }
 
 func unquoted(e ast.Expr) string {
