@@ -7,8 +7,6 @@ import (
 
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/project"
-
-	"github.com/chromedp/chromedp"
 )
 
 // tooWide lists what makes the page scroll sideways and what is cut or runs out of its box.
@@ -85,33 +83,6 @@ func TestLayout(t *testing.T) {
 		p.open(s.url + path)
 		p.shot(name + "-1280-light")
 		p.fitsAt(name)
-	}
-}
-
-// TestPrint: on paper stand the results and not the inputs.
-func TestPrint(t *testing.T) {
-	p, _ := bench(t)
-	p.media("print", "dark")
-	p.size(718, 1000)
-	for _, gone := range []string{".inputs", ".tools", ".sections", "#undo-form button"} {
-		if eval[bool](p, `document.querySelector($1).checkVisibility()`, gone) {
-			t.Errorf("%s is printed", gone)
-		}
-	}
-	for _, there := range []string{"#verdict", "#figures", "#legs, #mission-section", "#strip-section", "#warnings-section"} {
-		if !eval[bool](p, `document.querySelector($1).checkVisibility()`, there) {
-			t.Errorf("%s is not printed", there)
-		}
-	}
-	if got := eval[string](p, `getComputedStyle(document.body).color`); got != "rgb(22, 34, 44)" {
-		t.Errorf("text on paper is %s in the dark theme", got)
-	}
-	if n := eval[int](p, `[...document.querySelectorAll("svg.chart")].filter((s) => s.getBoundingClientRect().width > 0).length`); n != 4 {
-		t.Errorf("%d charts are printed, want 4", n)
-	}
-	b, err := chromedp.Run(p.ctx, chromedp.PrintToPDF())
-	if err != nil || len(b) < 20000 {
-		t.Errorf("printed %d bytes, %v", len(b), err)
 	}
 }
 

@@ -35,7 +35,7 @@ var claims = map[string][]claim{
 	"static pressure":                                {result("air.pressure-troposphere"), said("standard atmosphere at this pressure altitude")},
 	"vapour pressure":                                {result("air.vapour-pressure"), exactly(0, "dry air")},
 	"air density":                                    {result("air.density"), said("of the air of this condition")},
-	"speed of sound":                                 {after("√(1.4 R T)", func(v []float64) float64 { return math.Sqrt(atmos.HeatRatio * atmos.GasConstant * v[0]) }, "air.temperature"), said("of the air of this condition")},
+	"speed of sound":                                 {after("as √(1.4 R T)", func(v []float64) float64 { return math.Sqrt(atmos.HeatRatio * atmos.GasConstant * v[0]) }, "air.temperature"), said("of the air of this condition")},
 	"temperature in degrees Celsius":                 {after("less 273.15 K", func(v []float64) float64 { return v[0] - 273.15 }, "air.temperature")},
 	"density ratio of the dry air":                   {said("dry-air density (p − e)/(R T) over that of standard air at sea level")},
 	"density ratio at the critical altitude": {made("standard air there over that at sea level", func(v []float64) float64 {
