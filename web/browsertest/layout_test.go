@@ -17,7 +17,7 @@ const tooWide = `(() => {
 	const scrolls = (e) => { for (let a = e.parentElement; a; a = a.parentElement) if (/auto|scroll|hidden|clip/.test(getComputedStyle(a).overflowX)) return true; return false; };
 	const hidden = (e) => { const r = e.getBoundingClientRect(); return r.width < 2 || r.height < 2 || !e.checkVisibility({visibilityProperty: true}); };
 	for (const e of document.querySelectorAll("body *")) {
-		if (hidden(e) || e.closest("svg, .skip, .visually-hidden, .first-submit, option")) continue;
+		if (hidden(e) || e.closest("svg, math, .skip, .visually-hidden, .first-submit, option")) continue;
 		const r = e.getBoundingClientRect();
 		if ((r.right > room + 1 || r.left < -1) && !scrolls(e)) bad.push("beyond the page: " + seen(e) + " " + Math.round(r.left) + ".." + Math.round(r.right));
 	}

@@ -107,10 +107,11 @@ func (b *builder) base(s spelling) {
 	b.identifier(s.base)
 }
 
-// below writes a subscript: labels stand upright, digits as numbers.
+// below writes a subscript as one element: labels stand upright, digits as numbers.
 func (b *builder) below(text string) {
-	b.element("mrow", func() {
-		for i, part := range strings.Split(text, ",") {
+	parts := strings.Split(text, ",")
+	write := func() {
+		for i, part := range parts {
 			if i > 0 {
 				b.operator(",")
 			}
@@ -120,5 +121,10 @@ func (b *builder) below(text string) {
 				b.upright(part)
 			}
 		}
-	})
+	}
+	if len(parts) == 1 {
+		write()
+		return
+	}
+	b.element("mrow", write)
 }

@@ -10,26 +10,22 @@ import (
 	"legwright/internal/perf/formula"
 )
 
-// Equation sets "out = expression" as a line of its own.
+// Equation sets "out = expression" as a line of its own, with the linear text
+// twice: for screen readers, and for browsers that do not know MathML.
 func Equation(out string, expr *formula.Node) string {
 	var b builder
 	b.letters(out)
 	b.operator("=")
 	b.expression(expr)
-	return wrap("block", out+" = "+expr.String(), b.String())
+	text := html.EscapeString(out + " = " + expr.String())
+	return `<math display="block" alttext="` + text + `"><semantics><mrow>` + b.String() + `</mrow><annotation encoding="text/plain">` + text + `</annotation></semantics></math>`
 }
 
 // Symbol sets one symbol in the text.
 func Symbol(name string) string {
 	var b builder
 	b.letters(name)
-	return wrap("inline", name, b.String())
-}
-
-// wrap adds the linear text twice: for screen readers, and for browsers that do not know MathML.
-func wrap(display, text, markup string) string {
-	text = html.EscapeString(text)
-	return `<math display="` + display + `" alttext="` + text + `"><semantics><mrow>` + markup + `</mrow><annotation encoding="text/plain">` + text + `</annotation></semantics></math>`
+	return `<math alttext="` + html.EscapeString(name) + `">` + b.String() + `</math>`
 }
 
 type builder struct{ strings.Builder }
@@ -77,12 +73,21 @@ func (b *builder) expression(n *formula.Node) {
 		b.product(n)
 	case formula.Divide:
 		b.element("mfrac", func() {
-			b.element("mrow", func() { b.expression(n.Args[0]) })
-			b.element("mrow", func() { b.expression(n.Args[1]) })
+			b.grouped(n.Args[0])
+			b.grouped(n.Args[1])
 		})
 	case formula.Call:
 		b.call(n)
 	}
+}
+
+// grouped writes n as one element.
+func (b *builder) grouped(n *formula.Node) {
+	if n.Op == formula.Variable || n.Op == formula.Divide {
+		b.expression(n)
+		return
+	}
+	b.element("mrow", func() { b.expression(n) })
 }
 
 // negative reports whether n, written without brackets, begins with a minus sign.
@@ -148,7 +153,7 @@ func (b *builder) call(n *formula.Node) {
 	case "sqrt":
 		b.element("msqrt", func() { b.expression(n.Args[0]) })
 	case "pow":
-		b.power(n.Args[0], func() { b.element("mrow", func() { b.expression(n.Args[1]) }) })
+		b.power(n.Args[0], func() { b.grouped(n.Args[1]) })
 	default:
 		b.identifier(strings.Replace(n.Text, "asin", "arcsin", 1))
 		b.operator(applying)
