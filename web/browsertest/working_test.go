@@ -48,6 +48,7 @@ func TestMathematics(t *testing.T) {
 	s := newSite(t, project.Demo())
 	p := newTab(t)
 	p.open(s.url + "/projects/1/variants/a/working")
+	p.until(`document.fonts.status === "loaded" && document.fonts.check("16px 'Legwright Formula'")`)
 	if got := eval[int](p, `document.querySelectorAll(".step").length`); got < 80 || eval[int](p, `document.querySelectorAll(".step-formula math").length`) != got {
 		t.Errorf("%d steps, and not as many formulas", got)
 	}
@@ -56,6 +57,7 @@ func TestMathematics(t *testing.T) {
 		for (const f of document.querySelectorAll("mfrac")) if (!(box(f.children[0]).bottom <= box(f.children[1]).top + 2)) bad.push("fraction is not stacked in " + f.closest(".step").id);
 		for (const s of document.querySelectorAll("msup")) if (!(box(s.children[1]).bottom < box(s.children[0]).bottom)) bad.push("exponent is not raised in " + s.closest(".step").id);
 		for (const s of document.querySelectorAll("msub")) if (!(box(s.children[1]).bottom > box(s.children[0]).bottom)) bad.push("subscript is not lowered in " + s.closest(".step").id);
+		for (const f of document.querySelectorAll("mo + mfrac")) if (f.previousElementSibling.textContent === "(" && box(f.previousElementSibling).height < 0.9 * box(f).height) bad.push("brackets are lower than the fraction in " + f.closest(".step").id);
 		for (const a of document.querySelectorAll("annotation")) if (a.checkVisibility()) bad.push("the linear text shows beside the mathematics in " + a.closest(".step").id);
 		for (const m of document.querySelectorAll(".step-formula")) if (m.scrollWidth > m.clientWidth) bad.push("formula cut in " + m.closest(".step").id);
 		return [...new Set(bad)].slice(0, 10);
