@@ -40,7 +40,20 @@ func layout(title string) templ.Component {
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
-		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 2, " · Legwright</title><link rel=\"icon\" href=\"/static/icon.svg\" type=\"image/svg+xml\"><link rel=\"stylesheet\" href=\"/static/tokens.css\"><link rel=\"stylesheet\" href=\"/static/page.css\"><link rel=\"stylesheet\" href=\"/static/bench.css\"><link rel=\"stylesheet\" href=\"/static/charts.css\"><link rel=\"stylesheet\" href=\"/static/climb.css\"><link rel=\"stylesheet\" href=\"/static/drag.css\"><link rel=\"stylesheet\" href=\"/static/strip.css\"><link rel=\"stylesheet\" href=\"/static/plant.css\"><link rel=\"stylesheet\" href=\"/static/requirements.css\"><script src=\"/static/enhance.js\" defer></script><script src=\"/static/htmx.min.js\" defer></script><script src=\"/static/charts.js\" defer></script></head><body><a class=\"skip\" href=\"#main\">Skip to the content</a>")
+		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 2, " · Legwright</title><link rel=\"icon\" href=\"/static/icon.svg\" type=\"image/svg+xml\"><link rel=\"stylesheet\" href=\"/static/tokens.css\"><link rel=\"stylesheet\" href=\"/static/page.css\"><link rel=\"stylesheet\" href=\"/static/bench.css\"><link rel=\"stylesheet\" href=\"/static/charts.css\"><link rel=\"stylesheet\" href=\"/static/climb.css\"><link rel=\"stylesheet\" href=\"/static/drag.css\"><link rel=\"stylesheet\" href=\"/static/strip.css\"><link rel=\"stylesheet\" href=\"/static/plant.css\"><link rel=\"stylesheet\" href=\"/static/requirements.css\"><link rel=\"stylesheet\" href=\"/static/working.css\"><link rel=\"stylesheet\" href=\"/static/print.css\" media=\"print\"><script src=\"/static/enhance.js\" defer></script><script src=\"/static/htmx.min.js\" defer></script><script src=\"/static/charts.js\" defer></script><script src=\"/static/copy.js\" defer></script></head><body><a class=\"skip\" href=\"#main\">Skip to the content</a><p class=\"paper-title\">")
+		if templ_7745c5c3_Err != nil {
+			return templ_7745c5c3_Err
+		}
+		var templ_7745c5c3_Var3 string
+		templ_7745c5c3_Var3, templ_7745c5c3_Err = templ.JoinStringErrs(title)
+		if templ_7745c5c3_Err != nil {
+			return templ.Error{Err: templ_7745c5c3_Err, FileName: `layout.templ`, Line: 30, Col: 33}
+		}
+		_, templ_7745c5c3_Err = templ_7745c5c3_Buffer.WriteString(templ.EscapeString(templ_7745c5c3_Var3))
+		if templ_7745c5c3_Err != nil {
+			return templ_7745c5c3_Err
+		}
+		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 3, " · Legwright</p>")
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
@@ -48,7 +61,7 @@ func layout(title string) templ.Component {
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
-		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 3, "</body></html>")
+		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 4, "</body></html>")
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
@@ -73,7 +86,7 @@ func cautionFoot() templ.Component {
 		}
 		ctx = templ.InitializeContext(ctx)
 		ctx = templ.ClearChildren(ctx)
-		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 4, "<footer class=\"page-foot\"><p class=\"caution-note\">Design estimates, not flight data. They hold for a new engine and propeller, practised technique and the stated surface. Allow a margin, confirm by flight test, and follow the makers' limits, the rules of your authority and the judgement of a licensed person.</p></footer>")
+		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 5, "<footer class=\"page-foot\"><p class=\"caution-note\">Design estimates, not flight data. They hold for a new engine and propeller, practised technique and the stated surface. Allow a margin, confirm by flight test, and follow the makers' limits, the rules of your authority and the judgement of a licensed person.</p></footer>")
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}

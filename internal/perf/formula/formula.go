@@ -4,12 +4,8 @@ package formula
 
 import (
 	"fmt"
-	"go/ast"
-	"go/parser"
-	"go/token"
 	"math"
 	"slices"
-	"strconv"
 
 	"legwright/internal/perf/units"
 )
@@ -32,7 +28,7 @@ type Formula struct {
 	Expr   string // right-hand side, Go expression syntax over the names in In, pi, and the functions in funcs
 	Source Source
 	Where  string // equation, table or page in Source
-	tree   ast.Expr
+	tree   *Node
 }
 
 // Must parses f.Expr. It panics if f has no source, does not parse, or names an unknown symbol or function.
@@ -40,18 +36,16 @@ func Must(f Formula) *Formula {
 	if f.Source.Key == "" {
 		panic(fmt.Sprintf("formula %s: no source", f.ID))
 	}
-	tree, err := parser.ParseExpr(f.Expr)
+	tree, err := Parse(f.Expr)
 	if err != nil {
 		panic(fmt.Sprintf("formula %s: %v", f.ID, err))
 	}
+	for name := range tree.symbols() {
+		if name != "pi" && !slices.ContainsFunc(f.In, func(s Symbol) bool { return s.Name == name }) {
+			panic(fmt.Sprintf("formula %s: unknown symbol %s", f.ID, name))
+		}
+	}
 	f.tree = tree
-	trial := make([]float64, len(f.In))
-	for i := range trial {
-		trial[i] = 1
-	}
-	if _, err := f.Eval(trial...); err != nil {
-		panic(err)
-	}
 	return &f
 }
 
@@ -115,96 +109,8 @@ func (f *Formula) Eval(in ...float64) (float64, error) {
 	for i, s := range f.In {
 		env[s.Name] = in[i]
 	}
-	return f.eval(f.tree, env)
+	return f.tree.eval(env), nil
 }
 
-// A function of the expression language; arity 0 takes one value or more.
-type function struct {
-	arity int
-	of    func(a []float64) float64
-}
-
-var funcs = map[string]function{
-	"sqrt":  {1, func(a []float64) float64 { return math.Sqrt(a[0]) }},
-	"pow":   {2, func(a []float64) float64 { return math.Pow(a[0], a[1]) }},
-	"exp":   {1, func(a []float64) float64 { return math.Exp(a[0]) }},
-	"log10": {1, func(a []float64) float64 { return math.Log10(a[0]) }},
-	"sin":   {1, func(a []float64) float64 { return math.Sin(a[0]) }},
-	"cos":   {1, func(a []float64) float64 { return math.Cos(a[0]) }},
-	"tan":   {1, func(a []float64) float64 { return math.Tan(a[0]) }},
-	"asin":  {1, func(a []float64) float64 { return math.Asin(a[0]) }},
-	"min":   {0, func(a []float64) float64 { return slices.Min(a) }},
-	"max":   {0, func(a []float64) float64 { return slices.Max(a) }},
-}
-
-func (f *Formula) eval(e ast.Expr, env map[string]float64) (float64, error) {
-	switch e := e.(type) {
-	case *ast.BasicLit:
-		v, err := strconv.ParseFloat(e.Value, 64)
-		if err != nil {
-			return 0, fmt.Errorf("formula %s: %w", f.ID, err)
-		}
-		return v, nil
-	case *ast.Ident:
-		v, ok := env[e.Name]
-		if !ok {
-			return 0, fmt.Errorf("formula %s: unknown symbol %s", f.ID, e.Name)
-		}
-		return v, nil
-	case *ast.ParenExpr:
-		return f.eval(e.X, env)
-	case *ast.UnaryExpr:
-		if e.Op != token.SUB {
-			return 0, fmt.Errorf("formula %s: unsupported operator %s", f.ID, e.Op)
-		}
-		x, err := f.eval(e.X, env)
-		return -x, err
-	case *ast.BinaryExpr:
-		return f.binary(e, env)
-	case *ast.CallExpr:
-		return f.call(e, env)
-	}
-	return 0, fmt.Errorf("formula %s: unsupported expression", f.ID)
-}
-
-func (f *Formula) binary(e *ast.BinaryExpr, env map[string]float64) (float64, error) {
-	x, err := f.eval(e.X, env)
-	if err != nil {
-		return 0, err
-	}
-	y, err := f.eval(e.Y, env)
-	if err != nil {
-		return 0, err
-	}
-	switch e.Op {
-	case token.ADD:
-		return x + y, nil
-	case token.SUB:
-		return x - y, nil
-	case token.MUL:
-		return x * y, nil
-	case token.QUO:
-		return x / y, nil
-	}
-	return 0, fmt.Errorf("formula %s: unsupported operator %s", f.ID, e.Op)
-}
-
-func (f *Formula) call(e *ast.CallExpr, env map[string]float64) (float64, error) {
-	name, _ := e.Fun.(*ast.Ident)
-	if name == nil || funcs[name.Name].of == nil {
-		return 0, fmt.Errorf("formula %s: unknown function", f.ID)
-	}
-	fn := funcs[name.Name]
-	if n := len(e.Args); n == 0 || (fn.arity != 0 && n != fn.arity) {
-		return 0, fmt.Errorf("formula %s: %s takes %d values, not %d", f.ID, name.Name, max(1, fn.arity), n)
-	}
-	args := make([]float64, len(e.Args))
-	for i, a := range e.Args {
-		v, err := f.eval(a, env)
-		if err != nil {
-			return 0, err
-		}
-		args[i] = v
-	}
-	return fn.of(args), nil
-}
+// Tree is the expression that Eval evaluates. It must not be changed.
+func (f *Formula) Tree() *Node { return f.tree }

@@ -16,17 +16,17 @@ import (
 func (s *Study) loadingWorking(w *formula.Working) error {
 	w.Heading(partLoading)
 	mass, area := s.Masses.Start, s.Aircraft().WingArea()
-	w.Note("Wing loading: %s over %s is %s.", in(units.Mass, mass), in(units.Area, area), in(units.WingLoading, mass/area))
+	w.Note("Wing loading: %s over %s is %s.", s.in(units.Mass, mass), s.in(units.Area, area), s.in(units.WingLoading, mass/area))
 	if s.staticErr != nil {
 		return s.staticErr
 	}
 	weight := (&pointperf.Point{Mass: mass}).Weight()
-	w.Note("Static thrust over weight: %s over %s is %s; both on the departure strip at start mass.", in(units.Force, s.Static.Thrust), in(units.Force, weight), in(units.Fraction, s.Static.Thrust/weight))
+	w.Note("Static thrust over weight: %s over %s is %s; both on the departure strip at start mass.", s.in(units.Force, s.Static.Thrust), s.in(units.Force, weight), s.in(units.Fraction, s.Static.Thrust/weight))
 	if err := s.shaftErr(); err != nil {
 		return err
 	}
 	w.Note("Mass per shaft power: %s over %s is %s. The power is what the propeller absorbs at rest, which for a fixed pitch is less than the rating.",
-		in(units.Mass, mass), in(units.Power, s.Static.Shaft.Power), in(units.PowerLoading, mass/s.Static.Shaft.Power))
+		s.in(units.Mass, mass), s.in(units.Power, s.Static.Shaft.Power), s.in(units.PowerLoading, mass/s.Static.Shaft.Power))
 	return nil
 }
 
@@ -46,7 +46,7 @@ func (s *Study) askedWorking(w *formula.Working) error {
 		}
 		r := &v.Requirement
 		w.Heading(v.WorkingPart())
-		w.Note("Condition: %s.", v.Figure.Where.In(units.Metric))
+		w.Note("Condition: %s.", v.Figure.Where.In(s.Project.Spec.System()))
 		c, err := s.under(v.Figure.FigureKind, r)
 		if air, wrong := c.day.At(c.point.Air.PressureAltitude, nil); wrong == nil && air == c.point.Air {
 			c.day.At(air.PressureAltitude, w)
@@ -55,11 +55,11 @@ func (s *Study) askedWorking(w *formula.Working) error {
 			err = s.derive(v.Figure.ID, r, &c, w)
 		}
 		if err != nil {
-			w.Note("No answer: %s.", units.Explain(err).In(units.Metric))
+			w.Note("No answer: %s.", units.Explain(err).In(s.Project.Spec.System()))
 			continue
 		}
 		if v.Figure.Has() {
-			w.Note("%s is %s.", v.Figure.Label, in(v.Figure.Quantity, v.Figure.Value))
+			w.Note("%s is %s.", v.Figure.Label, s.in(v.Figure.Quantity, v.Figure.Value))
 		}
 	}
 	return nil
@@ -73,7 +73,7 @@ func (s *Study) derive(id string, r *project.Requirement, c *circumstance, w *fo
 			return err
 		}
 		climb, err := pointperf.FullClimb(a, p, tas, w)
-		w.Note("At %s; the gradient is the tangent of the angle, %s.", in(units.Speed, tas), in(units.Fraction, climb.Gradient()))
+		w.Note("At %s; the gradient is the tangent of the angle, %s.", s.in(units.Speed, tas), s.in(units.Fraction, climb.Gradient()))
 		return err
 	}
 	switch id {
@@ -81,13 +81,13 @@ func (s *Study) derive(id string, r *project.Requirement, c *circumstance, w *fo
 		run, err := runway.TakeOff(a, p.Mass, c.place, how)
 		run.Factor(how.TakeOffFactor)
 		pointperf.Stall(a, p, w)
-		segments(w, &run, how.TakeOffFactor)
+		s.segments(w, &run, how.TakeOffFactor)
 		return err
 	case "landing_distance", "landing_roll":
 		run, err := runway.Landing(a, p.Mass, c.place, how)
 		run.Factor(how.LandingFactor)
 		pointperf.Stall(a, p, w)
-		segments(w, &run, how.LandingFactor)
+		s.segments(w, &run, how.LandingFactor)
 		return err
 	case "climb_rate":
 		best := pointperf.BestRate(a, p)
@@ -102,16 +102,16 @@ func (s *Study) derive(id string, r *project.Requirement, c *circumstance, w *fo
 	case "time_to_climb":
 		w.Note("Integrated over altitude at best rate and full power, clean, the mass falling with the fuel burnt.")
 	case "service_ceiling", "absolute_ceiling":
-		w.Note("The pressure altitude at which the best rate of climb has fallen to the rate that defines it, %s or none; found by a bracketed root.", in(units.ClimbRate, pointperf.ServiceRate))
+		w.Note("The pressure altitude at which the best rate of climb has fallen to the rate that defines it, %s or none; found by a bracketed root.", s.in(units.ClimbRate, pointperf.ServiceRate))
 	case "stall_clean", "stall_take_off", "stall_landing":
 		tas := pointperf.Stall(a, p, w)
-		w.Note("True %s, calibrated %s.", in(units.Speed, tas), in(units.Speed, float64(p.Air.CAS(tas))))
+		w.Note("True %s, calibrated %s.", s.in(units.Speed, tas), s.in(units.Speed, float64(p.Air.CAS(tas))))
 	case "level_max":
 		best := pointperf.LevelMax(a, p)
 		return s.deriveLevel(p, best.TAS*(1-1e-9), best.Err, w)
 	case "cruise_speed":
 		l, err := pointperf.AtFraction(a, p, r.Power)
-		w.Note("The fastest level speed at which the powerplant makes %s of its rating; found by a bracketed root.", in(units.Fraction, r.Power))
+		w.Note("The fastest level speed at which the powerplant makes %s of its rating; found by a bracketed root.", s.in(units.Fraction, r.Power))
 		return s.deriveLevel(p, l.TAS, err, w)
 	case "range", "endurance":
 		return s.deriveReach(id == "endurance", r, p, w)
@@ -129,13 +129,13 @@ func (s *Study) derive(id string, r *project.Requirement, c *circumstance, w *fo
 	case "turn_load":
 		return s.deriveTurn(r, p, w)
 	case "wing_loading":
-		w.Note("%s over %s.", in(units.Mass, p.Mass), in(units.Area, a.WingArea()))
+		w.Note("%s over %s.", s.in(units.Mass, p.Mass), s.in(units.Area, a.WingArea()))
 	default:
 		out, err := a.Plant().Run(powerplant.Condition{Air: p.Air}, 1, w)
 		if err != nil {
 			return err
 		}
-		w.Note("At rest: thrust %s, shaft power %s; weight %s.", in(units.Force, out.Thrust), in(units.Power, out.Shaft.Power), in(units.Force, p.Weight()))
+		w.Note("At rest: thrust %s, shaft power %s; weight %s.", s.in(units.Force, out.Thrust), s.in(units.Power, out.Shaft.Power), s.in(units.Force, p.Weight()))
 	}
 	return nil
 }
@@ -145,7 +145,7 @@ func (s *Study) deriveLevel(p *pointperf.Point, tas float64, err error, w *formu
 	if err != nil {
 		return err
 	}
-	w.Note("Level at %s true, %s calibrated.", in(units.Speed, tas), in(units.Speed, float64(p.Air.CAS(tas))))
+	w.Note("Level at %s true, %s calibrated.", s.in(units.Speed, tas), s.in(units.Speed, float64(p.Air.CAS(tas))))
 	required := pointperf.ThrustRequired(s.Aircraft(), p, tas, w)
 	_, _, err = s.Aircraft().Plant().Match(p.Condition(tas), required, w)
 	return err
@@ -157,12 +157,12 @@ func (s *Study) deriveReach(lasting bool, r *project.Requirement, p *pointperf.P
 		return err
 	}
 	w.Note("Level in still air at the best speed for each mass, from %s at the start to %s at the end; start, climb and descent are not in it. It uses %s of fuel and %s of charge.",
-		in(units.Speed, reach.First), in(units.Speed, reach.Last), in(units.Mass, reach.Used), in(units.Energy, reach.Drawn))
+		s.in(units.Speed, reach.First), s.in(units.Speed, reach.Last), s.in(units.Mass, reach.Used), s.in(units.Energy, reach.Drawn))
 	w.Note("Time is the integral of dm over the fuel flow, distance that of V dm over the fuel flow. At its start:")
 	if err := s.deriveLevel(p, reach.First, nil, w); err != nil {
 		return err
 	}
-	w.Note("Together %s and %s.", in(units.Distance, reach.Distance), in(units.Duration, reach.Time))
+	w.Note("Together %s and %s.", s.in(units.Distance, reach.Distance), s.in(units.Duration, reach.Time))
 	return nil
 }
 
@@ -189,6 +189,6 @@ func (s *Study) deriveTurn(r *project.Requirement, p *pointperf.Point, w *formul
 	if math.Abs(n-most) < 1e-9*most {
 		end = "maximum lift"
 	}
-	w.Note("At %s the load factor rises until %s ends it: thrust available %s, drag %s.", in(units.Speed, tas), end, in(units.Force, out.Thrust), in(units.Force, drag))
+	w.Note("At %s the load factor rises until %s ends it: thrust available %s, drag %s.", s.in(units.Speed, tas), end, s.in(units.Force, out.Thrust), s.in(units.Force, drag))
 	return nil
 }

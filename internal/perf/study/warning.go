@@ -3,6 +3,7 @@ package study
 import (
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/formula"
 	"legwright/internal/perf/mission"
 	"legwright/internal/perf/pointperf"
 	"legwright/internal/perf/powerplant"
@@ -137,7 +138,7 @@ func (s *Study) warnStall(a *aircraft.Aircraft) {
 		if t.Leg == seen || kind == mission.Taxi || kind == mission.TakeOff || kind == mission.Landing {
 			continue
 		}
-		air, err := s.airOf(t)
+		air, err := s.airOf(t, nil)
 		if err != nil {
 			continue
 		}
@@ -153,12 +154,12 @@ func (s *Study) warnStall(a *aircraft.Aircraft) {
 func roundTo(v, per float64) float64 { return float64(int64(v*per+0.5)) / per }
 
 // airOf is the air around a sample of the mission.
-func (s *Study) airOf(t *mission.Sample) (atmos.Air, error) {
+func (s *Study) airOf(t *mission.Sample, w *formula.Working) (atmos.Air, error) {
 	day := s.Project.Plan.Day
 	if l := s.Project.Spec.Legs[t.Leg]; l.DayGiven == mission.OwnDay {
 		day.Deviation = l.Deviation
 	}
-	return day.At(t.Altitude, nil)
+	return day.At(t.Altitude, w)
 }
 
 func (s *Study) warnPlant() {

@@ -2,6 +2,7 @@ package study
 
 import (
 	"fmt"
+	"strings"
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
@@ -28,6 +29,7 @@ const (
 	partMission  = "Mission, leg by leg"
 	partLoading  = "Loading"
 	partAsked    = "Requirements under conditions of their own"
+	requirement  = "Requirement " // begins the heading of the part of one of them
 )
 
 // parts says in which part of the working each figure is derived.
@@ -44,13 +46,22 @@ var parts = map[string]string{
 	"glide_ratio": partAsked, "turn_load": partAsked,
 }
 
+// IsPart reports whether a heading of the working begins one of its parts; other headings stand within a part.
+func IsPart(heading string) bool {
+	switch heading {
+	case partAir, partStall, partRate, partMaximum, partRest, partTakeOff, partLanding, partCeiling, partTightest, partMission, partLoading, partAsked:
+		return true
+	}
+	return strings.HasPrefix(heading, requirement)
+}
+
 // WorkingPart is the heading of the part of the working that derives a figure, empty for an unknown one.
 func WorkingPart(figure string) string { return parts[figure] }
 
 // WorkingPart is the heading of the part of the working that derives the figure of the verdict.
 func (v *Verdict) WorkingPart() string {
 	if v.ownTerms() {
-		return fmt.Sprintf("Requirement %d: %s", v.Number, v.Figure.Label)
+		return fmt.Sprintf("%s%d: %s", requirement, v.Number, v.Figure.Label)
 	}
 	return WorkingPart(v.Requirement.Figure)
 }
@@ -63,13 +74,14 @@ func (s *Study) Working() *formula.Working {
 	w := &formula.Working{}
 	for _, part := range []func(*formula.Working) error{s.dragWorking, s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
 		if err := part(w); err != nil {
-			w.Note("No answer: %s.", units.Explain(err).In(units.Metric))
+			w.Note("No answer: %s.", units.Explain(err).In(s.Project.Spec.System()))
 		}
 	}
 	return w
 }
 
-func in(q units.Quantity, si float64) string { return units.Metric.Format(q, si) }
+// in writes a number of a remark as the project shows it; formulas stand in SI.
+func (s *Study) in(q units.Quantity, si float64) string { return s.Project.Spec.System().Format(q, si) }
 
 // dragWorking derives the clean polar and the greatest lift from what they are given by.
 func (s *Study) dragWorking(w *formula.Working) error {
@@ -104,7 +116,7 @@ func (s *Study) viewWorking(w *formula.Working) error {
 	if b.Err != nil {
 		return b.Err
 	}
-	w.Note("The speed %s is the one that makes the rate of climb greatest; it is found by a bracketed search.", in(units.Speed, b.TAS))
+	w.Note("The speed %s is the one that makes the rate of climb greatest; it is found by a bracketed search.", s.in(units.Speed, b.TAS))
 	if _, err := pointperf.FullClimb(a, p, b.TAS, w); err != nil {
 		return err
 	}
@@ -112,8 +124,14 @@ func (s *Study) viewWorking(w *formula.Working) error {
 	if b = s.Speeds.LevelMax; b.Err != nil {
 		return b.Err
 	}
-	w.Note("The speed %s is the fastest at which thrust available is not below thrust required; it is found by a bracketed root.", in(units.Speed, b.TAS))
+	w.Note("The speed %s is the fastest at which thrust available is not below thrust required; it is found by a bracketed root.", s.in(units.Speed, b.TAS))
 	_, err = pointperf.At(a, p, b.TAS*(1-1e-9), w)
+	return err
+}
+
+// air derives the air of the project's day at the pressure altitude of air.
+func (s *Study) air(air atmos.Air, w *formula.Working) error {
+	_, err := s.Project.Plan.Day.At(air.PressureAltitude, w)
 	return err
 }
 
@@ -121,17 +139,20 @@ func (s *Study) viewWorking(w *formula.Working) error {
 func (s *Study) restWorking(w *formula.Working) error {
 	w.Heading(partRest)
 	air := s.Project.Departure.Air
-	w.Note("On the strip at a pressure altitude of %s, full setting.", in(units.Altitude, air.PressureAltitude))
+	w.Note("On the strip at a pressure altitude of %s, full setting.", s.in(units.Altitude, air.PressureAltitude))
+	if err := s.air(air, w); err != nil {
+		return err
+	}
 	_, err := s.Aircraft().Plant().Run(powerplant.Condition{Air: air}, 1, w)
 	return err
 }
 
 // segments notes what the integration gave.
-func segments(w *formula.Working, r *runway.Run, factor float64) {
+func (s *Study) segments(w *formula.Working, r *runway.Run, factor float64) {
 	for _, seg := range r.Segments {
-		w.Note("%s: %s in %s.", capital(seg.Name), in(units.FieldLength, seg.Distance), in(units.ShortTime, seg.Time))
+		w.Note("%s: %s in %s.", capital(seg.Name), s.in(units.FieldLength, seg.Distance), s.in(units.ShortTime, seg.Time))
 	}
-	w.Note("Together %s; with the safety factor of %s it is %s.", in(units.FieldLength, r.Total), units.Plain(factor), in(units.FieldLength, r.Factored))
+	w.Note("Together %s; with the safety factor of %s it is %s.", s.in(units.FieldLength, r.Total), units.Plain(factor), s.in(units.FieldLength, r.Factored))
 }
 
 func capital(s string) string { return string(s[0]-'a'+'A') + s[1:] }
@@ -141,12 +162,15 @@ func (s *Study) takeOffWorking(w *formula.Working) error {
 	w.Heading(partTakeOff)
 	a, t, how := s.Aircraft(), &s.TakeOff, s.Project.Plan.Technique
 	p := &pointperf.Point{Air: t.Place.Air, Mass: t.Mass, Config: aircraft.TakeOff}
-	w.Note("The stall of the figures is that at the departure strip and start mass, %s; the take-off itself begins with what the taxi leaves.", in(units.Mass, a.StartMass()))
+	w.Note("The stall of the figures is that at the departure strip and start mass, %s; the take-off itself begins with what the taxi leaves.", s.in(units.Mass, a.StartMass()))
+	if err := s.air(t.Place.Air, w); err != nil {
+		return err
+	}
 	pointperf.Stall(a, &pointperf.Point{Air: s.Project.Departure.Air, Mass: a.StartMass(), Config: aircraft.TakeOff}, w)
-	w.Note("%s, %s.", t.Place.Strip.Name, in(units.Mass, t.Mass))
+	w.Note("%s, %s.", t.Place.Strip.Name, s.in(units.Mass, t.Mass))
 	stall := pointperf.Stall(a, p, w)
 	v := how.LiftOffFactor * stall
-	w.Note("Lift-off at %s times the stall, %s; over the obstacle at %s times, %s.", units.Plain(how.LiftOffFactor), in(units.Speed, v), units.Plain(how.ClimbOutFactor), in(units.Speed, how.ClimbOutFactor*stall))
+	w.Note("Lift-off at %s times the stall, %s; over the obstacle at %s times, %s.", units.Plain(how.LiftOffFactor), s.in(units.Speed, v), units.Plain(how.ClimbOutFactor), s.in(units.Speed, how.ClimbOutFactor*stall))
 	phi := polar.GroundEffect(a.WingHeight(), a.Span(), w)
 	lift := 0.5 * p.Air.Density * v * v * a.WingArea() * a.GroundCL()
 	pointperf.Drag(a, p, v, lift, phi, w)
@@ -154,11 +178,11 @@ func (s *Study) takeOffWorking(w *formula.Working) error {
 		return err
 	}
 	w.Note("The roll integrates m dV/dt = T − D − μ (W cos φ − L) − W sin φ from rest, with μ %s on %s, a slope of %s and %s of head wind; these are the forces at its end.",
-		units.Plain(t.Place.Surface.Rolling), t.Place.Surface.Label, in(units.Fraction, t.Place.Strip.Slope), in(units.Speed, t.Place.HeadWind))
+		units.Plain(t.Place.Surface.Rolling), t.Place.Surface.Label, s.in(units.Fraction, t.Place.Strip.Slope), s.in(units.Speed, t.Place.HeadWind))
 	if t.Err != nil {
 		return t.Err
 	}
-	segments(w, &t.Run, how.TakeOffFactor)
+	s.segments(w, &t.Run, how.TakeOffFactor)
 	_, err := pointperf.FullClimb(a, p, t.Run.Screen, w)
 	return err
 }
@@ -168,16 +192,22 @@ func (s *Study) landingWorking(w *formula.Working) error {
 	w.Heading(partLanding)
 	a, how := s.Aircraft(), s.Project.Plan.Technique
 	start := &pointperf.Point{Air: s.Project.Departure.Air, Mass: a.StartMass(), Config: aircraft.Landing}
-	w.Note("The stall of the figures is that at the departure strip and start mass, %s; the landing itself is flown with what the mission leaves.", in(units.Mass, start.Mass))
+	w.Note("The stall of the figures is that at the departure strip and start mass, %s; the landing itself is flown with what the mission leaves.", s.in(units.Mass, start.Mass))
+	if err := s.air(start.Air, w); err != nil {
+		return err
+	}
 	pointperf.Stall(a, start, w)
 	l := &s.Landing
-	w.Note("%s, %s.", l.Place.Strip.Name, in(units.Mass, l.Mass))
+	w.Note("%s, %s.", l.Place.Strip.Name, s.in(units.Mass, l.Mass))
+	if err := s.air(l.Place.Air, w); err != nil {
+		return err
+	}
 	stall := pointperf.Stall(a, &pointperf.Point{Air: l.Place.Air, Mass: l.Mass, Config: aircraft.Landing}, w)
-	w.Note("Approach at %s times the stall, %s, on a path of %s; touchdown at %s.", units.Plain(how.ApproachFactor), in(units.Speed, how.ApproachFactor*stall), in(units.Angle, how.ApproachAngle), in(units.Speed, l.Run.Speed))
+	w.Note("Approach at %s times the stall, %s, on a path of %s; touchdown at %s.", units.Plain(how.ApproachFactor), s.in(units.Speed, how.ApproachFactor*stall), s.in(units.Angle, how.ApproachAngle), s.in(units.Speed, l.Run.Speed))
 	if l.Err != nil {
 		return l.Err
 	}
-	segments(w, &l.Run, how.LandingFactor)
+	s.segments(w, &l.Run, how.LandingFactor)
 	return nil
 }
 
@@ -189,7 +219,7 @@ func (s *Study) ceilingWorking(w *formula.Working) error {
 	}
 	a := s.Aircraft()
 	w.Note("The service ceiling %s is the pressure altitude at which the best rate of climb has fallen to %s, at start mass on the project's day; it is found by a bracketed root.",
-		in(units.Altitude, s.Service.Value), in(units.ClimbRate, pointperf.ServiceRate))
+		s.in(units.Altitude, s.Service.Value), s.in(units.ClimbRate, pointperf.ServiceRate))
 	air, err := s.Project.Plan.Day.At(s.Service.Value, w)
 	if err != nil {
 		return err
@@ -205,7 +235,7 @@ func (s *Study) ceilingWorking(w *formula.Working) error {
 	if s.Absolute.Err != nil {
 		return s.Absolute.Err
 	}
-	w.Note("At the absolute ceiling, %s, no rate of climb is left.", in(units.Altitude, s.Absolute.Value))
+	w.Note("At the absolute ceiling, %s, no rate of climb is left.", s.in(units.Altitude, s.Absolute.Value))
 	return nil
 }
 
@@ -216,11 +246,11 @@ func (s *Study) tightestWorking(w *formula.Working) error {
 	if t == nil {
 		return units.Errorf(nil, "no leg was flown")
 	}
-	air, err := s.airOf(t)
+	w.Note("In “%s”: pressure altitude %s, mass %s, true airspeed %s.", s.legName(t.Leg), s.in(units.Altitude, t.Altitude), s.in(units.Mass, t.Mass), s.in(units.Speed, t.TAS))
+	air, err := s.airOf(t, w)
 	if err != nil {
 		return err
 	}
-	w.Note("In “%s”: pressure altitude %s, mass %s, true airspeed %s.", s.legName(t.Leg), in(units.Altitude, t.Altitude), in(units.Mass, t.Mass), in(units.Speed, t.TAS))
 	_, err = pointperf.At(s.Aircraft(), &pointperf.Point{Air: air, Mass: t.Mass}, t.TAS, w)
 	return err
 }
@@ -231,15 +261,15 @@ func (s *Study) missionWorking(w *formula.Working) error {
 	f := &s.Flight
 	for i := range f.Legs {
 		l := &f.Legs[i]
-		w.Note("%s: %s, %s over the ground, %s of fuel; %s at its end.", s.legName(i), in(units.Duration, l.Time), in(units.Distance, l.Distance), in(units.Mass, l.Fuel), in(units.Mass, l.End.Mass))
+		w.Note("%s: %s, %s over the ground, %s of fuel; %s at its end.", s.legName(i), s.in(units.Duration, l.Time), s.in(units.Distance, l.Distance), s.in(units.Mass, l.Fuel), s.in(units.Mass, l.End.Mass))
 	}
 	w.Note("Together, without reserve: %s, %s, %s of fuel. Distance, altitude and energy of each leg are integrated in time, the mass falling with the fuel.",
-		in(units.Duration, f.Time), in(units.Distance, f.Distance), in(units.Mass, f.Fuel))
+		s.in(units.Duration, f.Time), s.in(units.Distance, f.Distance), s.in(units.Mass, f.Fuel))
 	if left := s.Figure("energy_left"); left.Has() {
-		w.Note("Of the fuel or charge aboard at the start that leaves %s, before any reserve.", in(units.Fraction, left.Value))
+		w.Note("Of the fuel or charge aboard at the start that leaves %s, before any reserve.", s.in(units.Fraction, left.Value))
 	}
 	if g := s.Figure("ground_speed"); g.Has() {
-		w.Note("The greatest ground speed is the true airspeed along the ground less the head wind of the leg, %s %s; where a leg circles, its wind is met from behind.", in(units.Speed, g.Value), g.Where.In(units.Metric))
+		w.Note("The greatest ground speed is the true airspeed along the ground less the head wind of the leg, %s %s; where a leg circles, its wind is met from behind.", s.in(units.Speed, g.Value), g.Where.In(s.Project.Spec.System()))
 	}
 	if f.Failure != nil {
 		return f.Failure.Err

@@ -7,7 +7,8 @@ import (
 	"go/ast"
 	"go/parser"
 	"go/token"
-	"os"
+	"io/fs"
+	"path/filepath"
 	"strconv"
 	"strings"
 	"testing"
@@ -45,64 +46,131 @@ func (r Record) Check(t interface {
 // sets to the package's folder.
 func (r Record) Complete(t testing.TB) {
 	t.Helper()
-	ids := declared(t)
-	if len(ids) == 0 {
+	files, err := filepath.Glob("*.go")
+	if err != nil {
+		t.Fatal(err)
+	}
+	list := read(t, files)
+	if len(list) == 0 {
 		t.Fatal("the package declares no formula")
 	}
-	for _, id := range ids {
-		if !r[id] {
-			t.Errorf("formula %s is in no checked working", id)
+	for _, f := range list {
+		if !r[f.ID] {
+			t.Errorf("formula %s is in no checked working", f.ID)
 		}
 	}
 }
 
-// declared lists the ID of each formula.Formula literal in the package's files.
-func declared(t testing.TB) []string {
+// Declared reads every formula.Formula literal of the Go files in and below the
+// folder root: identifier, expression, and name and meaning of the symbols, all of it as written.
+func Declared(t testing.TB, root string) []formula.Formula {
 	t.Helper()
-	entries, err := os.ReadDir(".")
+	var list []formula.Formula
+	err := filepath.WalkDir(root, func(dir string, d fs.DirEntry, err error) error {
+		if err != nil || !d.IsDir() {
+			return err
+		}
+		files, err := filepath.Glob(filepath.Join(dir, "*.go"))
+		list = append(list, read(t, files)...)
+		return err
+	})
 	if err != nil {
 		t.Fatal(err)
 	}
-	var ids []string
-	for _, e := range entries {
-		if !strings.HasSuffix(e.Name(), ".go") || strings.HasSuffix(e.Name(), "_test.go") {
+	return list
+}
+
+// read finds the formulas in the files of one package. Symbols may stand in variables of the package.
+func read(t testing.TB, files []string) []formula.Formula {
+	t.Helper()
+	var trees []*ast.File
+	symbols := map[string]formula.Symbol{}
+	for _, name := range files {
+		if strings.HasSuffix(name, "_test.go") {
 			continue
 		}
-		f, err := parser.ParseFile(token.NewFileSet(), e.Name(), nil, 0)
+		f, err := parser.ParseFile(token.NewFileSet(), name, nil, 0)
 		if err != nil {
 			t.Fatal(err)
 		}
+		trees = append(trees, f)
+		ast.Inspect(f, func(n ast.Node) bool {
+			if v, ok := n.(*ast.ValueSpec); ok && len(v.Names) == len(v.Values) {
+				for i, value := range v.Values {
+					symbols[v.Names[i].Name] = symbol(value, nil)
+				}
+			}
+			return true
+		})
+	}
+	var list []formula.Formula
+	for _, f := range trees {
 		ast.Inspect(f, func(n ast.Node) bool {
 			lit, ok := n.(*ast.CompositeLit)
 			if !ok {
 				return true
 			}
 			if sel, ok := lit.Type.(*ast.SelectorExpr); ok && sel.Sel.Name == "Formula" {
-				ids = append(ids, idOf(t, lit))
+				list = append(list, literal(t, lit, symbols))
 			}
 			return true
 		})
 	}
-	return ids
+	return list
 }
 
-func idOf(t testing.TB, lit *ast.CompositeLit) string {
+// literal reads one formula.
+func literal(t testing.TB, lit *ast.CompositeLit, symbols map[string]formula.Symbol) formula.Formula {
 	t.Helper()
+	var f formula.Formula
 	for _, e := range lit.Elts {
 		kv, ok := e.(*ast.KeyValueExpr)
 		if !ok {
 			continue
 		}
-		if key, ok := kv.Key.(*ast.Ident); ok && key.Name == "ID" {
-			if v, ok := kv.Value.(*ast.BasicLit); ok {
-				id, err := strconv.Unquote(v.Value)
-				if err != nil {
-					t.Fatal(err)
+		key, ok := kv.Key.(*ast.Ident)
+		if !ok {
+			continue
+		}
+		switch key.Name {
+		case "ID":
+			f.ID = unquoted(kv.Value)
+		case "Expr":
+			f.Expr = unquoted(kv.Value)
+		case "Out":
+			f.Out = symbol(kv.Value, symbols)
+		case "In":
+			if in, ok := kv.Value.(*ast.CompositeLit); ok {
+				for _, s := range in.Elts {
+					f.In = append(f.In, symbol(s, symbols))
 				}
-				return id
 			}
 		}
 	}
-	t.Fatal("a formula without a literal ID")
-	return ""
+	if f.ID == "" {
+		t.Fatal("a formula without a literal ID")
+	}
+	return f
+}
+
+// symbol is name and meaning in formula.Sym("V", "speed", …), or in the variable that holds it.
+func symbol(e ast.Expr, symbols map[string]formula.Symbol) formula.Symbol {
+	switch e := e.(type) {
+	case *ast.Ident:
+		return symbols[e.Name]
+	case *ast.CallExpr:
+		if len(e.Args) > 1 {
+			return formula.Symbol{Name: unquoted(e.Args[0]), Meaning: unquoted(e.Args[1])}
+		}
+	}
+	return formula.Symbol{}
+}
+
+func unquoted(e ast.Expr) string {
+	lit, ok := e.(*ast.BasicLit)
+	if !ok {
+		return ""
+	}
+	text, _ := strconv.Unquote(lit.Value) // a number gives ""
+	return text
 }

@@ -3,6 +3,7 @@ package formulatest
 import (
 	"fmt"
 	"os"
+	"path/filepath"
 	"strings"
 	"testing"
 
@@ -60,5 +61,21 @@ func TestComplete(t *testing.T) {
 	write("b.go", "package a\nvar n = formula.Formula{ID: name}\n")
 	if said := fatal(); !strings.Contains(said, "without a literal ID") {
 		t.Errorf("a computed ID: %q", said)
+	}
+}
+
+// TestDeclared reads symbols where they stand, and in variables.
+func TestDeclared(t *testing.T) {
+	dir := filepath.Join(t.TempDir(), "x")
+	if err := os.Mkdir(dir, 0o700); err != nil {
+		t.Fatal(err)
+	}
+	text := "package x\nvar speed = formula.Sym(\"V\", \"speed\", 1)\nvar f = formula.Must(formula.Formula{ID: \"x.q\", Out: formula.Sym(\"q\", \"\", 2), In: []formula.Symbol{formula.Sym(\"rho\", \"\", 3), speed}, Expr: \"0.5*rho*V*V\"})\n"
+	if err := os.WriteFile(filepath.Join(dir, "x.go"), []byte(text), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	list := Declared(t, filepath.Dir(dir))
+	if len(list) != 1 || list[0].ID != "x.q" || list[0].Expr != "0.5*rho*V*V" || list[0].Out.Name != "q" || len(list[0].In) != 2 || list[0].In[0].Name != "rho" || list[0].In[1].Name != "V" {
+		t.Errorf("read %+v", list)
 	}
 }
