@@ -28,12 +28,13 @@ var allowed = map[string]string{
 	"internal/perf/polar":      "units input formula numeric",
 	"internal/perf/propeller":  "units input formula numeric atmos",
 	"internal/perf/powerplant": "units input formula numeric atmos propeller",
-	"internal/perf/aircraft":   "units input formula numeric atmos propeller polar powerplant",
+	"internal/perf/loads":      "units input formula atmos",
+	"internal/perf/aircraft":   "units input formula numeric atmos propeller polar powerplant loads",
 	"internal/perf/pointperf":  "units formula numeric atmos polar powerplant aircraft",
 	"internal/perf/runway":     "units input formula numeric atmos polar powerplant aircraft pointperf",
 	"internal/perf/envelope":   "units formula numeric atmos polar powerplant aircraft pointperf",
 	"internal/perf/mission":    "units input formula numeric atmos polar powerplant aircraft pointperf runway",
-	"internal/perf/project":    "units input atmos powerplant aircraft runway mission",
+	"internal/perf/project":    "units input atmos powerplant loads aircraft runway mission",
 	"internal/perf/study":      engine,
 
 	"internal/perf/reference":                 "units",
@@ -54,7 +55,7 @@ var allowed = map[string]string{
 }
 
 // engine is every package of the engine that the program itself may use.
-const engine = "units input formula numeric atmos polar propeller powerplant aircraft pointperf runway envelope mission project study"
+const engine = "units input formula numeric atmos polar propeller powerplant loads aircraft pointperf runway envelope mission project study"
 
 // support are the packages that only tests import; they may read files.
 var support = []string{"internal/perf/reference", "internal/perf/formula/formulatest", "internal/perf/powerplant/powerplanttest", "internal/perf/aircraft/aircrafttest"}

@@ -11,6 +11,7 @@ import (
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/input"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/powerplant"
 )
 
@@ -27,6 +28,7 @@ func sample() *aircraft.Spec {
 			GroundCL: 0.45, NeverExceed: 75,
 		},
 		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650},
+		Limits:     loads.Unentered(),
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: kind.New()},
 	}
 }

@@ -4,6 +4,7 @@ package aircraft
 
 import (
 	"legwright/internal/perf/input"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/units"
 )
@@ -18,6 +19,7 @@ const (
 type Spec struct {
 	Airframe   Airframe        `json:"airframe"`
 	Weights    Weights         `json:"weights"`
+	Limits     loads.Limits    `json:"limits"`
 	Powerplant powerplant.Spec `json:"powerplant"`
 }
 

@@ -23,6 +23,8 @@ var added = map[string]string{
 	"requirements.turn_given": `"best"`, "requirements.turn_speed": `35`,
 	"requirements.power": `0.75`, "requirements.climb_to": `3000`, "requirements.kept": `0`,
 	"requirements.clause": `""`, "requirements.note": `""`,
+	"variants.aircraft.limits": `{"rule": "none", "factors_given": "rule", "positive": 3.8, "negative": -1.5, "negative_dive": 0, "speeds_given": "rule", "cruise": 60, "dive": 84,
+		"gust_cruise": 15.24, "gust_dive": 7.62, "negative_cl": -0.8, "chord_given": "area", "chord": 1.3, "slope_given": "estimate", "slope": 5}`,
 }
 
 // formatOf is the number of the format that the document states, 0 where it states none that Decode reads.
