@@ -118,6 +118,14 @@ func (d *Design) least(l *Limits, w *formula.Working) {
 	}
 }
 
+// LeastDive is the least VD of the rule in m/s where its least VC is the given one in m/s; 0 without a rule.
+func (d *Design) LeastDive(leastCruise float64) float64 {
+	if d.rule.name == Own {
+		return 0
+	}
+	return d.rule.leastDive(d.Cruise, leastCruise, d.Airframe.MaxTakeOff*atmos.Gravity/d.Airframe.Area, nil)
+}
+
 // Convert keeps the meaning of the limits when the choice of that name has changed from
 // another: what the rule gave before becomes the value now given.
 func (l *Limits) Convert(choice, from string, a Airframe) {

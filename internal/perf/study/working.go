@@ -23,6 +23,7 @@ const (
 	partTakeOff  = "Take-off"
 	partLanding  = "Landing"
 	partCeiling  = "Ceilings"
+	partLimits   = "Manoeuvre and gust envelope"
 	partTightest = "Tightest point of the mission"
 	partMission  = "Mission, leg by leg"
 	partLoading  = "Loading"
@@ -60,7 +61,7 @@ func (v *Verdict) WorkingPart() string {
 // Where a part has no answer, the reason stands in its place.
 func (s *Study) Working() *formula.Working {
 	w := &formula.Working{}
-	for _, part := range []func(*formula.Working) error{s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
+	for _, part := range []func(*formula.Working) error{s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.structureWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
 		if err := part(w); err != nil {
 			w.Note("No answer: %s.", units.Explain(err).In(units.Metric))
 		}
@@ -189,6 +190,22 @@ func (s *Study) ceilingWorking(w *formula.Working) error {
 	}
 	w.Note("At the absolute ceiling, %s, no rate of climb is left.", in(units.Altitude, s.Absolute.Value))
 	return nil
+}
+
+// structureWorking derives the corners of the envelope of manoeuvre and gust under the view.
+func (s *Study) structureWorking(w *formula.Working) error {
+	w.Heading(partLimits)
+	d, ok := s.Aircraft().Structure(w)
+	if !ok {
+		return units.Errorf(nil, "no structural limits are entered")
+	}
+	v := s.View
+	air, err := atmos.Day{Deviation: v.Deviation, Humidity: s.Project.Plan.Day.Humidity}.At(v.Altitude, nil)
+	if err != nil {
+		return err
+	}
+	_, err = d.At(air, v.Mass, w)
+	return err
 }
 
 // tightestWorking derives the thrust in hand at the tightest point of the mission.
