@@ -31,7 +31,7 @@ func (s *site) analysis(path string, show func(*study.Study, views.Frame) templ.
 }
 
 func climb(st *study.Study, f views.Frame) templ.Component {
-	return views.ClimbAndEnvelope(views.NewClimbPage(st, st.Envelope(), f))
+	return views.ClimbAndEnvelope(views.NewClimbPage(st, st.Envelope(), st.Structure(), f))
 }
 
 func strip(st *study.Study, f views.Frame) templ.Component {

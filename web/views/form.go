@@ -186,6 +186,7 @@ func (f *form) groups() []Group {
 			{Title: "Take-off", Fields: f.under(a + ".airframe.take_off")},
 			{Title: "Landing", Fields: f.under(a + ".airframe.landing")}}},
 		f.weights(a, len(v.Weights.Items)),
+		{ID: "limits", Title: "Structural limits", Blocks: []Block{{Fields: f.under(a + ".limits")}}},
 	}
 	list = append(list, f.plant(a+".powerplant.values")...)
 	list = append(list,

@@ -61,11 +61,14 @@ func NewWorking(s *study.Study, frame Frame) Working {
 	return p
 }
 
-// anchors are the ids of the parts of the working that figures point to, by heading.
+// anchors are the ids of the parts of the working that figures and pages point to, by heading.
 var anchors = func() map[string]string {
 	m := map[string]string{}
+	headings := []string{study.StructurePart}
 	for _, k := range project.FigureKinds() {
-		heading := study.WorkingPart(k.ID)
+		headings = append(headings, study.WorkingPart(k.ID))
+	}
+	for _, heading := range headings {
 		m[heading] = "working-" + strings.NewReplacer(" ", "-", ",", "").Replace(strings.ToLower(heading))
 	}
 	return m

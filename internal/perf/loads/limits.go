@@ -84,7 +84,7 @@ func (l *Limits) Inputs() []input.Entry {
 			input.Option{Value: ByArea, Label: "wing area over span"}, input.Option{Value: ByValue, Label: "own value"}).If(given),
 		input.Num(&chord, &l.Chord).If(given && l.ChordGiven == ByValue),
 		input.Pick("slope_given", "Lift-curve slope", &l.SlopeGiven,
-			input.Option{Value: ByEstimate, Label: "estimated from the aspect ratio"}, input.Option{Value: ByValue, Label: "own value"}).If(given),
+			input.Option{Value: ByEstimate, Label: "from the aspect ratio"}, input.Option{Value: ByValue, Label: "own value"}).If(given),
 		input.Num(&slope, &l.Slope).If(given && l.SlopeGiven == ByValue),
 	}
 }

@@ -13,14 +13,15 @@ import (
 // A Structure is the envelope of manoeuvre and gust at the mass and the altitude of the
 // view, flaps and gear up. It is computed apart from the study, for the page that shows it.
 type Structure struct {
-	Given    bool // structural limits are entered; without them everything else is empty
-	Air      atmos.Air
-	Design   loads.Design
-	Diagram  *loads.Diagram // nil where Err says why
-	Err      error
-	Masses   []LoadCase
-	Relief   float64 // 0.9 of the level maximum at sea level, which a rule lets VC come down to, in m/s; 0 where that is not below its least VC
-	Cautions []Warning
+	Given       bool // structural limits are entered; without them everything else is empty
+	Air         atmos.Air
+	Design      loads.Design
+	Diagram     *loads.Diagram // nil where Err says why
+	Err         error
+	Masses      []LoadCase
+	Relief      float64 // 0.9 of the level maximum at sea level, which a rule lets VC come down to, in m/s; 0 where that is not below its least VC
+	NeverExceed float64 // never-exceed speed as equivalent airspeed in m/s in the air of the view
+	Cautions    []Warning
 }
 
 // A LoadCase is the envelope at one mass.
@@ -63,6 +64,7 @@ func (s *Study) structure() *Structure {
 	if t.Air, t.Err = (atmos.Day{Deviation: v.Deviation, Humidity: s.Project.Plan.Day.Humidity}).At(v.Altitude, nil); t.Err != nil {
 		return t
 	}
+	t.NeverExceed = float64(t.Air.EAS(t.Air.FromCAS(atmos.CAS(a.NeverExceed()))))
 	if t.Diagram, t.Err = t.Design.At(t.Air, v.Mass, nil); t.Err != nil {
 		t.caution("no-load-envelope", Caution, "Less mass, more lift, or a higher VC.", units.Say("no manoeuvre and gust envelope: {}", units.Nest(units.Explain(t.Err))))
 		return t

@@ -23,12 +23,14 @@ const (
 	partTakeOff  = "Take-off"
 	partLanding  = "Landing"
 	partCeiling  = "Ceilings"
-	partLimits   = "Manoeuvre and gust envelope"
 	partTightest = "Tightest point of the mission"
 	partMission  = "Mission, leg by leg"
 	partLoading  = "Loading"
 	partAsked    = "Requirements under conditions of their own"
 )
+
+// StructurePart is the heading of the part of the working that derives the envelope of manoeuvre and gust.
+const StructurePart = "Manoeuvre and gust envelope"
 
 // parts says in which part of the working each figure is derived.
 var parts = map[string]string{
@@ -194,7 +196,7 @@ func (s *Study) ceilingWorking(w *formula.Working) error {
 
 // structureWorking derives the corners of the envelope of manoeuvre and gust under the view.
 func (s *Study) structureWorking(w *formula.Working) error {
-	w.Heading(partLimits)
+	w.Heading(StructurePart)
 	d, ok := s.Aircraft().Structure(w)
 	if !ok {
 		return units.Errorf(nil, "no structural limits are entered")
