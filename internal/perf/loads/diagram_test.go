@@ -161,6 +161,7 @@ func TestProperties(t *testing.T) {
 		if g.Points[0].EAS != 0 || g.Points[0].Envelope != (Pair{}) || g.Points[len(g.Points)-1].EAS != d.Dive {
 			t.Fatalf("the envelope is not closed: %+v to %+v", g.Points[0], g.Points[len(g.Points)-1])
 		}
+		wing := a
 		above, below := 0.0, 0.0
 		for i, p := range g.Points {
 			if i > 0 && p.EAS <= g.Points[i-1].EAS {
@@ -178,6 +179,21 @@ func TestProperties(t *testing.T) {
 		}
 		if math.Abs(above-g.Greatest.Load) > 2*tie || math.Abs(below-g.Smallest.Load) > 2*tie {
 			t.Fatalf("greatest %+v of %g, smallest %+v of %g", g.Greatest, above, g.Smallest, below)
+		}
+		// Between two points the envelope is a straight line or the parabola of a stall: no corner is missed.
+		q := 0.5 * atmos.SeaLevelDensity / g.Loading
+		for i := 1; i < len(g.Points); i++ {
+			a, b := g.Points[i-1], g.Points[i]
+			h := b.EAS - a.EAS
+			m, _ := g.Load((a.EAS + b.EAS) / 2)
+			for _, bow := range []struct{ got, parabola float64 }{
+				{(a.Envelope.Up+b.Envelope.Up)/2 - m.Envelope.Up, q * wing.CLMax * h * h / 4},
+				{(a.Envelope.Down+b.Envelope.Down)/2 - m.Envelope.Down, q * d.NegativeCL * h * h / 4},
+			} {
+				if math.Abs(bow.got) > 1e-9 && math.Abs(bow.got-bow.parabola) > 1e-9 {
+					t.Fatalf("a corner between %g and %g m/s: %g, a parabola bows %g", a.EAS, b.EAS, bow.got, bow.parabola)
+				}
+			}
 		}
 		// No speed between the points goes beyond the extremes.
 		v := rapid.Float64Range(0, d.Dive).Draw(t, "speed")
