@@ -115,7 +115,7 @@ func structureFacts(t *study.Structure, sys units.System) []Row {
 	rows := []Row{
 		{Label: "Limit load factors", Value: factor(d.Positive) + " / " + factor(d.Negative), Remark: "up to VC; downwards " + factor(d.NegativeDive) + " at VD"},
 		{Label: "Gusts", Value: sys.Format(units.Speed, g.CruiseGust.Velocity), Remark: "at VC, up and down; " + sys.Format(units.Speed, g.DiveGust.Velocity) + " at VD"},
-		{Label: "Wing loading", Value: massPerArea(g.Mass/d.Airframe.Area, sys), Remark: "at the mass set"},
+		{Label: "Wing loading", Value: sys.Format(units.WingLoading, g.Mass/d.Airframe.Area), Remark: "at the mass set"},
 		{Label: "Mean chord", Value: sys.Format(units.Length, d.Chord)},
 		{Label: "Lift-curve slope", Value: factor(d.Slope), Remark: "per radian"},
 		{Label: "Gust alleviation", Value: factor(g.Alleviation), Remark: "mass ratio " + units.Fixed(g.MassRatio, 1)},
@@ -128,12 +128,6 @@ func structureFacts(t *study.Structure, sys units.System) []Row {
 		rows = append(rows, Row{Label: "Least by the rule", Value: sys.Format(units.Speed, l.Cruise), Remark: remark})
 	}
 	return rows
-}
-
-// massPerArea is a wing loading in kg/m² in the units that masses and areas are read in.
-func massPerArea(loading float64, sys units.System) string {
-	mass, area := sys.Unit(units.Mass), sys.Unit(units.Area)
-	return units.Fixed(loading*mass.FromSI(1)/area.FromSI(1), 1) + "\u00a0" + mass.Symbol + "/" + area.Symbol
 }
 
 // loadGrid is the envelope against mass: a lighter aeroplane is moved more by a gust.

@@ -5,6 +5,7 @@ import (
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/formula"
 	"legwright/internal/perf/loads"
 	"legwright/internal/perf/pointperf"
 	"legwright/internal/perf/units"
@@ -73,6 +74,15 @@ func (s *Study) structure() *Structure {
 	return t
 }
 
+// loadsAt is the envelope of manoeuvre and gust at a point.
+func (s *Study) loadsAt(p *pointperf.Point, w *formula.Working) (*loads.Diagram, error) {
+	d, ok := s.Aircraft().Structure(w)
+	if !ok {
+		return nil, units.Errorf(nil, "no structural limits are entered")
+	}
+	return d.At(p.Air, p.Mass, w)
+}
+
 // relief is 0.9 of the level maximum in m/s at sea level in standard air and the greatest
 // take-off mass, where that is below the least VC of the rule, and else 0.
 func relief(a *aircraft.Aircraft, d *loads.Design) float64 {
@@ -80,7 +90,7 @@ func relief(a *aircraft.Aircraft, d *loads.Design) float64 {
 	if err != nil || d.Least.Cruise == 0 {
 		return 0
 	}
-	fastest := pointperf.AllSpeeds(a, &pointperf.Point{Air: air, Mass: a.MaxTakeOff()}).LevelMax
+	fastest := pointperf.LevelMax(a, &pointperf.Point{Air: air, Mass: a.MaxTakeOff()})
 	if fastest.Err != nil || fastest.Bound != "" || reliefShare*fastest.TAS >= d.Least.Cruise {
 		return 0
 	}

@@ -154,3 +154,28 @@ func TestTurnCaution(t *testing.T) {
 		t.Errorf("4.8 is enough: %s", w.Text.In(units.Metric))
 	}
 }
+
+// Requirements can name VA and the greatest load factor, under a mass and an altitude of their own.
+func TestLoadRequirements(t *testing.T) {
+	light := project.Require("gust_load", project.AtMost, 4.8)
+	light.MassGiven, light.Mass = project.GivenMass, 420
+	maneuver := project.Require("maneuvering_speed", project.AtLeast, 45)
+	ask := func(change func(*loads.Limits)) []study.Verdict {
+		s, _ := structured(t, func(l *loads.Limits, s *project.Spec, _ *study.View) {
+			change(l)
+			s.Requirements = []project.Requirement{project.Require("gust_load", project.AtMost, 4.8), light, maneuver}
+		})
+		return s.Requirements
+	}
+	_, at := structured(t, func(_ *loads.Limits, _ *project.Spec, v *study.View) { v.Mass = 420 })
+	_, start := structured(t, func(*loads.Limits, *project.Spec, *study.View) {})
+	got := ask(func(*loads.Limits) {})
+	if !got[0].Met || got[1].Met || got[1].Figure.Value != at.Diagram.Greatest.Load || !got[2].Met || got[2].Figure.Value != start.Diagram.Maneuver {
+		t.Errorf("%+v, %+v, %+v", got[0].Figure, got[1].Figure, got[2].Figure)
+	}
+	for _, v := range ask(func(l *loads.Limits) { *l = loads.Unentered() }) {
+		if v.Judged() || v.Met || !strings.Contains(v.Reason.In(units.Metric), "no structural limits are entered") {
+			t.Errorf("without limits: %t, %q", v.Met, v.Reason.In(units.Metric))
+		}
+	}
+}

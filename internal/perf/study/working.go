@@ -43,7 +43,7 @@ var parts = map[string]string{
 	"reserve_time": partMission, "fuel_left": partMission, "energy_left": partMission, "ground_speed": partMission,
 	"stall_take_off": partTakeOff, "static_thrust_ratio": partLoading, "wing_loading": partLoading, "power_loading": partLoading,
 	"steepest_gradient": partAsked, "balked_gradient": partAsked, "time_to_climb": partAsked, "cruise_speed": partAsked, "range": partAsked, "endurance": partAsked,
-	"glide_ratio": partAsked, "turn_load": partAsked,
+	"glide_ratio": partAsked, "turn_load": partAsked, "maneuvering_speed": partAsked, "gust_load": partAsked,
 }
 
 // WorkingPart is the heading of the part of the working that derives a figure, empty for an unknown one.
@@ -197,16 +197,12 @@ func (s *Study) ceilingWorking(w *formula.Working) error {
 // structureWorking derives the corners of the envelope of manoeuvre and gust under the view.
 func (s *Study) structureWorking(w *formula.Working) error {
 	w.Heading(StructurePart)
-	d, ok := s.Aircraft().Structure(w)
-	if !ok {
-		return units.Errorf(nil, "no structural limits are entered")
-	}
 	v := s.View
 	air, err := atmos.Day{Deviation: v.Deviation, Humidity: s.Project.Plan.Day.Humidity}.At(v.Altitude, nil)
 	if err != nil {
 		return err
 	}
-	_, err = d.At(air, v.Mass, w)
+	_, err = s.loadsAt(&pointperf.Point{Air: air, Mass: v.Mass}, w)
 	return err
 }
 
