@@ -73,7 +73,7 @@ func speedGrid(t *study.Structure, sys units.System) Grid {
 		label string
 		v     float64
 	}{
-		{"VS, stall", g.Stall}, {"Stall, negative", g.NegativeStall}, {"VA, positive limit reached", g.Maneuver}, {"Negative limit reached", g.NegativeReach},
+		{"VS, stall", g.Stall}, {"Stall, negative", g.NegativeStall}, {"VA, lift for the positive limit", g.Maneuver}, {"Lift for the negative limit", g.NegativeReach},
 		{"VC, design cruising", d.Cruise}, {"VNE, never exceed", t.NeverExceed}, {"VD, design dive", d.Dive},
 	} {
 		row := []string{r.label, sys.Number(units.Speed, r.v), sys.Number(units.Speed, t.Air.FromEAS(atmos.EAS(r.v))), "–", "–", "–", "–", "–", "–", "beyond VD"}

@@ -46,7 +46,7 @@ type Point struct {
 	Lift     Pair    // at the positive and the negative stall
 	Maneuver Pair    // limits of manoeuvre
 	Gust     Pair    // of the gusts, in a straight line between the design speeds
-	Envelope Pair    // the greater of manoeuvre and gust, within what lift reaches
+	Envelope Pair    // the stronger of manoeuvre and gust, within what lift reaches
 }
 
 // An Extreme is the greatest or the smallest load factor of the envelope.
@@ -58,13 +58,13 @@ type Extreme struct {
 
 var (
 	stall = formula.Must(formula.Formula{
-		ID: "loads.stall", Out: formula.Sym("VS", "stall speed, equivalent", units.Speed),
+		ID: "loads.stall", Out: formula.Sym("VS", "stall speed, equivalent, of upward or downward lift", units.Speed),
 		In: []formula.Symbol{formula.Sym("w", "wing loading", units.Pressure), formula.Sym("rho0", "standard air density at sea level", units.Density),
 			formula.Sym("CLmax", "greatest lift coefficient, upwards or downwards", units.Coefficient)},
 		Expr: "sqrt(2*w/(rho0*CLmax))", Source: formula.Anderson, Where: "section 5.9",
 	})
 	maneuver = formula.Must(formula.Formula{
-		ID: "loads.maneuvering-speed", Out: formula.Sym("VA", "design manoeuvring speed, equivalent", units.Speed),
+		ID: "loads.maneuvering-speed", Out: formula.Sym("VA", "design manoeuvring speed, equivalent; downwards, where lift reaches the negative limit", units.Speed),
 		In:   []formula.Symbol{formula.Sym("VS", "stall speed", units.Speed), formula.Sym("n", "limit load factor", units.Coefficient)},
 		Expr: "VS*sqrt(n)", Source: formula.FAR23, Where: "23.335(c), as CS-VLA 335(c)",
 	})

@@ -47,6 +47,9 @@ func (s *Study) Structure() *Structure {
 	}
 	t.Relief = relief(s.Aircraft(), &t.Design)
 	for _, m := range gathered(s.around(s.named())) {
+		if m.mass > s.Masses.MaxTakeOff*(1+1e-9) && m.mass != s.View.Mass {
+			continue // the limits do not hold there
+		}
 		c := LoadCase{Label: m.label, Mass: m.mass}
 		c.Diagram, c.Err = t.Design.At(t.Air, m.mass, nil)
 		t.Masses = append(t.Masses, c)
@@ -148,6 +151,10 @@ func (t *Structure) cautionDesign(a *aircraft.Aircraft) {
 // cautionDiagram looks at the envelope.
 func (t *Structure) cautionDiagram() {
 	d, g := &t.Design, t.Diagram
+	if most := d.Airframe.MaxTakeOff; g.Mass > most*(1+1e-9) {
+		t.caution("limits-overweight", Caution, "Less mass, or a structure shown for more.",
+			units.Say("the limit load factors hold up to the greatest take-off mass, {}; at {} the same structure bears less, and the speeds shown are no leave to fly them", units.Of(units.Mass, most), units.Of(units.Mass, g.Mass)))
+	}
 	if g.Maneuver > d.Cruise*(1+1e-9) {
 		t.caution("maneuver-above-cruise", Info, "Check the mass, the greatest lift coefficient and VC.",
 			units.Say("the design manoeuvring speed, {}, lies above the design cruising speed, {}: up to there the wing stalls before it reaches the limit load factor", units.Of(units.Speed, g.Maneuver), units.Of(units.Speed, d.Cruise)))

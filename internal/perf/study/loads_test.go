@@ -47,6 +47,9 @@ func TestStructureOfTheDemo(t *testing.T) {
 		t.Errorf("at VA lift gives %g", n)
 	}
 	for i, c := range e.Masses {
+		if c.Mass > 650 {
+			t.Errorf("limits at %g kg, more than the greatest take-off mass", c.Mass)
+		}
 		if c.Err != nil || i > 0 && c.Diagram.CruiseGust.Up >= e.Masses[i-1].Diagram.CruiseGust.Up {
 			t.Errorf("%s: %v, gust %+v", c.Label, c.Err, c.Diagram.CruiseGust)
 		}
@@ -70,6 +73,7 @@ func TestStructureCautions(t *testing.T) {
 		"design-dive-slow":      {func(l *loads.Limits, s *project.Spec, _ *study.View) { l.Dive = 66 }, study.Caution, "asks for, 75.0\u00a0m/s"},
 		"maneuver-above-cruise": {func(l *loads.Limits, s *project.Spec, _ *study.View) { l.Cruise = 50 }, study.Info, "lies above"},
 		"gust-above-limit":      {func(l *loads.Limits, s *project.Spec, v *study.View) { v.Mass = 420 }, study.Caution, "at 420.0\u00a0kg the gusts"},
+		"limits-overweight":     {func(l *loads.Limits, s *project.Spec, v *study.View) { v.Mass = 660 }, study.Caution, "up to the greatest take-off mass, 650.0\u00a0kg; at 660.0"},
 		"no-load-envelope":      {func(l *loads.Limits, s *project.Spec, v *study.View) { v.Mass = 6000 }, study.Caution, "is not below the design cruising speed"},
 	} {
 		s, e := structured(t, c.change)
