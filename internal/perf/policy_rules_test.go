@@ -29,12 +29,13 @@ var allowed = map[string]string{
 	"internal/perf/dragbuild":  "units input formula atmos",
 	"internal/perf/propeller":  "units input formula numeric atmos",
 	"internal/perf/powerplant": "units input formula numeric atmos propeller",
-	"internal/perf/aircraft":   "units input formula numeric atmos propeller polar dragbuild powerplant",
+	"internal/perf/loads":      "units input formula atmos",
+	"internal/perf/aircraft":   "units input formula numeric atmos propeller polar dragbuild powerplant loads",
 	"internal/perf/pointperf":  "units formula numeric atmos polar powerplant aircraft",
 	"internal/perf/runway":     "units input formula numeric atmos polar powerplant aircraft pointperf",
 	"internal/perf/envelope":   "units formula numeric atmos polar powerplant aircraft pointperf",
 	"internal/perf/mission":    "units input formula numeric atmos polar powerplant aircraft pointperf runway",
-	"internal/perf/project":    "units input atmos dragbuild powerplant aircraft runway mission",
+	"internal/perf/project":    "units input atmos dragbuild powerplant loads aircraft runway mission",
 	"internal/perf/study":      engine,
 
 	"internal/perf/reference":                 "units",
@@ -56,7 +57,7 @@ var allowed = map[string]string{
 }
 
 // engine is every package of the engine that the program itself may use.
-const engine = "units input formula numeric atmos polar dragbuild propeller powerplant aircraft pointperf runway envelope mission project study"
+const engine = "units input formula numeric atmos polar dragbuild propeller powerplant loads aircraft pointperf runway envelope mission project study"
 
 // support are the packages that only tests import; they may read files.
 var support = []string{"internal/perf/reference", "internal/perf/formula/formulatest", "internal/perf/powerplant/powerplanttest", "internal/perf/aircraft/aircrafttest"}

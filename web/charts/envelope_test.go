@@ -16,7 +16,7 @@ import (
 )
 
 func envelopeCharts(s *study.Study, e *study.Envelope, sys units.System) []Chart {
-	return []Chart{RateCurvesChart(s, e, sys), EnvelopeChart(s, e, sys), LoadChart(s, e, sys)}
+	return []Chart{RateCurvesChart(s, e, sys), EnvelopeChart(s, e, sys), LoadChart(s, e, s.Structure(), sys), StructureChart(s, s.Structure(), sys)}
 }
 
 // Every chart of every case is whole: well-formed, named, without a number that is none, and
@@ -160,9 +160,9 @@ func TestEnvelopeTableIsTrue(t *testing.T) {
 func TestLoadChartOfTheDemo(t *testing.T) {
 	s := named(t, "demo")
 	e := s.Envelope()
-	c := LoadChart(s, e, units.Metric)
+	c := LoadChart(s, e, s.Structure(), units.Metric)
 	p := c.Panels[0]
-	if len(p.Series) != 2 || len(p.Lines) != 3 || len(p.Flags) != 1 {
+	if len(p.Series) != 2 || len(p.Lines) != 4 || len(p.Flags) != 1 {
 		t.Fatalf("%d curves, %d lines, %d flags", len(p.Series), len(p.Lines), len(p.Flags))
 	}
 	if math.Abs(p.Lines[0].Y-2/math.Sqrt(3)) > 1e-12 || math.Abs(p.Lines[2].Y-2) > 1e-12 {
@@ -171,7 +171,7 @@ func TestLoadChartOfTheDemo(t *testing.T) {
 	if !strings.Contains(c.Desc, "thrust ends it") || !strings.Contains(c.Title, readNumber(p.Flags[0].Y, 2)) {
 		t.Errorf("says %q, %q", c.Title, c.Desc)
 	}
-	if grounded := named(t, "above the ceiling"); !strings.Contains(LoadChart(grounded, grounded.Envelope(), units.Metric).Desc, "no level flight") {
+	if grounded := named(t, "above the ceiling"); !strings.Contains(LoadChart(grounded, grounded.Envelope(), grounded.Structure(), units.Metric).Desc, "no level flight") {
 		t.Error("a turn above the ceiling")
 	}
 }

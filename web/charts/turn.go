@@ -13,7 +13,7 @@ var bankLines = []float64{30, 45, 60}
 
 // LoadChart draws the load factor of a level turn that full thrust sustains and the one
 // that maximum lift allows, against true airspeed.
-func LoadChart(s *study.Study, e *study.Envelope, sys units.System) Chart {
+func LoadChart(s *study.Study, e *study.Envelope, t *study.Structure, sys units.System) Chart {
 	const least, beyond, floor = 2.6, 1.5, 0.9
 	speed := measureOf(sys, units.Speed, 0)
 	c := Chart{ID: "loads", X: speedAxis(s, speed), XFirst: "true airspeed"}
@@ -42,6 +42,9 @@ func LoadChart(s *study.Study, e *study.Envelope, sys units.System) Chart {
 		p.Bands = []Band{{X: x, Lower: ground, Upper: sustained, Class: "hand"}, {X: x, Lower: sustained, Upper: lift, Class: "short", Label: "loses height or speed"}}
 		for _, bank := range bankLines {
 			p.Lines = append(p.Lines, HLine{1 / math.Cos(bank*math.Pi/180), fmt.Sprintf("%.0f° bank", bank)})
+		}
+		if t.Given {
+			p.Lines = append(p.Lines, HLine{t.Design.Positive, "structural limit " + readNumber(t.Design.Positive, 2)})
 		}
 		if best.Sustained > 1 {
 			p.Flags = []Flag{{X: speed.of(best.TAS), Y: best.Sustained, Label: fmt.Sprintf("%.2f at %s", best.Sustained, speed.label(best.TAS)), Class: "available"}}

@@ -35,7 +35,7 @@ func drag(st *study.Study, f views.Frame) templ.Component {
 }
 
 func climb(st *study.Study, f views.Frame) templ.Component {
-	return views.ClimbAndEnvelope(views.NewClimbPage(st, st.Envelope(), f))
+	return views.ClimbAndEnvelope(views.NewClimbPage(st, st.Envelope(), st.Structure(), f))
 }
 
 func strip(st *study.Study, f views.Frame) templ.Component {

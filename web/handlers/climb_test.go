@@ -4,6 +4,7 @@ import (
 	"strings"
 	"testing"
 
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/project"
 )
 
@@ -16,8 +17,9 @@ func TestClimbPage(t *testing.T) {
 	if err := checkPage(v.reply.Body.String()); err != nil {
 		t.Error(err)
 	}
-	for id, want := range map[string]string{"#climb-lead": "service ceiling", "#bounds": "Absolute ceiling", "#turn-facts": "not entered", "#ceilings-section": "Greatest take-off",
-		"#glide-section": "The propeller is taken to", "#turns-section": "structural limit is not entered", "#envelope-data": "never exceed, m/s"} {
+	for id, want := range map[string]string{"#climb-lead": "service ceiling", "#bounds": "Absolute ceiling", "#turn-facts": "4.80", "#ceilings-section": "Greatest take-off",
+		"#glide-section": "The propeller is taken to", "#turns-section": "structural limit is the one that was entered", "#envelope-data": "never exceed, m/s",
+		"#structure-lead": "Designed to CS-VLA", "#structure-facts": "per radian", "#structure-section": "a licensed person", "#structure-data": "gust up"} {
 		if n := one(v.page, id); n == nil || !strings.Contains(text(n), want) {
 			t.Errorf("%s does not say %q", id, want)
 		}
@@ -68,5 +70,31 @@ func TestClimbPageOfOddAircraft(t *testing.T) {
 		if err := checkPage(v.reply.Body.String()); err != nil {
 			t.Errorf("%s: %v", address, err)
 		}
+	}
+}
+
+// Without structural limits the page makes none up, and leads to where they are entered.
+func TestClimbPageWithoutLimits(t *testing.T) {
+	v := visit(t)
+	bare := project.Demo()
+	bare.Variants[0].Aircraft.Limits = loads.Unentered()
+	v.keep(bare)
+	v.get("/projects/2/variants/a/climb")
+	if err := checkPage(v.reply.Body.String()); err != nil || v.reply.Code != 200 {
+		t.Fatal(v.reply.Code, err)
+	}
+	for id, want := range map[string]string{"#turn-facts": "not entered", "#turns-section": "structural limit is not entered", "#structure-lead": "not entered"} {
+		if n := one(v.page, id); n == nil || !strings.Contains(text(n), want) {
+			t.Errorf("%s does not say %q", id, want)
+		}
+	}
+	if n := all(v.page, "#structure-section svg"); len(n) != 0 {
+		t.Error("an envelope is drawn")
+	}
+	link := one(v.page, "#structure-section a")
+	address, field, _ := strings.Cut(attr(link, "href"), "#")
+	v.get(address)
+	if one(v.page, "#"+field) == nil {
+		t.Errorf("the bench has no %q", field)
 	}
 }

@@ -337,6 +337,7 @@ func summarise(groups []Group, s *study.Study, sys units.System) {
 		"mission":        fmt.Sprintf("%d legs", len(spec.Legs)),
 		"requirements":   fmt.Sprint(len(spec.Requirements)),
 		"names":          sys.Label(),
+		"limits":         limitSummary(a, sys),
 	}
 	if len(s.Static.Limits.Words()) == 0 && s.Static.Shaft.Speed > 0 {
 		lines["powerplant-propeller"] = fmt.Sprintf("%s at rest", sys.Format(units.Rotation, s.Static.Shaft.Speed))

@@ -28,17 +28,19 @@ type ClimbPage struct {
 	Loads    ChartView
 	Facts    []Row // of the sustained turn
 	Turns    Grid
+	Limit    string // caution about load factors in turns
+	Structure
 }
 
 // NewClimbPage makes the page of a study's envelope.
-func NewClimbPage(s *study.Study, e *study.Envelope, f Frame) ClimbPage {
+func NewClimbPage(s *study.Study, e *study.Envelope, t *study.Structure, f Frame) ClimbPage {
 	sys := s.Project.Spec.System()
 	sized := func(c charts.Chart, width, height float64) ChartView {
 		c.Width, c.Height = width, height
 		return chartView(c)
 	}
 	p := ClimbPage{Frame: f, View: newViewForm(s, sys, f), Lead: climbLead(s, e, sys),
-		Rates: sized(charts.RateCurvesChart(s, e, sys), 800, 360), Loads: sized(charts.LoadChart(s, e, sys), 800, 340)}
+		Rates: sized(charts.RateCurvesChart(s, e, sys), 800, 360), Loads: sized(charts.LoadChart(s, e, t, sys), 800, 340)}
 	envelope := charts.EnvelopeChart(s, e, sys)
 	p.Envelope = sized(envelope, 800, 460)
 	p.Envelope.Table = charts.EnvelopeTable(envelope, e, sys)
@@ -46,7 +48,11 @@ func NewClimbPage(s *study.Study, e *study.Envelope, f Frame) ClimbPage {
 	p.Ceilings, p.ToClimb = ceilingGrid(s, e, sys), climbGrid(s, sys)
 	p.Glides, p.Glide = glideGrids(e, sys), glideCaution(e)
 	p.Wind = fmt.Sprintf("In calm air, and over the ground against %s of head wind. %s.", sys.Format(units.Speed, e.HeadWind), sentenceHead(s.View.Config.String()))
-	p.Facts, p.Turns = turnFacts(s, e, sys), turnGrid(s, e, sys)
+	p.Facts, p.Turns, p.Limit = turnFacts(s, e, t, sys), turnGrid(s, e, sys), turnLimit(t)
+	p.Structure = newStructure(s, e, t, sys, &f)
+	structure := charts.StructureChart(s, t, sys)
+	p.Structure.Chart = sized(structure, 800, 420)
+	p.Structure.Chart.Table = charts.StructureTable(structure)
 	return p
 }
 
@@ -212,7 +218,7 @@ func glideCaution(e *study.Envelope) string {
 func bankWords(t *pointperf.Turn) string { return units.Fixed(t.Bank*180/math.Pi, 0) + "°" }
 
 // turnFacts are the ends of the sustained turn.
-func turnFacts(s *study.Study, e *study.Envelope, sys units.System) []Row {
+func turnFacts(s *study.Study, e *study.Envelope, t *study.Structure, sys units.System) []Row {
 	best := study.LoadAt{}
 	for _, l := range e.Loads {
 		if l.Sustained > best.Sustained {
@@ -229,14 +235,14 @@ func turnFacts(s *study.Study, e *study.Envelope, sys units.System) []Row {
 	at := func(l study.LoadAt) string {
 		return fmt.Sprintf("%.0f° bank, %s, ended by %s", math.Acos(1/l.Sustained)*180/math.Pi, sys.Format(units.Speed, l.TAS), map[bool]string{true: "thrust", false: "lift"}[l.Thrust])
 	}
-	t := e.Tightest
+	tight := e.Tightest
 	rows := []Row{{Label: "Most load factor sustained", Value: units.Fixed(best.Sustained, 2), Remark: at(best)},
-		{Label: "Tightest sustained turn", Value: sys.Format(units.FieldLength, t.Radius), Remark: at(t)},
-		{Label: "Full circle of it", Value: sys.Format(units.ShortTime, 2*math.Pi*t.Radius/t.TAS), Remark: fmt.Sprintf("%.1f°/s", t.TAS/t.Radius*180/math.Pi)}}
-	if !t.Thrust {
+		{Label: "Tightest sustained turn", Value: sys.Format(units.FieldLength, tight.Radius), Remark: at(tight)},
+		{Label: "Full circle of it", Value: sys.Format(units.ShortTime, 2*math.Pi*tight.Radius/tight.TAS), Remark: fmt.Sprintf("%.1f°/s", tight.TAS/tight.Radius*180/math.Pi)}}
+	if !tight.Thrust {
 		rows[1].Remark += ": at the very edge of the stall"
 	}
-	return append(rows, Row{Label: "Structural limit", Value: "not entered", Remark: "no load factor here says that the wing holds it"})
+	return append(rows, limitRow(t))
 }
 
 // turnGrid is level turns at each bank angle.

@@ -23,7 +23,7 @@ func climbPage(t *testing.T, sys units.System, change func(*study.View)) (ClimbP
 		change(&v)
 	}
 	s := study.Run(p, 0, v)
-	page := NewClimbPage(s, s.Envelope(), NewFrame(s, 1, "/climb", "", nil))
+	page := NewClimbPage(s, s.Envelope(), s.Structure(), NewFrame(s, 1, "/climb", "", nil))
 	var b bytes.Buffer
 	if err := ClimbAndEnvelope(page).Render(t.Context(), &b); err != nil {
 		t.Fatal(err)
@@ -33,8 +33,8 @@ func climbPage(t *testing.T, sys units.System, change func(*study.View)) (ClimbP
 
 func TestClimbPageInEverySystem(t *testing.T) {
 	for sys, want := range map[units.System][]string{
-		units.Metric:   {"5.0\u00a0m/s of head wind", "Service ceiling, m"},
-		units.Aviation: {"10.0\u00a0kt of head wind", "Service ceiling, ft", "100\u00a0ft/min left"},
+		units.Metric:   {"5.0\u00a0m/s of head wind", "Service ceiling, m", "50.6\u00a0kg/m²"},
+		units.Aviation: {"10.0\u00a0kt of head wind", "Service ceiling, ft", "100\u00a0ft/min left", "10.4\u00a0lb/ft²"},
 		units.Small:    {"5.0\u00a0m/s of head wind"},
 	} {
 		page, html := climbPage(t, sys, nil)
@@ -49,7 +49,10 @@ func TestClimbPageInEverySystem(t *testing.T) {
 		if len(page.Glides) != 2 || len(page.Glides[0].Rows) != 3 || page.Ceilings.Reason != "" {
 			t.Errorf("%s: glides %v, ceilings %q", sys, page.Glides, page.Ceilings.Reason)
 		}
-		for _, g := range append(page.Glides, page.Turns, page.Ceilings) {
+		if rows := page.Structure.Speeds.Rows; len(rows) != 7 || rows[2][3] != "4.80" || rows[4][9] != "both manoeuvre" {
+			t.Errorf("%s: design speeds %v", sys, rows)
+		}
+		for _, g := range append(page.Glides, page.Turns, page.Ceilings, page.Structure.Speeds, page.Structure.Masses) {
 			for _, r := range g.Rows {
 				if len(r) != len(g.Head) {
 					t.Errorf("%s: %d cells under %d heads in %q", sys, len(r), len(g.Head), g.Caption)

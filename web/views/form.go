@@ -194,6 +194,7 @@ func (f *form) groups() []Group {
 			{Title: "Take-off", Fields: f.lift(a+".airframe.take_off", aircraft.TakeOff)},
 			{Title: "Landing", Fields: f.lift(a+".airframe.landing", aircraft.Landing)}}},
 		f.weights(a, len(v.Weights.Items)),
+		{ID: "limits", Title: "Structural limits", Blocks: []Block{{Fields: f.under(a + ".limits")}}},
 	}
 	list = append(list, f.plant(a+".powerplant.values")...)
 	list = append(list,

@@ -48,3 +48,13 @@ func NewFrame(s *study.Study, projectID int64, path, query string, mistaken []Re
 	}
 	return f
 }
+
+// tab is the address of a page of the variant by its path, under the same view.
+func (f *Frame) tab(path string) string {
+	for i, t := range tabs {
+		if t.Path == path {
+			return f.Tabs[i].URL
+		}
+	}
+	return f.URL
+}

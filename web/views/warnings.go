@@ -11,7 +11,7 @@ type WarningView struct {
 }
 
 // groupSubjects says which warnings stand in a group of inputs, by its ID.
-var groupSubjects = map[string]string{"airframe": "airframe", "weights": "weights", "powerplant-engine": "powerplant"}
+var groupSubjects = map[string]string{"airframe": "airframe", "weights": "weights", "powerplant-engine": "powerplant", "limits": "limits"}
 
 func warnings(list []study.Warning, sys units.System) []WarningView {
 	shown := make([]WarningView, len(list))

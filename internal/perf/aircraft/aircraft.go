@@ -5,6 +5,7 @@ import (
 	"fmt"
 
 	"legwright/internal/perf/input"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/polar"
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/units"
@@ -33,6 +34,7 @@ type Aircraft struct {
 	neverExceed        float64
 	empty, payload     float64
 	maxTakeOff         float64
+	limits             loads.Limits
 	plant              powerplant.Powerplant
 	stores             powerplant.Stores
 }
@@ -47,7 +49,7 @@ func (s *Spec) Build() (*Aircraft, error) {
 	}
 	base, err := s.Airframe.polar(nil)
 	plant, plantErr := s.Powerplant.Model.Build()
-	if err := errors.Join(input.Within("airframe", errors.Join(s.Airframe.checkLift(), err)), input.Within("powerplant.values", plantErr)); err != nil {
+	if err := errors.Join(input.Within("airframe", errors.Join(s.Airframe.checkLift(), err)), input.Within("limits", s.Limits.Check()), input.Within("powerplant.values", plantErr)); err != nil {
 		return nil, err
 	}
 	f, w := &s.Airframe, &s.Weights
@@ -58,6 +60,7 @@ func (s *Spec) Build() (*Aircraft, error) {
 		a.polars[c] = base.Configured(cfg.DeltaCD, cfg.DeltaCLM)
 		a.clMax[c] = cfg.lift(f.WingArea, nil)
 	}
+	a.limits = s.Limits
 	return a, nil
 }
 

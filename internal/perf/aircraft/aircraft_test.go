@@ -11,6 +11,7 @@ import (
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/input"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/powerplant"
 )
 
@@ -27,6 +28,7 @@ func sample() *aircraft.Spec {
 			GroundCL: 0.45, NeverExceed: 75,
 		},
 		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650},
+		Limits:     loads.Unentered(),
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: kind.New()},
 	}
 }
@@ -173,6 +175,28 @@ func TestInputsCoverTheDocument(t *testing.T) {
 	visit(tree, "")
 	if numbers < 30 {
 		t.Errorf("only %d numbers seen", numbers)
+	}
+}
+
+// A choice of the structural limits keeps what they mean, and a contradiction in them is told at its field.
+func TestLimits(t *testing.T) {
+	s := sample()
+	s.Limits.Rule = "normal"
+	s.Limits.SpeedsGiven = loads.ByValue
+	input.Convert(s, "limits.speeds_given", loads.ByRule)
+	a, err := s.Build()
+	if err != nil {
+		t.Fatal(err)
+	}
+	// 33 kt times the root of 650 kg on 12 m² in lb/ft².
+	want := 33 * 1852.0 / 3600 * math.Sqrt(650/0.45359237/(12/0.3048/0.3048))
+	if d, ok := a.Structure(nil); !ok || math.Abs(d.Cruise-want) > 1e-9 || math.Abs(s.Limits.Cruise-want) > 1e-9 || math.Abs(d.Dive-1.4*want) > 1e-9 {
+		t.Errorf("VC %g and VD %g m/s, want VC %g", d.Cruise, d.Dive, want)
+	}
+	s.Limits.Dive = 20
+	_, err = s.Build()
+	if list := input.Errors(err); len(list) != 1 || list[0].Path != "limits.dive" || !errors.Is(err, input.ErrConflict) {
+		t.Errorf("VD below VC: %v", err)
 	}
 }
 

@@ -5,6 +5,7 @@ package aircraft
 import (
 	"legwright/internal/perf/dragbuild"
 	"legwright/internal/perf/input"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/units"
 )
@@ -13,6 +14,7 @@ import (
 type Spec struct {
 	Airframe   Airframe        `json:"airframe"`
 	Weights    Weights         `json:"weights"`
+	Limits     loads.Limits    `json:"limits"`
 	Powerplant powerplant.Spec `json:"powerplant"`
 }
 

@@ -21,4 +21,7 @@ var (
 	Glauert            = Source{"Glauert 1935", "H. Glauert, Airplane Propellers, in W. F. Durand (ed.), Aerodynamic Theory, vol. IV, division L, Springer, 1935"}
 	Carson             = Source{"Carson 1982", "B. H. Carson, Fuel Efficiency of Small Aircraft, Journal of Aircraft 19(6), 1982, p. 473"}
 	Breguet            = Source{"Breguet", "L. Breguet, Calcul du poids de combustible consommé par un avion en vol ascendant, Comptes rendus de l'Académie des sciences 177, 1923"}
+	FAR23              = Source{"14 CFR 23 (1996)", "Code of Federal Regulations, title 14, part 23, sections 23.333 to 23.341 and 23.1505 as amended to Amendment 23-48, 1996, before the rewriting of 2017; text from memory"}
+	CSVLA              = Source{"CS-VLA", "European Aviation Safety Agency, Certification Specifications for Very Light Aeroplanes, CS-VLA, Amendment 1, 2009; text from memory"}
+	Helmbold           = Source{"Helmbold 1942", "H. B. Helmbold, Der unverwundene Ellipsenflügel als tragende Fläche, Jahrbuch 1942 der Deutschen Luftfahrtforschung, p. I 111"}
 )

@@ -7,6 +7,7 @@ import (
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
 	"legwright/internal/perf/dragbuild"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/mission"
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/runway"
@@ -61,8 +62,17 @@ func typicalAircraft() aircraft.Spec {
 			GroundCL: 0.45, NeverExceed: 75, Components: []dragbuild.Component{},
 		},
 		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650},
+		Limits:     typicalLimits(),
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: kind.New()},
 	}
+}
+
+// typicalLimits are those of an invented light two-seater that the gusts of its cruise do not overstress.
+func typicalLimits() loads.Limits {
+	l := loads.Unentered()
+	l.Rule, l.FactorsGiven, l.SpeedsGiven = "vla", loads.ByValue, loads.ByValue
+	l.Positive, l.Negative, l.Cruise, l.Dive = 4.8, -2.8, 60, 84
+	return l
 }
 
 // Demo returns the project that a first start shows: an invented two-seat
@@ -136,9 +146,10 @@ func demoBasis(a *aircraft.Spec) map[string]Basis {
 		}
 	}
 	set(Measured, "airframe.wing_area", "airframe.span", "airframe.wing_height", "weights.empty", "powerplant.values.propeller.diameter", "powerplant.values.mass")
-	set(Calculated, "airframe.clean.cl_max", "airframe.take_off.cl_max", "airframe.landing.cl_max", "airframe.ground_cl", "weights.max_take_off", "airframe.never_exceed")
+	set(Calculated, "airframe.clean.cl_max", "airframe.take_off.cl_max", "airframe.landing.cl_max", "airframe.ground_cl", "weights.max_take_off", "airframe.never_exceed",
+		"limits.positive", "limits.negative", "limits.cruise", "limits.dive")
 	set(Estimated, "airframe.cd_min", "airframe.efficiency", "airframe.cl_min_drag", "airframe.take_off.delta_cd", "airframe.landing.delta_cd",
-		"airframe.take_off.delta_clm", "airframe.landing.delta_clm", "airframe.clean.delta_cd", "airframe.clean.delta_clm",
+		"airframe.take_off.delta_clm", "airframe.landing.delta_clm", "airframe.clean.delta_cd", "airframe.clean.delta_clm", "limits.negative_cl",
 		"powerplant.values.engine.installation_loss", "powerplant.values.engine.accessory_power", "powerplant.values.propeller.coefficients", "powerplant.values.engine.idle_flow")
 	set(Maker, "powerplant.values.engine.power_curve", "powerplant.values.engine.consumption_curve", "powerplant.values.engine.redline", "powerplant.values.engine.gear_ratio",
 		"powerplant.values.engine.critical_altitude", "powerplant.values.fuel.volume", "powerplant.values.fuel.capacity", "powerplant.values.fuel.unusable", "powerplant.values.fuel.density")

@@ -62,6 +62,8 @@ var figures = []FigureKind{
 	{"endurance", "Endurance", units.Duration, AtLeast, 4 * 3600, true, point | Kept},
 	{"glide_ratio", "Best glide ratio", units.Coefficient, AtLeast, 10, true, point | Flaps},
 	{"turn_load", "Sustained load factor in a turn", units.Coefficient, AtLeast, 1.5, true, point | Flaps | Turning},
+	{"maneuvering_speed", "Manoeuvring speed VA, equivalent", units.Speed, AtLeast, 45, true, Load},
+	{"gust_load", "Greatest load factor of manoeuvre and gust", units.Coefficient, AtMost, 4.4, true, point},
 	{"static_thrust", "Static thrust", units.Force, AtLeast, 1500, false, air},
 	{"static_thrust_ratio", "Static thrust over weight", units.Fraction, AtLeast, 0.2, false, point},
 	{"static_speed", "Static engine speed", units.Rotation, AtLeast, 2000.0 / 60, false, air},

@@ -6,6 +6,8 @@ import (
 	"reflect"
 	"strings"
 	"testing"
+
+	"legwright/internal/perf/loads"
 )
 
 // testdata/format-1.json is the demo as the last program wrote it whose format was 1.
@@ -31,6 +33,11 @@ func TestOldDocument(t *testing.T) {
 	}
 	if !reflect.DeepEqual(back, s) {
 		t.Error("written in the present format, it is another document")
+	}
+	for i := range s.Variants {
+		if got := s.Variants[i].Aircraft.Limits; got != loads.Unentered() || got.Given() {
+			t.Errorf("an old document has structural limits: %+v", got)
+		}
 	}
 	want := Demo()
 	if s.Name != want.Name || len(s.Legs) != len(want.Legs) || len(s.Variants) != len(want.Variants) || s.Variants[1].Aircraft.Airframe.WingArea != want.Variants[1].Aircraft.Airframe.WingArea {

@@ -128,6 +128,12 @@ func (s *Study) derive(id string, r *project.Requirement, c *circumstance, w *fo
 		w.Note("The glide ratio is 1 over the tangent of the angle below the horizontal.")
 	case "turn_load":
 		return s.deriveTurn(r, p, w)
+	case "maneuvering_speed", "gust_load":
+		g, err := s.loadsAt(p, w)
+		if err != nil {
+			return err
+		}
+		w.Note("The greatest load factor of the envelope is %s at %s.", units.Plain(roundTo(g.Greatest.Load, 1000)), s.in(units.Speed, g.Greatest.EAS))
 	case "wing_loading":
 		w.Note("%s over %s.", s.in(units.Mass, p.Mass), s.in(units.Area, a.WingArea()))
 	default:

@@ -34,6 +34,7 @@ var (
 	clean       = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.clean", "airframe.never_exceed"})
 	off         = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off"})
 	flapped     = slices.Concat(clean, []string{"airframe.take_off", "airframe.landing"})
+	structural  = slices.Concat(massInputs, plantInputs, []string{"limits", "weights.max_take_off"})
 	flown       = slices.Concat(clean, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off", "airframe.landing"})
 )
 
@@ -41,7 +42,8 @@ var (
 var rests = map[string][]string{
 	"take_off_distance": off, "take_off_roll": off, "climb_gradient": off,
 	"climb_rate": flapped, "steepest_gradient": flapped, "glide_ratio": flapped, "turn_load": flapped,
-	"balked_gradient": slices.Concat(clean, []string{"airframe.landing"}),
+	"balked_gradient":   slices.Concat(clean, []string{"airframe.landing"}),
+	"maneuvering_speed": slices.Concat(structural, []string{"airframe.wing_area", "airframe.clean.cl_max"}), "gust_load": slices.Concat(structural, []string{"airframe.wing_area", "airframe.span", "airframe.clean.cl_max"}),
 	"service_ceiling": clean, "absolute_ceiling": clean, "level_max": clean, "cruise_speed": clean, "time_to_climb": clean, "range": clean, "endurance": clean,
 	"static_thrust": plantInputs, "static_speed": plantInputs,
 	"static_thrust_ratio": slices.Concat(massInputs, plantInputs), "power_loading": slices.Concat(massInputs, plantInputs),

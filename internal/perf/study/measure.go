@@ -52,6 +52,15 @@ func (s *Study) measure(id string, r *project.Requirement, c *circumstance) (flo
 		return g.Ratio, err
 	case "turn_load":
 		return s.turnLoad(r, p)
+	case "maneuvering_speed", "gust_load":
+		g, err := s.loadsAt(p, nil)
+		switch {
+		case err != nil:
+			return 0, err
+		case id == "gust_load":
+			return g.Greatest.Load, nil
+		}
+		return g.Maneuver, nil
 	case "wing_loading":
 		return p.Mass / a.WingArea(), nil
 	}

@@ -25,7 +25,7 @@ const (
 type Warning struct {
 	Code  string // stable
 	Level Level
-	About string // what it concerns: airframe, weights, strip, mission, powerplant, inputs
+	About string // what it concerns: airframe, weights, strip, mission, powerplant, limits, inputs
 	Text  units.Message
 	Clear string // how to clear it
 }
@@ -51,6 +51,7 @@ func (s *Study) warn(a *aircraft.Aircraft) {
 	s.warnMission(a)
 	s.warnPlant()
 	s.warnDrag()
+	s.warnStructure()
 	if n := len(s.Placeholders()); n > 0 {
 		s.add("placeholders", Caution, "inputs", "Give each its measured, maker's, calculated or estimated value and basis.",
 			units.Say("{} inputs are still placeholders", units.Of(units.Coefficient, float64(n))))

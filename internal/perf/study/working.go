@@ -32,6 +32,9 @@ const (
 	requirement  = "Requirement " // begins the heading of the part of one of them
 )
 
+// StructurePart is the heading of the part of the working that derives the envelope of manoeuvre and gust.
+const StructurePart = "Manoeuvre and gust envelope"
+
 // parts says in which part of the working each figure is derived.
 var parts = map[string]string{
 	"take_off_distance": partTakeOff, "take_off_roll": partTakeOff, "climb_gradient": partTakeOff,
@@ -43,13 +46,13 @@ var parts = map[string]string{
 	"reserve_time": partMission, "fuel_left": partMission, "energy_left": partMission, "ground_speed": partMission,
 	"stall_take_off": partTakeOff, "static_thrust_ratio": partLoading, "wing_loading": partLoading, "power_loading": partLoading,
 	"steepest_gradient": partAsked, "balked_gradient": partAsked, "time_to_climb": partAsked, "cruise_speed": partAsked, "range": partAsked, "endurance": partAsked,
-	"glide_ratio": partAsked, "turn_load": partAsked,
+	"glide_ratio": partAsked, "turn_load": partAsked, "maneuvering_speed": partAsked, "gust_load": partAsked,
 }
 
 // IsPart reports whether a heading of the working begins one of its parts; other headings stand within a part.
 func IsPart(heading string) bool {
 	switch heading {
-	case partAir, partStall, partRate, partMaximum, partRest, partTakeOff, partLanding, partCeiling, partTightest, partMission, partLoading, partAsked:
+	case partAir, partStall, partRate, partMaximum, partRest, partTakeOff, partLanding, partCeiling, partTightest, partMission, partLoading, partAsked, StructurePart:
 		return true
 	}
 	return strings.HasPrefix(heading, requirement)
@@ -72,7 +75,7 @@ func (v *Verdict) WorkingPart() string {
 // Where a part has no answer, the reason stands in its place.
 func (s *Study) Working() *formula.Working {
 	w := &formula.Working{}
-	for _, part := range []func(*formula.Working) error{s.dragWorking, s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
+	for _, part := range []func(*formula.Working) error{s.dragWorking, s.viewWorking, s.restWorking, s.takeOffWorking, s.landingWorking, s.ceilingWorking, s.structureWorking, s.tightestWorking, s.missionWorking, s.loadingWorking, s.askedWorking} {
 		if err := part(w); err != nil {
 			w.Note("No answer: %s.", units.Explain(err).In(s.Project.Spec.System()))
 		}
@@ -237,6 +240,18 @@ func (s *Study) ceilingWorking(w *formula.Working) error {
 	}
 	w.Note("At the absolute ceiling, %s, no rate of climb is left.", s.in(units.Altitude, s.Absolute.Value))
 	return nil
+}
+
+// structureWorking derives the corners of the envelope of manoeuvre and gust under the view.
+func (s *Study) structureWorking(w *formula.Working) error {
+	w.Heading(StructurePart)
+	v := s.View
+	air, err := atmos.Day{Deviation: v.Deviation, Humidity: s.Project.Plan.Day.Humidity}.At(v.Altitude, nil)
+	if err != nil {
+		return err
+	}
+	_, err = s.loadsAt(&pointperf.Point{Air: air, Mass: v.Mass}, w)
+	return err
 }
 
 // tightestWorking derives the thrust in hand at the tightest point of the mission.

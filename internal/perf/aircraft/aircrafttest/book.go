@@ -10,6 +10,7 @@ import (
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/reference"
 	"legwright/internal/perf/units"
@@ -82,6 +83,7 @@ func newBook(r reference.Row) *Book {
 		b.Model.Plant = Jet{r.SI("thrust"), r.Num("hourly") / 3600 / atmos.Gravity}
 	}
 	b.Spec.Weights = aircraft.Weights{Empty: b.Mass - fuel, MaxTakeOff: b.Mass}
+	b.Spec.Limits = loads.Unentered()
 	b.Spec.Powerplant = powerplant.Spec{Kind: "test", Model: b.Model}
 	return b
 }

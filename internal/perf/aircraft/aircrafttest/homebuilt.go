@@ -4,6 +4,7 @@ import (
 	"testing"
 
 	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/powerplant"
 )
 
@@ -22,6 +23,7 @@ func Homebuilt(propeller string) aircraft.Spec {
 			GroundCL: 0.45, NeverExceed: 72,
 		},
 		Weights:    aircraft.Weights{Empty: 270, Items: []aircraft.Item{{Name: "Crew", Mass: 165}}, MaxTakeOff: 650},
+		Limits:     loads.Unentered(),
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: model},
 	}
 }
