@@ -184,6 +184,9 @@ func newVerdict(s *study.Study, sys units.System) Verdict {
 		v.Tightest = sentence(f.Failure.Reason.In(sys))
 	case len(f.Legs) == 0:
 		v.Tone, v.Headline = "caution", "The mission has no legs."
+	case f.Reserve.Asked && !f.Reserve.Met && f.Reserve.Flown >= f.Reserve.Wanted:
+		v.Tone, v.Headline = "bad", "Flies the mission but does not keep the reserve."
+		v.Tightest = sentence(f.Reserve.Reason.In(sys))
 	case f.Reserve.Asked && !f.Reserve.Met:
 		v.Tone = "bad"
 		v.Headline = fmt.Sprintf("Flies the mission but not the reserve: %s of %s.", sys.Format(units.Duration, f.Reserve.Flown), sys.Format(units.Duration, f.Reserve.Wanted))

@@ -76,7 +76,7 @@ func legGrid(s *study.Study, sys units.System) Grid {
 	for i := range s.Flight.Legs {
 		l := &s.Flight.Legs[i]
 		tas := "–"
-		if l.End.TAS > 0 && l.Leg.Kind != mission.Landing {
+		if l.End.TAS > 0 && l.Leg.Kind != mission.Landing && l.Time > 0 {
 			tas = sys.Number(units.Speed, l.End.TAS)
 		}
 		g.Rows = append(g.Rows, []string{legName(s, i), sys.Number(units.Duration, l.Time), sys.Number(units.Distance, l.Distance), sys.Number(units.Altitude, l.End.Altitude),
@@ -91,7 +91,7 @@ func plantGrid(s *study.Study, sys units.System) Grid {
 		"Engine speed" + unitOf(sys, units.Rotation), "Propeller efficiency, %", "Tip Mach"}}
 	for i := range s.Flight.Legs {
 		l := &s.Flight.Legs[i]
-		if l.Leg.Kind == mission.Landing {
+		if l.Leg.Kind == mission.Landing || l.Leg.Kind == mission.Drop || l.Leg.Kind == mission.PickUp || l.Leg.Kind == mission.Contingency {
 			continue
 		}
 		o := &l.End.Output
@@ -109,8 +109,7 @@ func plantGrid(s *study.Study, sys units.System) Grid {
 
 // leastInHand is the smallest thrust in hand of an airborne leg in percent.
 func leastInHand(s *study.Study, leg int) string {
-	switch s.Project.Spec.Legs[leg].Kind {
-	case mission.Taxi, mission.TakeOff, mission.Landing:
+	if !s.Project.Spec.Legs[leg].Airborne() {
 		return "–"
 	}
 	least, found := 0.0, false

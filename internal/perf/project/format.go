@@ -41,6 +41,7 @@ var added = map[string]string{
 	"variants.aircraft.airframe.landing.lift_given":   `"cl-max"`,
 	"variants.aircraft.airframe.landing.stall_speed":  "0",
 	"variants.aircraft.airframe.landing.stall_mass":   "0",
+	"legs.turns": "1", "legs.heading": "3.141592653589793", "legs.bank": "0.5235987755982988", "legs.load_factor": "2", "legs.payload": "10", "legs.share": "0.05",
 }
 
 // formatOf is the number of the format that the document states, 0 where it states none that Decode reads.
