@@ -107,20 +107,25 @@ func plantGrid(s *study.Study, sys units.System) Grid {
 	return g
 }
 
-// leastInHand is the smallest thrust in hand of an airborne leg in percent.
-func leastInHand(s *study.Study, leg int) string {
+// tightestOf is the sample of an airborne leg with the least thrust in hand; nil when it has none.
+func tightestOf(s *study.Study, leg int) *mission.Sample {
 	if !s.Project.Spec.Legs[leg].Airborne() {
-		return "–"
+		return nil
 	}
-	least, found := 0.0, false
+	var least *mission.Sample
 	for i := range s.Flight.Trace {
 		t := &s.Flight.Trace[i]
-		if t.Leg == leg && t.Required > 0 && (!found || t.Ratio() < least) {
-			least, found = t.Ratio(), true
+		if t.Leg == leg && t.Required > 0 && (least == nil || t.Ratio() < least.Ratio()) {
+			least = t
 		}
 	}
-	if !found {
-		return "–"
+	return least
+}
+
+// leastInHand is the smallest thrust in hand of an airborne leg in percent.
+func leastInHand(s *study.Study, leg int) string {
+	if t := tightestOf(s, leg); t != nil {
+		return units.Fixed(100*t.Ratio(), 0)
 	}
-	return units.Fixed(100*least, 0)
+	return "–"
 }
