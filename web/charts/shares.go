@@ -89,7 +89,7 @@ const (
 	sharesWidth = 860.0
 	mostName    = 190.0 // the most that names take beside the bars
 	columnGap   = 26.0
-	bar         = 11.0
+	bar         = 13.0
 	wholeBar    = 15.0
 	barPad      = 5.0 // between a bar and its label
 )
@@ -287,9 +287,10 @@ func (f *cascade) label(column, row int) words {
 		w.x, w.anchor = x0-barPad, 1
 	default:
 		w.x, w.anchor = (x0+x1)/2, 0.5
-		if p.Fill == "solid" {
+		switch p.Fill {
+		case "solid":
 			w.class = "panel"
-		} else {
+		case "hatched":
 			w.extra = "halo"
 		}
 	}

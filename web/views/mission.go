@@ -150,7 +150,7 @@ func missionGrid(s *study.Study, sys units.System) Grid {
 		word, q = "Energy", units.Energy
 	}
 	g := Grid{Caption: "The mission leg by leg", Head: []string{"Leg", "Time" + unitOf(sys, units.Duration), "Distance" + unitOf(sys, units.Distance), "Altitude" + unitOf(sys, units.Altitude),
-		"TAS" + unitOf(sys, units.Speed), word + unitOf(sys, q), word + " left" + unitOf(sys, q), "Mass at end" + unitOf(sys, units.Mass), "Least in hand" + unitOf(sys, units.Force), "Least in hand, %", "Where it is least"}}
+		"TAS" + unitOf(sys, units.Speed), word + unitOf(sys, q), word + " left" + unitOf(sys, q), "Mass at end" + unitOf(sys, units.Mass), "Least in hand", "Where"}}
 	for i := range s.Flight.Legs {
 		l := &s.Flight.Legs[i]
 		took, left := l.Fuel, l.End.Fuel
@@ -158,15 +158,15 @@ func missionGrid(s *study.Study, sys units.System) Grid {
 			took, left = l.Energy, l.End.Charge
 		}
 		row := []string{fmt.Sprintf("%d · %s", i+1, legName(s, i)), sys.Number(units.Duration, l.Time), sys.Number(units.Distance, l.Distance),
-			"", "–", sys.Number(q, took), sys.Number(q, left), sys.Number(units.Mass, l.End.Mass), "–", "–", "–"}
+			"", "–", sys.Number(q, took), sys.Number(q, left), sys.Number(units.Mass, l.End.Mass), "–", "–"}
 		from := l.Start.Altitude
 		if first, last := endsOf(s, i); first != nil {
 			from, row[4] = first.Altitude, span(sys, units.Speed, first.TAS, last.TAS)
 		}
 		row[3] = span(sys, units.Altitude, from, l.End.Altitude)
 		if t := tightestOf(s, i); t != nil {
-			row[8], row[9] = sys.Number(units.Force, t.Available-t.Required), units.Fixed(100*t.Ratio(), 0)
-			row[10] = fmt.Sprintf("%s it, %s", whenIn(s, t, sys), sys.Format(units.Altitude, t.Altitude))
+			row[8] = sys.Format(units.Force, t.Available-t.Required) + ", " + percent(t.Ratio())
+			row[9] = whenWithin(s, t, sys) + ", " + sys.Format(units.Altitude, t.Altitude)
 		}
 		g.Rows = append(g.Rows, row)
 	}
@@ -174,6 +174,15 @@ func missionGrid(s *study.Study, sys units.System) Grid {
 		g.Reason = "No leg was flown."
 	}
 	return g
+}
+
+// whenWithin says when in its leg a sample stands, where the leg is named beside it.
+func whenWithin(s *study.Study, t *mission.Sample, sys units.System) string {
+	text, ends := strings.CutSuffix(whenIn(s, t, sys), " of")
+	if ends {
+		return text
+	}
+	return strings.TrimSuffix(text, "to")
 }
 
 // span words a value at the start and at the end of a leg; once, where it does not change.
@@ -253,7 +262,7 @@ func askedOf(l *mission.Leg, sys units.System) string {
 	at := " at " + sys.Format(units.Altitude, l.Altitude)
 	switch {
 	case l.Kind == mission.Contingency:
-		return fmt.Sprintf("%s of the trip, %s of holding%s or more", percent(l.Share), sys.Format(units.Duration, l.Time), at)
+		return fmt.Sprintf("the greater of %s of the trip and %s of holding%s", percent(l.Share), sys.Format(units.Duration, l.Time), at)
 	case l.Kind == mission.Reserve && l.Extent == mission.ByTime:
 		return sys.Format(units.Duration, l.Time) + at
 	}

@@ -167,13 +167,15 @@ func (f *flier) keepBack(part *ReservePart, l *Leg, held int) {
 func (f *flier) judge() {
 	res := &f.out.Reserve
 	res.Met = res.Asked
+	contingent := false // the reason is a contingency's
 	for i := range res.Parts {
 		part := &res.Parts[i]
 		if part.Kind == Contingency && part.Met {
 			f.enough(part)
 		}
-		if !part.Met && res.Met {
-			res.Met, res.Reason = false, part.Reason
+		// What ended the flight says more than what is then missing.
+		if !part.Met && (res.Met || contingent && part.Kind != Contingency) {
+			res.Met, res.Reason, contingent = false, part.Reason, part.Kind == Contingency
 		}
 	}
 	if res.Asked && f.out.Failure != nil {

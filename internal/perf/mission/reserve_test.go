@@ -138,6 +138,9 @@ func TestReserveParts(t *testing.T) {
 		if f.Reserve.Met != (want == [3]bool{true, true, true}) || f.Reserve.Met != f.Reserve.Reason.Empty() {
 			t.Errorf("%g kg: met %v, %s", fuel, f.Reserve.Met, plain(f.Reserve.Reason))
 		}
+		if fuel == 8 && !regexp.MustCompile(runsDry).MatchString(plain(f.Reserve.Reason)) {
+			t.Errorf("%g kg: %s", fuel, plain(f.Reserve.Reason))
+		}
 		if math.Abs(f.Reserve.Left) > 0 && f.Flown() {
 			near(t, "left", f.Reserve.Left, fuel-f.Fuel-f.Reserve.Fuel, 1e-9)
 		}
