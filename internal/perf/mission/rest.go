@@ -30,13 +30,24 @@ func (f *flier) settleRest(l *Leg) error {
 	if err == nil {
 		return units.Errorf(nil, "it has no end: it draws no energy")
 	}
-	if over, _ := f.over(l, far); over > 0 {
+	least, _ := f.over(l, far)
+	if least > 0 {
 		return err // it ends before the energy does
 	}
-	if over, after := f.over(l, 0); over < 0 {
+	most, after := f.over(l, 0)
+	if most < 0 {
 		return f.tooLittle(after)
 	}
-	root, err := numeric.Root(func(d float64) float64 { over, _ := f.over(l, d); return over }, 0, far, 1e-10)
+	root, err := numeric.Root(func(d float64) float64 {
+		switch d {
+		case 0:
+			return most
+		case far:
+			return least
+		}
+		over, _ := f.over(l, d)
+		return over
+	}, 0, far, 1e-10)
 	l.Distance = root.X
 	return err
 }
