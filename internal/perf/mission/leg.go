@@ -287,7 +287,7 @@ func (l *Leg) Inputs() []input.Entry {
 		input.Num(&share, &l.Share).If(l.Kind == Contingency),
 		input.Pick("day_given", "Day", &l.DayGiven, input.Option{Value: ProjectDay, Label: "the project's"}, input.Option{Value: OwnDay, Label: "its own"}).If(air),
 		input.Num(&deviation, &l.Deviation).If(air && l.DayGiven == OwnDay),
-		input.Num(&headWind, &l.HeadWind).If(air && !turning),
+		input.Num(&headWind, &l.HeadWind).If(air),
 	}
 }
 

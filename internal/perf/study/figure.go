@@ -216,7 +216,7 @@ func (s *Study) groundSpeed() {
 			wind = s.TakeOff.Place.HeadWind
 		case mission.Landing:
 			wind = s.Landing.Place.HeadWind
-		case mission.Loiter, mission.Reserve:
+		case mission.Loiter, mission.Reserve, mission.Turns:
 			wind = -math.Abs(wind)
 		}
 		if v := math.Sqrt(math.Max(0, t.TAS*t.TAS-t.Rate*t.Rate)) - wind; v > greatest {

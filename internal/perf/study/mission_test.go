@@ -108,3 +108,13 @@ func TestReserveWarnings(t *testing.T) {
 		t.Errorf("the interface says %+v", a)
 	}
 }
+
+// In turns the wind is met from behind at some moment, whatever its sign.
+func TestGroundSpeedInTurns(t *testing.T) {
+	for _, wind := range []float64{12, -12} {
+		s := withLegs(t, []mission.Leg{changed(mission.Turns, func(l *mission.Leg) { l.SpeedRule, l.Speed, l.HeadWind = mission.ByTAS, 48, wind })}, nil)
+		if got := s.Figure("ground_speed").Value; math.Abs(got-60) > 1e-9 {
+			t.Errorf("wind %g m/s: %g m/s over the ground, want 60", wind, got)
+		}
+	}
+}
