@@ -139,3 +139,9 @@ func TestMissionOfFortyLegs(t *testing.T) {
 	p.fitsAt("mission of forty legs")
 	p.audits("mission of forty legs", some[:1])
 }
+
+func TestMissionUgly(t *testing.T) {
+	p, _ := missionPage(t, ugly())
+	has(t, p.text(headline), "Does not fly")
+	p.fitsAt("ugly mission")
+}
