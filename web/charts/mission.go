@@ -201,7 +201,11 @@ func (t *trace) store(s *study.Study, sys units.System) Panel {
 	})
 	if r := s.Flight.Reserve; s.Flight.Flown() && r.Asked && !r.Met && len(y) > 0 {
 		last := len(y) - 1
-		p.Flags = []Flag{{X: t.time[last], Y: m.of(y[last]), Label: "reserve ends here", Class: "required"}}
+		label := "reserve ends here"
+		if r.Flown >= r.Wanted {
+			label = "reserve not met"
+		}
+		p.Flags = []Flag{{X: t.time[last], Y: m.of(y[last]), Label: label, Class: "required"}}
 	}
 	return p
 }
@@ -210,6 +214,7 @@ func (t *trace) store(s *study.Study, sys units.System) Panel {
 var shortKinds = map[string]string{
 	mission.Taxi: "taxi", mission.TakeOff: "t/o", mission.Climb: "climb", mission.Cruise: "cruise",
 	mission.Loiter: "loiter", mission.Descent: "desc.", mission.Landing: "land", mission.Reserve: "res.",
+	mission.Dash: "dash", mission.Turns: "turns", mission.Drop: "drop", mission.PickUp: "p/up", mission.Alternate: "alt.", mission.Contingency: "cont.",
 }
 
 // legSpans are the legs that took time.
@@ -267,8 +272,13 @@ func missionWords(s *study.Study, sys units.System, force measure) string {
 		text += " It keeps no reserve."
 	case !r.Met:
 		text += fmt.Sprintf(" The reserve is not met: %s.", r.Reason.In(sys))
-	default:
+	case r.Has(mission.Reserve):
 		text += fmt.Sprintf(" The reserve is flown in full, %s.", hours(r.Flown))
+	default:
+		text += " It has no reserve leg."
+	}
+	if r := f.Reserve; r.Kept > 0 {
+		text += fmt.Sprintf(" Contingencies ask for %s to be left.", massWords(sys, r.Kept))
 	}
 	return text
 }

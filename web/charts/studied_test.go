@@ -3,11 +3,13 @@ package charts
 import (
 	"bytes"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 	"sync"
 	"testing"
 
+	"legwright/internal/perf/mission"
 	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/study"
@@ -72,6 +74,45 @@ func charged() *study.Study {
 	return s
 }
 
+// everyKind is the demo with a mission of every kind of leg, among them a cruise for the rest of the range.
+func everyKind() *project.Spec {
+	s := project.Demo()
+	add := func(kind, name string, change func(*mission.Leg)) {
+		l := mission.NewLeg(kind, name)
+		if change != nil {
+			change(&l)
+		}
+		s.Legs = append(s.Legs, l)
+	}
+	rest := s.Legs[3]
+	rest.Name, rest.Extent = "The rest", mission.ForTheRest
+	s.Legs = s.Legs[:3:3]
+	add(mission.Dash, "Dash", func(l *mission.Leg) { l.Distance = 15e3 })
+	add(mission.Turns, "Turns", func(l *mission.Leg) { l.Turns = 3 })
+	add(mission.Loiter, "Loiter", nil)
+	add(mission.Drop, "Drop", func(l *mission.Leg) { l.Payload = 30 })
+	add(mission.PickUp, "Pick up", nil)
+	s.Legs = append(s.Legs, rest)
+	add(mission.Descent, "Descend", func(l *mission.Leg) { l.Altitude, l.Speed = 720, 45 })
+	add(mission.Landing, "Land", nil)
+	add(mission.Alternate, "Alternate", func(l *mission.Leg) { l.Distance = 60e3 })
+	add(mission.Contingency, "Contingency", nil)
+	add(mission.Reserve, "Reserve", nil)
+	return s
+}
+
+// fortyLegs is the demo with many legs whose names are as long as they may be.
+func fortyLegs() *project.Spec {
+	s := project.Demo()
+	short := s.Legs[3]
+	short.Distance = 5e3
+	for i := range 31 {
+		short.Name = strings.Repeat("Long leg name ", 5)[:56] + strconv.Itoa(100+i)
+		s.Legs = slices.Insert(s.Legs, 4, short)
+	}
+	return s
+}
+
 // cases are the demo, aircraft of other sizes, and studies with parts that have no answer.
 var cases = sync.OnceValue(func() []studied {
 	high := project.Demo()
@@ -99,6 +140,8 @@ var cases = sync.OnceValue(func() []studied {
 		{"outside the air", studyOf(project.Demo(), 0, func(v *study.View) { v.Altitude = 1e6 })},
 		{"reserve not met", studyOf(thirsty, 0, nil)},
 		{"charged", charged()},
+		{"every kind", studyOf(everyKind(), 0, nil)},
+		{"forty legs", studyOf(fortyLegs(), 0, nil)},
 	}
 })
 

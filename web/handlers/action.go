@@ -9,7 +9,6 @@ import (
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/input"
-	"legwright/internal/perf/mission"
 	"legwright/internal/perf/project"
 )
 
@@ -29,25 +28,6 @@ func act(s *project.Spec, variant int, action string) (string, error) {
 		})
 	case "add-component", "copy-component", "remove-component":
 		return actOnComponents(v, verb, arg)
-	case "add-leg":
-		s.Legs = append(s.Legs, mission.NewLeg(mission.Cruise, "New leg"))
-		return "Leg added", nil
-	case "insert-leg":
-		i, err := index(arg, len(s.Legs))
-		if err != nil {
-			return "", err
-		}
-		s.Legs = slices.Insert(s.Legs, i+1, mission.NewLeg(mission.Cruise, "New leg"))
-		return fmt.Sprintf("Leg added after “%s”", s.Legs[i].Name), nil
-	case "remove-leg":
-		return removed(&s.Legs, arg, "Leg", func(i int) string { return s.Legs[i].Name })
-	case "move-leg-up":
-		i, err := index(arg, len(s.Legs))
-		if err != nil || i == 0 {
-			return "", noAction(action)
-		}
-		s.Legs[i-1], s.Legs[i] = s.Legs[i], s.Legs[i-1]
-		return fmt.Sprintf("Leg “%s” moved earlier", s.Legs[i-1].Name), nil
 	case "copy-variant":
 		copied := s.Clone().Variants[variant]
 		copied.ID, copied.Name = freeID(s), clip("Copy of "+copied.Name)
@@ -74,7 +54,7 @@ func act(s *project.Spec, variant int, action string) (string, error) {
 	case "remove-requirement":
 		return removed(&s.Requirements, arg, "Requirement", func(i int) string { return s.Requirements[i].Kind().Label })
 	}
-	return "", noAction(action)
+	return actOnLeg(s, action)
 }
 
 // freeID is an identifier that no variant of the document has: a, b, … then v27, v28, ….

@@ -59,7 +59,7 @@ func (e *edit) clash(shown input.Entry, text string) error {
 func (e *edit) actionClash(action string) error {
 	verb, arg, _ := strings.Cut(action, " ")
 	ours := fmt.Sprintf("variants[%d].aircraft.", e.variant)
-	list := map[string]string{"remove-item": ours + "weights.items", "copy-component": ours + componentList, "remove-component": ours + componentList, "remove-leg": "legs", "move-leg-up": "legs", "insert-leg": "legs",
+	list := map[string]string{"remove-item": ours + "weights.items", "copy-component": ours + componentList, "remove-component": ours + componentList, "remove-leg": "legs", "move-leg-up": "legs", "move-leg-down": "legs", "insert-leg": "legs", "duplicate-leg": "legs",
 		"remove-requirement": "requirements"}[verb]
 	if _, err := strconv.Atoi(arg); err != nil || list == "" || e.base == e.head {
 		return nil

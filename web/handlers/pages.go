@@ -20,6 +20,7 @@ type editPage struct {
 var editPages = map[string]editPage{
 	"":             {"", benchPage},
 	"requirements": {"/requirements", requirementsPage},
+	"mission":      {"/mission", missionPage},
 }
 
 // pageName is the page on which the edit was made; the bench answers for one that is not known.
@@ -50,4 +51,9 @@ func benchPage(st *study.Study, state views.State) (page, part templ.Component) 
 func requirementsPage(st *study.Study, state views.State) (page, part templ.Component) {
 	p := views.NewRequirements(st, state)
 	return views.RequirementsPage(p), views.RequirementsBody(p)
+}
+
+func missionPage(st *study.Study, state views.State) (page, part templ.Component) {
+	m := views.NewMission(st, state)
+	return views.MissionPage(m), views.MissionBody(m)
 }

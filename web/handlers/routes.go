@@ -64,6 +64,7 @@ func New(cfg Config) (http.Handler, error) {
 		r.Get("/variants/{variant}/drag", s.serve(s.analysis("/drag", drag)))
 		r.Get("/variants/{variant}/climb", s.serve(s.analysis("/climb", climb)))
 		r.Get("/variants/{variant}/strip", s.serve(s.analysis("/strip", strip)))
+		r.Get("/variants/{variant}/mission", s.serve(s.editable("mission")))
 		r.Get("/variants/{variant}/requirements", s.serve(s.editable("requirements")))
 		r.Get("/variants/{variant}/powerplant", s.serve(s.analysis("/powerplant", plant)))
 		r.Get("/variants/{variant}/working", s.serve(s.analysis("/working", working)))

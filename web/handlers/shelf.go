@@ -97,9 +97,12 @@ func (s *site) copyProject(w http.ResponseWriter, r *http.Request) error {
 	return nil
 }
 
-func clip(name string) string {
-	if runes := []rune(name); len(runes) > longestName {
-		return string(runes[:longestName])
+func clip(name string) string { return clipTo(name, longestName) }
+
+// clipTo cuts a name to a number of characters.
+func clipTo(name string, most int) string {
+	if runes := []rune(name); len(runes) > most {
+		return string(runes[:most])
 	}
 	return name
 }

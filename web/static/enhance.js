@@ -42,7 +42,7 @@ document.documentElement.classList.add("scripted");
     const { ctx } = e.detail, body = ctx.request.body;
     if (!isEdit(ctx.sourceElement)) return;
     body.set("revision", document.querySelector("#bench [name=revision]").value);
-    if (/^(remove|move|insert)/.test(body.get("action") || "")) return;
+    if (/^(remove|move|insert|duplicate)/.test(body.get("action") || "")) return;
     for (const f of document.querySelectorAll("#bench .field.has-error [name]:not(.basis)")) {
       if (!body.has(f.name)) body.append(f.name, written(f));
     }

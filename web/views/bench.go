@@ -21,10 +21,7 @@ import (
 type Bench struct {
 	Frame
 	Editing
-	Verdict  Verdict
-	Tiles    []Tile
-	More     string // says how many requirements have no tile; empty when each has one
-	MoreURL  string // of the page of requirements
+	Top
 	View     ViewForm
 	Speeds   Speeds
 	Charts   Charts
@@ -35,6 +32,21 @@ type Bench struct {
 	Figures  []Row
 	Warnings []WarningView
 	Weak     string // how many inputs are placeholders or estimates
+}
+
+// A Top is what a page about the whole variant answers first.
+type Top struct {
+	Verdict Verdict
+	Tiles   []Tile
+	More    string // says how many requirements have no tile; empty when each has one
+	MoreURL string // of the page of requirements
+}
+
+// newTop makes the top of a page; here is the address of the variant.
+func newTop(s *study.Study, sys units.System, here string, st State) Top {
+	t := Top{Verdict: newVerdict(s, sys), MoreURL: here + "/requirements" + st.Query}
+	t.Tiles, t.More = tiles(s, sys, here+"/working")
+	return t
 }
 
 // A Link is a way to another page.
@@ -131,9 +143,7 @@ func NewBench(s *study.Study, st State) Bench {
 	sys := spec.System()
 	here := fmt.Sprintf("/projects/%d/variants/%s", st.ProjectID, v.ID)
 	b := Bench{Frame: NewFrame(s, st.ProjectID, "", st.Query, st.View), Editing: newEditing(s, st)}
-	b.Verdict = newVerdict(s, sys)
-	b.Tiles, b.More = tiles(s, sys, here+"/working")
-	b.MoreURL = here + "/requirements" + st.Query
+	b.Top = newTop(s, sys, here, st)
 	b.form(newForm(spec, s.Index, st.Refusals).groups(), st.Refusals)
 	summarise(b.Groups, s, sys)
 	b.View = newViewForm(s, sys, b.Frame)
@@ -184,6 +194,9 @@ func newVerdict(s *study.Study, sys units.System) Verdict {
 		v.Tightest = sentence(f.Failure.Reason.In(sys))
 	case len(f.Legs) == 0:
 		v.Tone, v.Headline = "caution", "The mission has no legs."
+	case f.Reserve.Asked && !f.Reserve.Met && f.Reserve.Flown >= f.Reserve.Wanted:
+		v.Tone, v.Headline = "bad", "Flies the mission but does not keep the reserve."
+		v.Tightest = sentence(f.Reserve.Reason.In(sys))
 	case f.Reserve.Asked && !f.Reserve.Met:
 		v.Tone = "bad"
 		v.Headline = fmt.Sprintf("Flies the mission but not the reserve: %s of %s.", sys.Format(units.Duration, f.Reserve.Flown), sys.Format(units.Duration, f.Reserve.Wanted))

@@ -279,7 +279,7 @@ func (f *form) strips() []Block {
 }
 
 func (f *form) legs() Group {
-	g := Group{ID: "mission", Title: "Mission"}
+	g := Group{ID: "mission", Title: "Mission", More: "Copies, every kind of leg, and what each leg takes stand on the page Mission."}
 	for i := range f.spec.Legs {
 		b := Block{Title: fmt.Sprintf("%d · %s", i+1, f.spec.Legs[i].Name), Fields: f.under(fmt.Sprintf("legs[%d]", i))}
 		n := strconv.Itoa(i)

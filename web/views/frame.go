@@ -24,6 +24,7 @@ var tabs = []struct{ Path, Label string }{
 	{"/drag", "Drag"},
 	{"/climb", "Climb and envelope"},
 	{"/strip", "Strip"},
+	{"/mission", "Mission"},
 	{"/requirements", "Requirements"},
 	{"/powerplant", "Powerplant and propeller"},
 	{"/working", "Working"},

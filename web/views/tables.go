@@ -76,7 +76,7 @@ func legGrid(s *study.Study, sys units.System) Grid {
 	for i := range s.Flight.Legs {
 		l := &s.Flight.Legs[i]
 		tas := "–"
-		if l.End.TAS > 0 && l.Leg.Kind != mission.Landing {
+		if l.End.TAS > 0 && l.Leg.Kind != mission.Landing && l.Time > 0 {
 			tas = sys.Number(units.Speed, l.End.TAS)
 		}
 		g.Rows = append(g.Rows, []string{legName(s, i), sys.Number(units.Duration, l.Time), sys.Number(units.Distance, l.Distance), sys.Number(units.Altitude, l.End.Altitude),
@@ -91,7 +91,7 @@ func plantGrid(s *study.Study, sys units.System) Grid {
 		"Engine speed" + unitOf(sys, units.Rotation), "Propeller efficiency, %", "Tip Mach"}}
 	for i := range s.Flight.Legs {
 		l := &s.Flight.Legs[i]
-		if l.Leg.Kind == mission.Landing {
+		if l.Leg.Kind == mission.Landing || l.Leg.Kind == mission.Drop || l.Leg.Kind == mission.PickUp || l.Leg.Kind == mission.Contingency {
 			continue
 		}
 		o := &l.End.Output
@@ -107,21 +107,25 @@ func plantGrid(s *study.Study, sys units.System) Grid {
 	return g
 }
 
-// leastInHand is the smallest thrust in hand of an airborne leg in percent.
-func leastInHand(s *study.Study, leg int) string {
-	switch s.Project.Spec.Legs[leg].Kind {
-	case mission.Taxi, mission.TakeOff, mission.Landing:
-		return "–"
+// tightestOf is the sample of an airborne leg with the least thrust in hand; nil when it has none.
+func tightestOf(s *study.Study, leg int) *mission.Sample {
+	if !s.Project.Spec.Legs[leg].Airborne() {
+		return nil
 	}
-	least, found := 0.0, false
+	var least *mission.Sample
 	for i := range s.Flight.Trace {
 		t := &s.Flight.Trace[i]
-		if t.Leg == leg && t.Required > 0 && (!found || t.Ratio() < least) {
-			least, found = t.Ratio(), true
+		if t.Leg == leg && t.Required > 0 && (least == nil || t.Ratio() < least.Ratio()) {
+			least = t
 		}
 	}
-	if !found {
-		return "–"
+	return least
+}
+
+// leastInHand is the smallest thrust in hand of an airborne leg in percent.
+func leastInHand(s *study.Study, leg int) string {
+	if t := tightestOf(s, leg); t != nil {
+		return units.Fixed(100*t.Ratio(), 0)
 	}
-	return units.Fixed(100*least, 0)
+	return "–"
 }

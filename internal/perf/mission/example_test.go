@@ -65,7 +65,7 @@ var sink mission.Flight
 
 func BenchmarkFly(b *testing.B) {
 	demo, whole := build(b, project.Demo()), scipyProject(b)
-	for name, p := range map[string]*project.Project{"demo": demo, "whole": whole} {
+	for name, p := range map[string]*project.Project{"demo": demo, "whole": whole, "every kind": kindsProject(b)} {
 		b.Run(name, func(b *testing.B) {
 			b.ReportAllocs()
 			for b.Loop() {

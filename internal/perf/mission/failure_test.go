@@ -22,6 +22,22 @@ func carrying(t testing.TB, fuel float64) *aircraft.Aircraft {
 	return aircrafttest.Build(t, s)
 }
 
+// unladen is carrying without payload.
+func unladen(t testing.TB, fuel float64) *aircraft.Aircraft {
+	s := aircrafttest.Homebuilt(powerplant.FixedPitch)
+	tank := &s.Powerplant.Model.(*powerplant.PistonPropeller).Fuel
+	tank.Volume = tank.Unusable + fuel/tank.Density
+	s.Weights.Items = nil
+	return aircrafttest.Build(t, s)
+}
+
+// flimsy is the homebuilt with a low never-exceed speed.
+func flimsy(t testing.TB) *aircraft.Aircraft {
+	s := aircrafttest.Homebuilt(powerplant.FixedPitch)
+	s.Airframe.NeverExceed = 50
+	return aircrafttest.Build(t, s)
+}
+
 // powered is the homebuilt with an engine of the rated power in W.
 func powered(t testing.TB, rated float64) *aircraft.Aircraft {
 	s := aircrafttest.Homebuilt(powerplant.FixedPitch)
@@ -128,6 +144,29 @@ func onTheStrip(t testing.TB) map[string]failing {
 	}
 }
 
+// otherKinds end a dash, turns or a load because of what they ask for.
+func otherKinds(t testing.TB) map[string]failing {
+	a := carrying(t, 60)
+	turns := func(change func(*mission.Leg)) *mission.Plan {
+		return on(t, 0, 500, "dry-asphalt", leg(mission.Turns, change))
+	}
+	dash := func(fuel float64, change func(*mission.Leg)) failing {
+		return failing{carrying(t, fuel), on(t, 0, 500, "dry-asphalt", leg(mission.Dash, change)), runsDry}
+	}
+	const turning = `^in a turn at a load factor of ` + number + `: `
+	return map[string]failing{
+		"turn beyond the lift":       {a, turns(func(l *mission.Leg) { l.SpeedRule, l.Speed, l.Bank = mission.ByTAS, 35, 1.1 }), turning + `its speed of 35\.0.m/s is below the stall at ` + number + `m/s$`},
+		"turn beyond the thrust":     {a, turns(func(l *mission.Leg) { l.SpeedRule, l.Speed, l.Bank = mission.ByTAS, 60, 1.05 }), turning + `thrust required, ` + number + `N, exceeds thrust available, ` + number + `N, at 60\.0.m/s$`},
+		"turn beyond it at its best": {a, turns(func(l *mission.Leg) { l.Bank = 1.2 }), turning + `thrust required, `},
+		"turn beyond any speed":      {flimsy(t), turns(func(l *mission.Leg) { l.Path, l.Load = mission.ByLoad, 6 }), turning + `the stall at this load factor, ` + number + `m/s, lies above the never-exceed speed, ` + number + `m/s$`},
+		"turns until dry":            {carrying(t, 2), turns(func(l *mission.Leg) { l.Turns = 1000 }), turning + `the fuel is used up after `},
+		"dash until dry":             dash(3, func(l *mission.Leg) { l.Distance = 2e6 }),
+		"dash for too long":          dash(3, func(l *mission.Leg) { l.Extent, l.Time = mission.ByTime, 1e5 }),
+		"dash above the ceiling":     {a, on(t, 0, 9000, "dry-asphalt", leg(mission.Dash, nil)), `^no level flight at 9000.m`},
+		"drop of more than there is": {a, on(t, 0, 0, "dry-asphalt", leg(mission.Drop, func(l *mission.Leg) { l.Payload = 900 })), `^it drops 900\.0.kg where ` + number + `kg of payload is aboard$`},
+	}
+}
+
 // plain is the message in metric units with plain blanks.
 func plain(m units.Message) string {
 	return strings.NewReplacer("\u00a0", " ", "\u202f", "").Replace(m.In(units.Metric))
@@ -135,25 +174,31 @@ func plain(m units.Message) string {
 
 // Every way in which a leg can fail ends the mission there and says why in one sentence with its numbers.
 func TestFailures(t *testing.T) {
-	for _, list := range []map[string]failing{fuelRunsOut(t), speedsThatCannotBe(t), onTheStrip(t)} {
+	for _, list := range []map[string]failing{fuelRunsOut(t), speedsThatCannotBe(t), onTheStrip(t), otherKinds(t)} {
 		for what, c := range list {
 			c.plan.Legs = append(c.plan.Legs, mission.NewLeg(mission.Taxi, "never"))
-			f := mission.Fly(c.a, c.plan)
-			if f.Flown() || f.Failure.Leg != 0 || f.Failure.Err == nil || len(f.Legs) != 1 || f.Failure.Name != "the "+c.plan.Legs[0].Kind {
-				t.Errorf("%s: %+v after %d legs", what, f.Failure, len(f.Legs))
-				continue
-			}
-			for _, sys := range units.Systems {
-				if said := f.Failure.Reason.In(sys); said == "" || regexp.MustCompile(`NaN|Inf|%!|\{\}`).MatchString(said) {
-					t.Errorf("%s: says %q", what, said)
-				}
-			}
-			if said := plain(f.Failure.Reason); !regexp.MustCompile(c.want).MatchString(said) {
-				t.Errorf("%s: says %q", what, said)
-			}
-			healthy(t, &f)
+			c.check(t, what)
 		}
 	}
+}
+
+// check flies a plan whose first leg fails.
+func (c failing) check(t *testing.T, what string) {
+	t.Helper()
+	f := mission.Fly(c.a, c.plan)
+	if f.Flown() || f.Failure.Leg != 0 || f.Failure.Err == nil || len(f.Legs) != 1 || f.Failure.Name != c.plan.Legs[0].Title() {
+		t.Errorf("%s: %+v after %d legs", what, f.Failure, len(f.Legs))
+		return
+	}
+	for _, sys := range units.Systems {
+		if said := f.Failure.Reason.In(sys); said == "" || regexp.MustCompile(`NaN|Inf|%!|\{\}`).MatchString(said) {
+			t.Errorf("%s: says %q", what, said)
+		}
+	}
+	if said := plain(f.Failure.Reason); !regexp.MustCompile(c.want).MatchString(said) {
+		t.Errorf("%s: says %q", what, said)
+	}
+	healthy(t, &f)
 }
 
 // The never-exceed speed is met on the way where the Mach number becomes that airspeed.

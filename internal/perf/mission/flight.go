@@ -55,8 +55,11 @@ type LegResult struct {
 	Energy   float64 // drawn electrically in J
 	Time     float64 // in s
 	Distance float64 // over the ground in m
+	Payload  float64 // taken aboard in kg, negative when dropped
 	Run      *runway.Run
 	Notes    []units.Message
+
+	err error // why it was not flown to its end
 }
 
 // A Failure is where and why the mission ended.
@@ -66,18 +69,6 @@ type Failure struct {
 	Reason units.Message
 	Err    error
 	At     Sample
-}
-
-// A ReserveResult is what the reserve legs asked for and got.
-type ReserveResult struct {
-	Asked  bool
-	Met    bool
-	Fuel   float64 // that the reserve takes in kg
-	Energy float64 // that the reserve takes in J
-	Wanted float64 // time asked for in s
-	Flown  float64 // time flown in s
-	Left   float64 // usable fuel left after it in kg
-	Reason units.Message
 }
 
 // A Flight is a mission as flown.
@@ -102,6 +93,10 @@ type flier struct {
 	plan *Plan
 	now  Sample
 	out  Flight
+
+	carried float64             // payload taken aboard since the start in kg, negative when dropped
+	holding []powerplant.Output // of each contingency leg, at best endurance
+	trial   bool                // flown only to see what is left: keeps no samples
 }
 
 // Fly flies the plan. A leg that cannot be flown ends the mission there with a
@@ -112,15 +107,21 @@ func Fly(a *aircraft.Aircraft, plan *Plan) Flight {
 	if len(plan.Places) > 0 {
 		f.now.Altitude = plan.Places[0].Air.PressureAltitude
 	}
-	for i := range plan.Legs {
-		f.now.Leg = i
-		if !f.fly(&plan.Legs[i]) {
-			break
-		}
-	}
+	f.onward(0)
 	f.totals()
 	f.tightest()
 	return f.out
+}
+
+// onward flies the legs from the index first to the end of the mission, or until one cannot be flown.
+func (f *flier) onward(first int) {
+	for i := first; i < len(f.plan.Legs); i++ {
+		f.now.Leg = i
+		if !f.fly(&f.plan.Legs[i]) {
+			break
+		}
+	}
+	f.account()
 }
 
 // fly flies one leg and reports whether the mission goes on.
@@ -134,58 +135,43 @@ func (f *flier) fly(l *Leg) bool {
 		r.Run, err = f.takeOff(l)
 	case Landing:
 		r.Run, err = f.land(l, &r)
+	case Drop, PickUp:
+		r.Payload, err = f.reload(l)
+	case Contingency:
+		err = f.hold(l)
+	case Alternate:
+		err = f.divert(l, &r)
+	case Turns:
+		err = f.turn(l, &r)
 	default:
-		err = f.path(l, &r)
+		if l.Rests() {
+			err = f.settleRest(&r.Leg)
+		}
+		if err == nil {
+			err = f.path(&r.Leg, &r)
+		}
 	}
 	r.End = f.now
 	r.Fuel, r.Energy = r.Start.Fuel-r.End.Fuel, r.Start.Charge-r.End.Charge
 	r.Time, r.Distance = r.End.Time-r.Start.Time, r.End.Distance-r.Start.Distance
+	r.err = err
 	f.out.Legs = append(f.out.Legs, r)
-	if l.Kind == Reserve {
-		f.reserve(l, &r, err)
+	if err != nil && !l.Spare() {
+		f.out.Failure = &Failure{Leg: f.now.Leg, Name: l.Title(), Reason: units.Explain(err), Err: err, At: f.now}
 	}
-	if err == nil {
-		return true
-	}
-	if l.Kind == Reserve {
-		return false
-	}
-	f.out.Failure = &Failure{Leg: f.now.Leg, Name: l.Title(), Reason: units.Explain(err), Err: err, At: f.now}
-	return false
-}
-
-func (f *flier) reserve(l *Leg, r *LegResult, err error) {
-	res := &f.out.Reserve
-	if !res.Asked {
-		res.Asked, res.Met = true, true
-	}
-	res.Fuel += r.Fuel
-	res.Energy += r.Energy
-	res.Flown += r.Time
-	res.Left = f.now.Fuel
-	if l.byTime() {
-		res.Wanted += l.Time
-	}
-	if err != nil {
-		res.Met, res.Reason = false, units.Explain(err)
-	}
+	return err == nil
 }
 
 func (f *flier) totals() {
 	for i := range f.out.Legs {
 		r := &f.out.Legs[i]
-		if r.Leg.Kind == Reserve {
+		if r.Leg.Spare() {
 			continue
 		}
 		f.out.Time += r.Time
 		f.out.Distance += r.Distance
 		f.out.Fuel += r.Fuel
 		f.out.Energy += r.Energy
-	}
-	for i := range f.plan.Legs {
-		if f.plan.Legs[i].Kind == Reserve && !f.out.Reserve.Asked {
-			f.out.Reserve = ReserveResult{Asked: true, Reason: units.Say("the mission ended before the reserve")}
-		}
 	}
 }
 
@@ -195,7 +181,7 @@ func (f *flier) tightest() {
 	for i := range f.out.Trace {
 		s := &f.out.Trace[i]
 		l := &f.plan.Legs[s.Leg]
-		if !l.airborne() || l.SpeedRule == Maximum || s.Required <= 0 {
+		if !l.Airborne() || l.SpeedRule == Maximum || s.Required <= 0 {
 			continue
 		}
 		if f.out.Tightest == nil || s.Ratio() < f.out.Tightest.Ratio() {
@@ -323,4 +309,25 @@ func onStrip(run *runway.Run, at runway.Place) error {
 	return units.Errorf(runway.ErrNoRun, "its ground roll of {} is longer than the strip, {}", units.Of(units.FieldLength, run.Ground), units.Of(units.FieldLength, at.Strip.Length))
 }
 
-func (f *flier) keep() { f.out.Trace = append(f.out.Trace, f.now) }
+func (f *flier) keep() {
+	if !f.trial {
+		f.out.Trace = append(f.out.Trace, f.now)
+	}
+}
+
+// dryMass is the mass without usable fuel, with the payload now aboard, in kg.
+func (f *flier) dryMass() float64 { return f.a.DryMass() + f.carried }
+
+// reload drops or picks up payload and returns the change in kg.
+func (f *flier) reload(l *Leg) (float64, error) {
+	change := l.Payload
+	if l.Kind == Drop {
+		change = -change
+		if aboard := f.a.Payload() + f.carried; l.Payload > aboard*(1+1e-12) {
+			return 0, units.Errorf(nil, "it drops {} where {} of payload is aboard", units.Of(units.Mass, l.Payload), units.Of(units.Mass, aboard))
+		}
+	}
+	f.carried += change
+	f.now.Mass += change
+	return change, nil
+}

@@ -14,7 +14,7 @@ const shortOfSpeed = 1e-4
 
 // level balances level flight at the scheduled speed.
 func (r *rider) level(m *moment) error {
-	l, err := pointperf.LevelAt(r.f.a, &m.point, m.tas)
+	l, err := pointperf.LevelAtLoad(r.f.a, &m.point, m.tas, r.load)
 	m.required, m.setting, m.out = l.Required, l.Setting, l.Output
 	var short *powerplant.ThrustError
 	if !errors.As(err, &short) || short.Want > short.Available*(1+shortOfSpeed) {

@@ -22,18 +22,22 @@ type rider struct {
 	l     *Leg
 	day   atmos.Day
 	speed schedule
-	base  Sample // at the start of the leg
-	gave  string // what gave way in a descent at idle
+	load  float64 // load factor, dimensionless, >= 1: 1 but in turns
+	base  Sample  // at the start of the leg
+	gave  string  // what gave way in a descent at idle
 }
 
-// The state of the integration: distance, pressure altitude, fuel burnt, energy drawn.
+// The state of the integration: distance, pressure altitude, fuel burnt, energy
+// drawn, and, in turns only, the angle turned through.
 const (
 	atDistance = iota
 	atAltitude
 	atFuel
 	atEnergy
-	states
+	atAngle
 )
+
+var tolerances = [...]float64{atDistance: 1e-2, atAltitude: 1e-3, atFuel: 1e-7, atEnergy: 1, atAngle: 1e-6}
 
 // moment is everything about one moment of a leg.
 type moment struct {
@@ -61,7 +65,7 @@ func (f *flier) path(l *Leg, r *LegResult) error {
 	if err != nil {
 		return err
 	}
-	ride := &rider{f: f, l: l, day: day, speed: speed, base: f.now}
+	ride := &rider{f: f, l: l, day: day, speed: speed, load: l.LoadFactor(), base: f.now}
 	err = ride.run()
 	if ride.gave != "" {
 		r.Notes = append(r.Notes, units.Say("the engine idles and the {} gives way: less than idle would be needed", units.Text(ride.gave)))
@@ -69,9 +73,19 @@ func (f *flier) path(l *Leg, r *LegResult) error {
 	return err
 }
 
+// start is the state at the start of the leg.
+func (r *rider) start() []float64 {
+	y := make([]float64, atAngle, atAngle+1)
+	y[atDistance], y[atAltitude] = r.base.Distance, r.base.Altitude
+	if r.l.Kind == Turns {
+		y = append(y, 0)
+	}
+	return y
+}
+
 // run integrates the leg, keeps its samples and leaves the flier at its end.
 func (r *rider) run() error {
-	start := []float64{r.base.Distance, r.base.Altitude, 0, 0}
+	start := r.start()
 	first, err := r.moment(start)
 	if limit := r.limits(start); limit != nil {
 		// A speed out of bounds says more than the thrust that it lacks there.
@@ -89,7 +103,7 @@ func (r *rider) run() error {
 	}
 	limit, events := r.ending()
 	sol, err := numeric.Integrate(r.rates, 0, start, limit, numeric.Options{RelTol: 1e-8,
-		AbsTol: []float64{1e-2, 1e-3, 1e-7, 1}, InitialStep: math.Max(1, limit/2000), Events: events})
+		AbsTol: tolerances[:len(start)], InitialStep: math.Max(1, limit/2000), Events: events})
 	r.sample(sol)
 	if err != nil {
 		return cause(err)
@@ -112,13 +126,18 @@ func (r *rider) limits(y []float64) error {
 	if err != nil {
 		return err
 	}
-	if stall := pointperf.Stall(r.f.a, &p, nil); tas < stall*(1-1e-9) {
+	if stall := r.stall(&p); tas < stall*(1-1e-9) {
 		return belowStall(tas, stall)
 	}
 	if top := r.top(&p); tas > top*(1+1e-9) {
 		return aboveNeverExceed(tas, top)
 	}
 	return nil
+}
+
+// stall is the true airspeed of the stall at the leg's load factor in m/s.
+func (r *rider) stall(p *pointperf.Point) float64 {
+	return pointperf.Stall(r.f.a, p, nil) * math.Sqrt(r.load)
 }
 
 // top is the never-exceed speed as a true airspeed in m/s.
@@ -168,6 +187,11 @@ func (r *rider) ending() (float64, []numeric.Event) {
 		if l.Distance == 0 {
 			longest = 0
 		}
+	case l.Kind == Turns:
+		target, direction = func(_ float64, y []float64) float64 { return y[atAngle] - l.sweep() }, 1
+		if l.sweep() == 0 {
+			longest = 0
+		}
 	default:
 		longest = l.Time
 	}
@@ -202,7 +226,7 @@ func (r *rider) stallMargin(_ float64, y []float64) float64 {
 	if err != nil {
 		return 1
 	}
-	return tas - pointperf.Stall(r.f.a, &p, nil)*(1-1e-9)
+	return tas - r.stall(&p)*(1-1e-9)
 }
 
 // topMargin is the speed below the never-exceed speed in m/s, for a descent on
@@ -222,7 +246,7 @@ func (r *rider) topMargin(_ float64, y []float64) float64 {
 func (r *rider) outcome(sol *numeric.Solution) error {
 	s := sol.Stopped
 	if s == nil {
-		if r.l.byTime() || r.l.byDistance() && r.l.Distance == 0 {
+		if end, _ := sol.End(); end == 0 || r.l.byTime() {
 			return nil
 		}
 		return units.Errorf(nil, "it is not over after ten days")
@@ -245,7 +269,7 @@ func (r *rider) outcome(sol *numeric.Solution) error {
 	if s.Event == eventNeverExceed {
 		return aboveNeverExceed(m.tas, r.top(&m.point))
 	}
-	return belowStall(m.tas, pointperf.Stall(r.f.a, &m.point, nil))
+	return belowStall(m.tas, r.stall(&m.point))
 }
 
 func (r *rider) rates(_ float64, y, dydt []float64) error {
@@ -259,6 +283,9 @@ func (r *rider) rates(_ float64, y, dydt []float64) error {
 	}
 	dydt[atAltitude] = m.climb.PressureRate
 	dydt[atFuel], dydt[atEnergy] = m.out.FuelFlow, m.out.BusPower
+	if r.l.Kind == Turns {
+		dydt[atAngle] = pointperf.TurnRate(m.tas, r.load, nil)
+	}
 	return nil
 }
 
@@ -355,8 +382,12 @@ const samplesPerLeg = 16
 
 // sample keeps moments along the solution and leaves the flier at its end.
 func (r *rider) sample(sol *numeric.Solution) {
-	end, _ := sol.End()
-	y := make([]float64, states)
+	end, last := sol.End()
+	if r.f.trial {
+		r.place(end, last)
+		return
+	}
+	y := r.start()
 	for i := range samplesPerLeg + 1 {
 		t := end * float64(i) / samplesPerLeg
 		y = sol.At(t, y)
@@ -367,8 +398,7 @@ func (r *rider) sample(sol *numeric.Solution) {
 			break
 		}
 	}
-	t, last := sol.End()
-	r.place(t, last)
+	r.place(end, last)
 }
 
 // place sets the flier to a state of the leg, t seconds into it.

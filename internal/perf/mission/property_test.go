@@ -28,7 +28,7 @@ func healthy(t reporter, f *mission.Flight) {
 	t.Helper()
 	finite(t, "flight", reflect.ValueOf(*f))
 	for i, l := range f.Legs {
-		if burnt := l.Start.Mass - l.End.Mass; math.Abs(burnt-l.Fuel) > 1e-9 || l.Fuel < 0 || l.End.Fuel < 0 {
+		if burnt := l.Start.Mass - l.End.Mass + l.Payload; math.Abs(burnt-l.Fuel) > 1e-9 || l.Fuel < 0 || l.End.Fuel < 0 {
 			t.Errorf("leg %d loses %g kg and burns %g kg", i, burnt, l.Fuel)
 		}
 		if l.Time < 0 || l.Leg.HeadWind <= 0 && l.Distance < 0 {
@@ -38,8 +38,14 @@ func healthy(t reporter, f *mission.Flight) {
 			t.Errorf("leg %d does not begin where the one before it ended", i)
 		}
 	}
+	gained := func(from, to int) (mass float64) {
+		for _, l := range f.Legs[from:to] {
+			mass += l.Payload
+		}
+		return mass
+	}
 	for i := 1; i < len(f.Trace); i++ {
-		if f.Trace[i].Time < f.Trace[i-1].Time || f.Trace[i].Leg < f.Trace[i-1].Leg || f.Trace[i].Mass > f.Trace[i-1].Mass+1e-9 {
+		if f.Trace[i].Time < f.Trace[i-1].Time || f.Trace[i].Leg < f.Trace[i-1].Leg || f.Trace[i].Mass > f.Trace[i-1].Mass+gained(f.Trace[i-1].Leg, f.Trace[i].Leg)+1e-9 {
 			t.Errorf("the trace goes from %+v to %+v", f.Trace[i-1], f.Trace[i])
 		}
 	}
@@ -53,7 +59,7 @@ func tightest(t reporter, f *mission.Flight) {
 	for i := range f.Trace {
 		s := &f.Trace[i]
 		switch l := f.Legs[s.Leg].Leg; {
-		case l.Kind == mission.Taxi, l.Kind == mission.TakeOff, l.Kind == mission.Landing, l.SpeedRule == mission.Maximum, s.Required <= 0:
+		case !l.Airborne(), l.SpeedRule == mission.Maximum, s.Required <= 0:
 		default:
 			least = math.Min(least, (s.Available-s.Required)/s.Required)
 		}
@@ -96,12 +102,23 @@ func drawLeg(t *rapid.T, i int) mission.Leg {
 	pick := func(name string, from ...string) string {
 		return rapid.SampledFrom(from).Draw(t, fmt.Sprintf("%s %d", name, i))
 	}
-	l := mission.NewLeg(pick("kind", mission.Taxi, mission.TakeOff, mission.Climb, mission.Cruise, mission.Loiter, mission.Descent, mission.Landing, mission.Reserve), "")
+	l := mission.NewLeg(pick("kind", mission.Taxi, mission.TakeOff, mission.Climb, mission.Cruise, mission.Loiter, mission.Descent, mission.Landing, mission.Reserve,
+		mission.Dash, mission.Turns, mission.Drop, mission.PickUp, mission.Alternate, mission.Contingency), "")
 	l.Altitude, l.Distance, l.Time = number("altitude", -200, 6000), number("distance", 0, 300e3), number("time", 0, 5000)
 	l.Speed, l.Mach, l.Power, l.Setting = number("speed", 20, 80), number("mach", 0.08, 0.25), number("power", 0.05, 1), number("setting", 0, 1)
 	l.Rate, l.Angle, l.HeadWind = number("rate", 0.1, 10), number("angle", 0.005, 0.3), number("wind", -30, 40)
 	l.Extent = pick("extent", mission.ByDistance, mission.ByTime)
+	l.Payload, l.Share = number("payload", 0, 150), number("share", 0, 0.3)
 	switch l.Kind {
+	case mission.Turns:
+		l.Turns, l.Heading, l.Bank, l.Load = number("turns", 0, 20), number("heading", 0, 6.28), number("bank", 0.05, 1.4), number("load", 1.01, 5)
+		l.Extent, l.Path = pick("turns or heading", mission.ByTurns, mission.ByHeading), pick("bank or load", mission.ByBank, mission.ByLoad)
+		l.SpeedRule = pick("rule", mission.MostInHand, mission.ByCAS, mission.ByTAS, mission.ByMach)
+	case mission.Cruise:
+		if i == 2 {
+			l.Extent = mission.ForTheRest
+		}
+		l.SpeedRule = pick("rule", mission.BestRange, mission.CarsonSpeed, mission.PercentPower, mission.ByTAS, mission.ByCAS, mission.ByMach, mission.Maximum, mission.BestEndurance)
 	case mission.Climb:
 		l.SpeedRule = pick("rule", mission.BestRate, mission.BestAngle, mission.ByCAS, mission.ByTAS, mission.ByMach)
 		l.Path = pick("path", mission.FullPower, mission.ByRate)

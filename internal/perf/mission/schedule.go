@@ -80,17 +80,21 @@ func (f *flier) climbSpeeds(l *Leg, day atmos.Day, top float64) (*numeric.Table,
 		y[i] = best.TAS
 		if out, err := pointperf.ThrustAvailable(f.a, p, best.TAS, nil); err == nil {
 			seconds := (to - from) / (climbNodes - 1) * air.HeightRatio / math.Max(0.3, rate)
-			mass = math.Max(f.a.DryMass(), mass-out.FuelFlow*seconds)
+			mass = math.Max(f.dryMass(), mass-out.FuelFlow*seconds)
 		}
 	}
 	return numeric.NewTable(x, y)
 }
 
-const levelNodes = 3
+const (
+	levelNodes = 3
+	// turnStallRatio keeps turns at most thrust in hand from the stall at their load factor; common practice, no source.
+	turnStallRatio = 1.2
+)
 
 // levelSchedule finds the level speed at masses between now and the leg's end.
 func (f *flier) levelSchedule(l *Leg, day atmos.Day) (schedule, error) {
-	hp := f.now.Altitude
+	hp, load := f.now.Altitude, l.LoadFactor()
 	air, err := day.At(hp, nil)
 	if err != nil {
 		return nil, err
@@ -104,6 +108,10 @@ func (f *flier) levelSchedule(l *Leg, day atmos.Day) (schedule, error) {
 			return pointperf.BestEndurance(f.a, p)
 		case PercentPower:
 			return pointperf.AtFraction(f.a, p, l.Power)
+		case MostInHand:
+			t := pointperf.TurnAtLoad(f.a, p, load)
+			top := air.FromCAS(atmos.CAS(f.a.NeverExceed()))
+			return pointperf.Level{TAS: math.Min(top, math.Max(t.TAS, turnStallRatio*t.Stall))}, t.Err
 		}
 		s := pointperf.AllSpeeds(f.a, p)
 		best := s.Carson
@@ -117,15 +125,18 @@ func (f *flier) levelSchedule(l *Leg, day atmos.Day) (schedule, error) {
 	if err != nil {
 		return nil, err
 	}
-	here, err := pointperf.LevelAt(f.a, &pointperf.Point{Air: air, Mass: f.now.Mass}, first.TAS)
+	here, err := pointperf.LevelAtLoad(f.a, &pointperf.Point{Air: air, Mass: f.now.Mass}, first.TAS, load)
 	if err != nil {
 		return nil, err
 	}
 	seconds := l.Time
-	if l.byDistance() {
+	switch {
+	case l.byDistance():
 		seconds = l.Distance / math.Max(1, first.TAS-l.HeadWind)
+	case l.Kind == Turns:
+		seconds = l.sweep() / pointperf.TurnRate(first.TAS, load, nil)
 	}
-	last := math.Max(f.a.DryMass(), f.now.Mass-1.05*here.Output.FuelFlow*seconds)
+	last := math.Max(f.dryMass(), f.now.Mass-1.05*here.Output.FuelFlow*seconds)
 	if f.now.Mass-last < 1e-6*f.now.Mass {
 		return func(_, _ float64) (float64, error) { return first.TAS, nil }, nil
 	}

@@ -9,6 +9,7 @@ import (
 
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/numeric"
 	"legwright/internal/perf/pointperf"
 	"legwright/internal/perf/reference"
@@ -33,6 +34,7 @@ func samples(t testing.TB) []*aircraft.Aircraft {
 		// The document is of format 1, and package project, which reads that, imports this one.
 		f := &doc.Variants[i].Aircraft.Airframe
 		f.Clean.LiftGiven, f.TakeOff.LiftGiven, f.Landing.LiftGiven = aircraft.ByCLMax, aircraft.ByCLMax, aircraft.ByCLMax
+		doc.Variants[i].Aircraft.Limits = loads.Unentered()
 		a, err := doc.Variants[i].Aircraft.Build()
 		if err != nil {
 			t.Fatal(err)

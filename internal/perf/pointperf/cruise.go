@@ -21,7 +21,12 @@ type Level struct {
 // LevelAt matches the powerplant to level flight at the true airspeed tas in
 // m/s, > 0. It fails with *powerplant.ThrustError when the thrust does not suffice.
 func LevelAt(a *aircraft.Aircraft, p *Point, tas float64) (Level, error) {
-	required := ThrustRequired(a, p, tas, nil)
+	return LevelAtLoad(a, p, tas, 1)
+}
+
+// LevelAtLoad is LevelAt in a level turn of the load factor, dimensionless, >= 1: the lift is that many times the weight.
+func LevelAtLoad(a *aircraft.Aircraft, p *Point, tas, load float64) (Level, error) {
+	required := Drag(a, p, tas, load*p.Weight(), 1, nil)
 	setting, out, err := a.Plant().Match(p.Condition(tas), required, nil)
 	return Level{tas, required, setting, out}, err
 }

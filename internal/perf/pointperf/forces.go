@@ -91,9 +91,13 @@ func (b Balance) InHand() float64 { return b.Available - b.Required }
 // At balances thrust at the true airspeed tas in m/s, > 0.
 func At(a *aircraft.Aircraft, p *Point, tas float64, w *formula.Working) (Balance, error) {
 	w.Heading("Thrust required")
-	b := Balance{TAS: tas, Required: ThrustRequired(a, p, tas, w)}
+	return balance(a, p, Balance{TAS: tas, Required: ThrustRequired(a, p, tas, w)}, w)
+}
+
+// balance holds a thrust required against the thrust available at its speed.
+func balance(a *aircraft.Aircraft, p *Point, b Balance, w *formula.Working) (Balance, error) {
 	w.Heading("Thrust available")
-	out, err := ThrustAvailable(a, p, tas, w)
+	out, err := ThrustAvailable(a, p, b.TAS, w)
 	if err != nil {
 		return b, err
 	}

@@ -29,6 +29,11 @@ var (
 			formula.Sym("V", "true airspeed", units.Speed)},
 		Expr: "g*sqrt(n*n - 1)/V", Source: formula.Anderson, Where: "section 6.5",
 	})
+	turnLift = formula.Must(formula.Formula{
+		ID: "turn.lift", Out: formula.Sym("L", "lift in a level turn", units.Force),
+		In:   []formula.Symbol{formula.Sym("n", "load factor", units.Coefficient), formula.Sym("W", "weight", units.Force)},
+		Expr: "n*W", Source: formula.Anderson, Where: "section 6.5",
+	})
 	liftLoad = formula.Must(formula.Formula{
 		ID: "turn.lift-limit", Out: formula.Sym("n", "load factor at maximum lift", units.Coefficient),
 		In: []formula.Symbol{formula.Sym("q", "dynamic pressure", units.Pressure), formula.Sym("S", "wing area", units.Area),
@@ -50,6 +55,14 @@ func TurnRadius(tas, n float64, w *formula.Working) float64 {
 // TurnRate is the rate of turn in rad/s of a level turn at the true airspeed tas in m/s, > 0, and the load factor n, >= 1.
 func TurnRate(tas, n float64, w *formula.Working) float64 {
 	return w.Step(turnRate, atmos.Gravity*math.Sqrt(n*n-1)/tas, atmos.Gravity, n, tas)
+}
+
+// AtLoad is At in a level turn at the load factor, dimensionless, >= 1.
+func AtLoad(a *aircraft.Aircraft, p *Point, tas, load float64, w *formula.Working) (Balance, error) {
+	w.Heading("Thrust required")
+	weight := w.Step(weightForce, p.Weight(), p.Mass, atmos.Gravity)
+	lift := w.Step(turnLift, load*weight, load, weight)
+	return balance(a, p, Balance{TAS: tas, Required: Drag(a, p, tas, lift, 1, w)}, w)
 }
 
 // LiftLoad is the load factor at maximum lift at the true airspeed tas in m/s, >= 0: the limit of an instantaneous turn.
@@ -104,7 +117,16 @@ func (t *Turn) Sustained() bool { return t.Err == nil && t.Available >= t.Requir
 
 // TurnAt finds the level turn at the bank angle in rad, 0 to below π/2.
 func TurnAt(a *aircraft.Aircraft, p *Point, bank float64) Turn {
-	t := Turn{Bank: bank, Load: LoadFactor(bank, nil)}
+	return turnAt(a, p, Turn{Bank: bank, Load: LoadFactor(bank, nil)})
+}
+
+// TurnAtLoad finds the level turn at the load factor, dimensionless, >= 1.
+func TurnAtLoad(a *aircraft.Aircraft, p *Point, load float64) Turn {
+	return turnAt(a, p, Turn{Bank: math.Acos(1 / load), Load: load})
+}
+
+// turnAt finds the speed of a turn whose bank and load factor are known.
+func turnAt(a *aircraft.Aircraft, p *Point, t Turn) Turn {
 	t.Stall = Stall(a, p, nil) * math.Sqrt(t.Load)
 	top := topSpeed(a, p)
 	if top <= t.Stall {

@@ -52,6 +52,11 @@ func TestShownWorkingIsTrue(t *testing.T) {
 			t.Errorf("radius times rate is %g m/s at %g m/s", got, want)
 		}
 		pointperf.LiftLoad(a, point, v, &w)
+		turning, err := pointperf.AtLoad(a, point, v, load, &w)
+		level, short := pointperf.LevelAtLoad(a, point, v, load)
+		if err == nil && turning.Required != level.Required || (short == nil) != (err == nil && turning.InHand() >= 0) {
+			t.Errorf("a turn at load factor %g asks for %g N with a working, %g N without (%v)", load, turning.Required, level.Required, short)
+		}
 		if c, err := pointperf.FullClimb(a, point, v, &w); err == nil && c.TAS != v {
 			t.Errorf("climbs at %g m/s, asked for %g", c.TAS, v)
 		}

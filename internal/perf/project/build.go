@@ -67,6 +67,16 @@ func (s *Spec) references() error {
 	if len(s.Variants) == 0 {
 		errs = append(errs, &input.Error{Path: "variants", Accepts: "at least one variant", Err: input.ErrRequired})
 	}
+	rest := -1
+	for i := range s.Legs {
+		switch l := &s.Legs[i]; {
+		case l.Rests() && rest >= 0:
+			errs = append(errs, &input.Error{Path: fmt.Sprintf("legs[%d].extent", i), Text: l.Extent, Err: input.ErrConflict,
+				Accepts: fmt.Sprintf("distance or time: leg %d already flies the rest of the range", rest+1)})
+		case l.Rests():
+			rest = i
+		}
+	}
 	seen := map[string]bool{}
 	for i := range s.Variants {
 		v := &s.Variants[i]

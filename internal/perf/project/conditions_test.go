@@ -36,11 +36,12 @@ func TestConditionsOfALeg(t *testing.T) {
 			}
 		}
 	}
-	for _, l.Kind = range []string{mission.Taxi, mission.TakeOff, mission.Climb, mission.Cruise, mission.Loiter, mission.Descent, mission.Landing, mission.Reserve} {
+	for _, l.Kind = range []string{mission.Taxi, mission.TakeOff, mission.Climb, mission.Cruise, mission.Loiter, mission.Descent, mission.Landing, mission.Reserve,
+		mission.Dash, mission.Turns, mission.Drop, mission.PickUp, mission.Alternate, mission.Contingency} {
 		for _, l.SpeedRule = range []string{mission.BestRate, mission.BestAngle, mission.BestRange, mission.BestEndurance, mission.CarsonSpeed,
-			mission.Maximum, mission.PercentPower, mission.ByTAS, mission.ByCAS, mission.ByMach} {
-			for _, l.Path = range []string{mission.FullPower, mission.ByRate, mission.ByAngle, mission.Idle} {
-				for _, l.Extent = range []string{mission.ByDistance, mission.ByTime} {
+			mission.Maximum, mission.PercentPower, mission.ByTAS, mission.ByCAS, mission.ByMach, mission.MostInHand} {
+			for _, l.Path = range []string{mission.FullPower, mission.ByRate, mission.ByAngle, mission.Idle, mission.ByBank, mission.ByLoad} {
+				for _, l.Extent = range []string{mission.ByDistance, mission.ByTime, mission.ForTheRest, mission.ByTurns, mission.ByHeading} {
 					for _, l.DayGiven = range []string{mission.ProjectDay, mission.OwnDay} {
 						try()
 					}

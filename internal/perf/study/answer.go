@@ -48,7 +48,23 @@ type ReserveAnswer struct {
 	Flown  float64 `json:"flown_time"`  // in s
 	Fuel   float64 `json:"fuel"`        // in kg
 	Left   float64 `json:"fuel_left"`   // in kg
+	Kept   float64 `json:"fuel_kept"`   // that contingencies ask to be left, in kg
 	Reason string  `json:"reason,omitempty"`
+
+	Parts []ReservePartAnswer `json:"parts"`
+}
+
+// A ReservePartAnswer is what one leg of the reserve asked for and got.
+type ReservePartAnswer struct {
+	Leg      int     `json:"leg"` // index from 0
+	Kind     string  `json:"kind"`
+	Met      bool    `json:"met"`
+	Fuel     float64 `json:"fuel"`     // that it takes, or of a contingency keeps, in kg
+	Energy   float64 `json:"energy"`   // that it takes, or of a contingency keeps, in J
+	Time     float64 `json:"time"`     // flown in s
+	Distance float64 `json:"distance"` // in m
+	Reason   string  `json:"reason,omitempty"`
+	Rule     string  `json:"rule,omitempty"`
 }
 
 // A FigureAnswer is one figure.
@@ -142,6 +158,7 @@ type LegAnswer struct {
 	Distance float64 `json:"distance"` // in m
 	Fuel     float64 `json:"fuel"`     // in kg
 	Energy   float64 `json:"energy"`   // in J
+	Payload  float64 `json:"payload"`  // taken aboard in kg, negative when dropped
 	Altitude float64 `json:"altitude"` // pressure altitude at its end in m
 	Mass     float64 `json:"mass"`     // at its end in kg
 }
@@ -166,7 +183,7 @@ type SampleAnswer struct {
 func (s *Study) Answer() Answer {
 	f := &s.Flight
 	a := Answer{Variant: s.Variant().ID, Name: s.Variant().Name, Flown: f.Flown(), Placeholders: append([]string{}, s.Placeholders()...),
-		Reserve: ReserveAnswer{f.Reserve.Asked, f.Reserve.Met, f.Reserve.Wanted, f.Reserve.Flown, f.Reserve.Fuel, f.Reserve.Left, f.Reserve.Reason.In(units.Metric)},
+		Reserve: reserveAnswer(&f.Reserve),
 		Masses:  MassesAnswer{s.Masses.Empty, s.Masses.Payload, s.Masses.Fuel, s.Masses.Start, s.Masses.MaxTakeOff, s.Masses.Landing},
 		TakeOff: runAnswer(s.TakeOff), Landing: runAnswer(s.Landing),
 		Requirements: []RequirementAnswer{}, Warnings: []WarningAnswer{}, Climb: []ClimbAnswer{}, Legs: []LegAnswer{}, Trace: []SampleAnswer{}}
@@ -192,10 +209,19 @@ func (s *Study) Answer() Answer {
 	}
 	for i := range f.Legs {
 		l := &f.Legs[i]
-		a.Legs = append(a.Legs, LegAnswer{s.legName(i), l.Leg.Kind, l.Time, l.Distance, l.Fuel, l.Energy, l.End.Altitude, l.End.Mass})
+		a.Legs = append(a.Legs, LegAnswer{s.legName(i), l.Leg.Kind, l.Time, l.Distance, l.Fuel, l.Energy, l.Payload, l.End.Altitude, l.End.Mass})
 	}
 	for i := range f.Trace {
 		a.Trace = append(a.Trace, sampleAnswer(&f.Trace[i]))
+	}
+	return a
+}
+
+func reserveAnswer(r *mission.ReserveResult) ReserveAnswer {
+	a := ReserveAnswer{r.Asked, r.Met, r.Wanted, r.Flown, r.Fuel, r.Left, r.Kept, r.Reason.In(units.Metric), []ReservePartAnswer{}}
+	for i := range r.Parts {
+		p := &r.Parts[i]
+		a.Parts = append(a.Parts, ReservePartAnswer{p.Leg, p.Kind, p.Met, p.Fuel, p.Energy, p.Time, p.Distance, p.Reason.In(units.Metric), p.Rule.In(units.Metric)})
 	}
 	return a
 }

@@ -184,10 +184,13 @@ func (s *Study) missionFigures() {
 	r := f.Reserve
 	reserveErr := err
 	if reserveErr == nil && !r.Asked {
+		reserveErr = units.Errorf(nil, "the mission keeps no reserve")
+	}
+	s.set("fuel_left", r.Left, none, reserveErr)
+	if reserveErr == nil && !r.Has(mission.Reserve) {
 		reserveErr = units.Errorf(nil, "the mission has no reserve leg")
 	}
 	s.set("reserve_time", r.Flown, none, reserveErr)
-	s.set("fuel_left", r.Left, none, reserveErr)
 }
 
 // energyLeft is the least share of a store of energy that the mission without its reserve leaves, dimensionless.
@@ -215,7 +218,7 @@ func (s *Study) groundSpeed() {
 			wind = s.TakeOff.Place.HeadWind
 		case mission.Landing:
 			wind = s.Landing.Place.HeadWind
-		case mission.Loiter, mission.Reserve:
+		case mission.Loiter, mission.Reserve, mission.Turns:
 			wind = -math.Abs(wind)
 		}
 		if v := math.Sqrt(math.Max(0, t.TAS*t.TAS-t.Rate*t.Rate)) - wind; v > greatest {

@@ -209,7 +209,7 @@ func (s *Study) operating() []OperatingPoint {
 		list[i].Where = units.Say("strip, full setting")
 	}
 	for i, l := range s.Project.Spec.Legs {
-		if l.Kind == mission.Cruise {
+		if l.Kind == mission.Cruise || l.Kind == mission.Dash {
 			list = append(list, s.cruised(i))
 		}
 	}
@@ -218,7 +218,7 @@ func (s *Study) operating() []OperatingPoint {
 	return append(list, fast)
 }
 
-// cruised is the end of the cruise leg with index i.
+// cruised is the end of the cruise or dash with index i.
 func (s *Study) cruised(i int) OperatingPoint {
 	p := OperatingPoint{Name: s.legName(i)}
 	f := s.Flight.Failure

@@ -49,8 +49,7 @@ func (s *Study) burn(c powerplant.Curves) Burn {
 	for i := range s.Flight.Trace {
 		t := &s.Flight.Trace[i]
 		o := &t.Output
-		switch s.Project.Spec.Legs[t.Leg].Kind {
-		case mission.Taxi, mission.TakeOff, mission.Landing, mission.Descent:
+		if l := &s.Project.Spec.Legs[t.Leg]; !l.Airborne() || l.Kind == mission.Descent {
 			continue
 		}
 		if o.Limits&powerplant.Idling != 0 || o.Fraction <= 0 || o.FuelFlow <= 0 {

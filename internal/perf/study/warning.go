@@ -1,6 +1,8 @@
 package study
 
 import (
+	"math"
+
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/atmos"
 	"legwright/internal/perf/formula"
@@ -116,13 +118,21 @@ func (s *Study) warnMission(a *aircraft.Aircraft) {
 	if r := f.Reserve; f.Failure == nil {
 		switch {
 		case !r.Asked:
-			s.add("no-reserve", Stop, "mission", "Add a reserve leg: rules ask for 30 minutes by day, 45 by night (14 CFR 91.151).", units.Say("the mission keeps no reserve"))
-		case !r.Met:
+			s.add("no-reserve", Stop, "mission", addReserve, units.Say("the mission keeps no reserve"))
+		case !r.Has(mission.Reserve):
+			s.add("no-reserve", Stop, "mission", addReserve, units.Say("the mission has no reserve leg: an alternate and a contingency are no reserve of time"))
+		}
+		switch {
+		case r.Met || !r.Asked:
+		case r.Flown < r.Wanted:
 			s.add("reserve-short", Stop, "mission", "More fuel, or a shorter mission.",
 				units.Say("the reserve is not met: {} of {} flown; {}", units.Of(units.Duration, r.Flown), units.Of(units.Duration, r.Wanted), units.Nest(r.Reason)))
+		default:
+			s.add("reserve-short", Stop, "mission", "More fuel, or a shorter mission.", units.Say("the reserve is not met: {}", units.Nest(r.Reason)))
 		}
 	}
 	for i := range f.Legs {
+		s.warnLeg(&f.Legs[i], i)
 		for _, n := range f.Legs[i].Notes {
 			s.add("leg-note", Info, "mission", "Change the leg if that is not meant.", units.Say("{}: {}", units.Text(s.legName(i)), units.Nest(n)))
 		}
@@ -130,20 +140,35 @@ func (s *Study) warnMission(a *aircraft.Aircraft) {
 	s.warnStall(a)
 }
 
+const addReserve = "Add a reserve leg: rules ask for 30 minutes by day, 45 by night (14 CFR 91.151)."
+
+// warnLeg warns of what a leg does to the structure.
+func (s *Study) warnLeg(l *mission.LegResult, i int) {
+	if l.Leg.Kind == mission.PickUp && l.End.Mass > s.Masses.MaxTakeOff {
+		s.add("overweight", Stop, "mission", "Pick up less, or later, or show that the structure bears more.",
+			units.Say("after {} it is {}, {} above the designer's greatest take-off mass; structural margin is not checked here",
+				units.Text("“"+s.legName(i)+"”"), units.Of(units.Mass, l.End.Mass), units.Of(units.Mass, l.End.Mass-s.Masses.MaxTakeOff)))
+	}
+	if n := l.Leg.LoadFactor(); n > 1 {
+		s.add("turn-load", Caution, "mission", "Hold it against the designer's limit load factor, with gusts on top.",
+			units.Say("{} is flown at a load factor of {}; what the structure bears is not checked here", units.Text("“"+s.legName(i)+"”"), units.Of(units.Coefficient, roundTo(n, 100))))
+	}
+}
+
 // warnStall names each leg flown closer to the stall than the published margin.
 func (s *Study) warnStall(a *aircraft.Aircraft) {
 	seen := -1
 	for i := range s.Flight.Trace {
 		t := &s.Flight.Trace[i]
-		kind := s.Project.Spec.Legs[t.Leg].Kind
-		if t.Leg == seen || kind == mission.Taxi || kind == mission.TakeOff || kind == mission.Landing {
+		leg := &s.Project.Spec.Legs[t.Leg]
+		if t.Leg == seen || !leg.Airborne() {
 			continue
 		}
 		air, err := s.airOf(t, nil)
 		if err != nil {
 			continue
 		}
-		stall := pointperf.Stall(a, &pointperf.Point{Air: air, Mass: t.Mass}, nil)
+		stall := pointperf.Stall(a, &pointperf.Point{Air: air, Mass: t.Mass}, nil) * math.Sqrt(leg.LoadFactor())
 		if t.TAS < leastStallRatio*stall {
 			seen = t.Leg
 			s.add("stall-margin", Caution, "mission", "Give the leg a speed of its own.",

@@ -266,7 +266,12 @@ func (s *Study) tightestWorking(w *formula.Working) error {
 	if err != nil {
 		return err
 	}
-	_, err = pointperf.At(s.Aircraft(), &pointperf.Point{Air: air, Mass: t.Mass}, t.TAS, w)
+	p := &pointperf.Point{Air: air, Mass: t.Mass}
+	if load := s.Project.Spec.Legs[t.Leg].LoadFactor(); load > 1 {
+		_, err = pointperf.AtLoad(s.Aircraft(), p, t.TAS, load, w)
+		return err
+	}
+	_, err = pointperf.At(s.Aircraft(), p, t.TAS, w)
 	return err
 }
 
@@ -285,6 +290,11 @@ func (s *Study) missionWorking(w *formula.Working) error {
 	}
 	if g := s.Figure("ground_speed"); g.Has() {
 		w.Note("The greatest ground speed is the true airspeed along the ground less the head wind of the leg, %s %s; where a leg circles, its wind is met from behind.", s.in(units.Speed, g.Value), g.Where.In(s.Project.Spec.System()))
+	}
+	for i := range f.Reserve.Parts {
+		if p := &f.Reserve.Parts[i]; !p.Rule.Empty() {
+			w.Note("%s: %s of fuel to be left, %s.", s.legName(p.Leg), s.in(units.Mass, p.Fuel), p.Rule.In(s.Project.Spec.System()))
+		}
 	}
 	if f.Failure != nil {
 		return f.Failure.Err
