@@ -18,6 +18,9 @@ type spelling struct {
 // own are the names that the rules of spelt would set differently from how the trade writes them.
 var own = map[string]spelling{
 	"RC":   {base: "R/C"},
+	"Re":   {base: "Re"},
+	"FF":   {base: "FF"},
+	"tc":   {base: "t/c"},
 	"RH":   {base: "RH"},
 	"idle": {base: "m", below: "idle", dot: true},
 	"Psl":  {base: "P", below: "SL"},

@@ -53,6 +53,9 @@ func figures3(v float64) string {
 	return units.Plain(r)
 }
 
+// residual is what a fit leaves of CD as it is told: no less than what is worth telling.
+func residual(v float64) float64 { return max(v, 1e-6) }
+
 // polarSays says the clean polar in every way at once, and which of its numbers that are not typed are unusual.
 func polarSays(spec *aircraft.Spec, sys units.System) (text, unusual string) {
 	e, err := spec.Equivalent()
@@ -62,7 +65,7 @@ func polarSays(spec *aircraft.Spec, sys units.System) (text, unusual string) {
 	text = fmt.Sprintf("f\u00a0%s, best L/D\u00a0%s at %s EAS at %s, CDmin\u00a0%s, e\u00a0%s, K\u00a0%s.", sys.Format(units.DragArea, e.DragArea), figures3(e.GlideRatio),
 		sys.Format(units.Speed, e.GlideSpeed), sys.Format(units.Mass, e.Mass), figures3(e.CDMin), figures3(e.Efficiency), figures3(e.K))
 	if e.Fitted {
-		text = fmt.Sprintf("As a parabola, fitted to within %s in CD: %s CL at minimum drag %s.", figures3(e.Worst), text, figures3(e.CLMinDrag))
+		text = fmt.Sprintf("As a parabola, fitted to within %s in CD: %s CL at minimum drag\u00a0%s.", figures3(residual(e.Worst)), text, figures3(e.CLMinDrag))
 	}
 	return text, e.Unusual
 }

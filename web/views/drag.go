@@ -72,7 +72,7 @@ func (p *DragPage) ways(spec *aircraft.Spec, sys units.System) {
 	}
 	p.Unusual = e.Unusual
 	if e.Fitted {
-		p.Fit = fmt.Sprintf("These are of the parabola that comes nearest to the table: its CD is within %s of every row, %s at the root of the mean square. The table itself is flown.", figures3(e.Worst), figures3(e.RMS))
+		p.Fit = fmt.Sprintf("These are of the parabola that comes nearest to the table: its CD is within %s of every row, %s in the root mean square. The table itself is flown.", figures3(residual(e.Worst)), figures3(residual(e.RMS)))
 	}
 }
 

@@ -108,7 +108,7 @@ func (s *Spec) switchDrag(from string) []Derived {
 	l := &filling{note: was.words}
 	if from == ByTable {
 		fit, _ := f.fit()
-		l.note = noteFit + short(fit.Worst)
+		l.note = noteFit + short(math.Max(fit.Worst, 1e-6))
 	}
 	if to == ByTable {
 		return f.tabulate(p, l, was.minimum, was.induced)

@@ -425,7 +425,7 @@ func TestDragWorking(t *testing.T) {
 		s.Airframe.DragWorking(&w)
 		s.Airframe.Clean.LiftGiven = aircraft.ByStall
 		s.Switch("airframe.clean.lift_given", aircraft.ByCLMax)
-		s.Airframe.Clean.LiftWorking(s.Airframe.WingArea, &w)
+		s.Airframe.LiftWorking(aircraft.Clean, &w)
 		if len(w.Steps) < 2 {
 			t.Errorf("%s: %d steps", way, len(w.Steps))
 		}

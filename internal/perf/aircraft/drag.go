@@ -159,7 +159,7 @@ func (f *Airframe) fit() (polar.Fitted, error) {
 }
 
 func (f *Airframe) glideParabola(w *formula.Working) (polar.Parabola, error) {
-	cl := polar.LiftCoefficient(f.GlideMass, atmos.Gravity, atmos.SeaLevelDensity, f.GlideSpeed, f.WingArea, w)
+	cl := polar.GlideLift(f.GlideMass, atmos.Gravity, atmos.SeaLevelDensity, f.GlideSpeed, f.WingArea, w)
 	if cl <= f.CLMinDrag {
 		return polar.Parabola{}, &input.Error{Path: "glide_speed", Spec: &glideSpeed, Value: f.GlideSpeed, Err: input.ErrConflict,
 			Accepts: fmt.Sprintf("CL is then %s, and the best L/D lies above the CL of minimum drag, %s", short(cl), short(f.CLMinDrag))}
@@ -188,7 +188,7 @@ func (f *Airframe) flyable(p polar.Parabola) error {
 	case ByBuildUp:
 		return f.implausible("unlisted", &unlisted, f.Unlisted, "with the components CDmin", p.CDMin, &cdMin)
 	}
-	at := fmt.Sprintf("with CL %s there, ", short(polar.LiftCoefficient(f.GlideMass, atmos.Gravity, atmos.SeaLevelDensity, f.GlideSpeed, f.WingArea, nil)))
+	at := fmt.Sprintf("with CL %s there, ", short(polar.GlideLift(f.GlideMass, atmos.Gravity, atmos.SeaLevelDensity, f.GlideSpeed, f.WingArea, nil)))
 	return errors.Join(f.implausible("glide_ratio", &glideRatio, f.GlideRatio, at+"CDmin", p.CDMin, &cdMin),
 		f.implausible("glide_speed", &glideSpeed, f.GlideSpeed, at+"e", f.efficiencyOf(p), &efficiency))
 }

@@ -42,15 +42,15 @@ func (c *Configuration) Inputs() []input.Entry {
 // lift is CLmax on a wing of the area s in m², dimensionless.
 func (c *Configuration) lift(s float64, w *formula.Working) float64 {
 	if c.LiftGiven == ByStall {
-		return snapped(&clMax, polar.LiftCoefficient(c.StallMass, atmos.Gravity, atmos.SeaLevelDensity, c.StallSpeed, s, w))
+		return snapped(&clMax, polar.StallLift(c.StallMass, atmos.Gravity, atmos.SeaLevelDensity, c.StallSpeed, s, w))
 	}
 	return c.CLMax
 }
 
-// LiftWorking shows how CLmax follows from a stall speed on a wing of the area s in m².
-func (c *Configuration) LiftWorking(s float64, w *formula.Working) {
-	if c.LiftGiven == ByStall {
-		c.lift(s, w)
+// LiftWorking shows how CLmax in a configuration follows from a stall speed, where that is what is given.
+func (f *Airframe) LiftWorking(c Config, w *formula.Working) {
+	if cfg := f.configurations()[c]; cfg.LiftGiven == ByStall {
+		cfg.lift(f.WingArea, w)
 	}
 }
 

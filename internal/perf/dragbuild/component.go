@@ -84,7 +84,7 @@ func New(kind, name string) Component {
 var (
 	surfaceForm = formula.Must(formula.Formula{
 		ID: "drag.form-surface", Out: formula.Sym("FF", "form factor", units.Coefficient),
-		In:   []formula.Symbol{formula.Sym("tc", "thickness over chord", units.Fraction), formula.Sym("xm", "place of the greatest thickness on the chord", units.Fraction), formula.Sym("M", "Mach number", units.Coefficient)},
+		In:   []formula.Symbol{formula.Sym("tc", "thickness over chord", units.Fraction), formula.Sym("xm", "place of the greatest thickness on the chord", units.Fraction), formula.Sym("M", "Mach number where friction is taken", units.Coefficient)},
 		Expr: "(1 + 0.6/xm*tc + 100*pow(tc, 4))*max(1, 1.34*pow(M, 0.18))", Source: formula.Raymer,
 		Where: "eq. 12.30, unswept, from memory; its Mach factor is not taken below 1, which it would be under Mach 0.2",
 	})

@@ -10,8 +10,8 @@ import (
 var (
 	reynolds = formula.Must(formula.Formula{
 		ID: "drag.reynolds", Out: formula.Sym("Re", "Reynolds number", units.Coefficient),
-		In: []formula.Symbol{formula.Sym("rho", "air density", units.Density), formula.Sym("V", "true airspeed", units.Speed),
-			formula.Sym("l", "length along the flow", units.Length), formula.Sym("mu", "dynamic viscosity", units.Viscosity)},
+		In: []formula.Symbol{formula.Sym("rho", "air density where friction is taken", units.Density), formula.Sym("V", "true airspeed where friction is taken", units.Speed),
+			formula.Sym("l", "length along the flow", units.Length), formula.Sym("mu", "viscosity where friction is taken", units.Viscosity)},
 		Expr: "rho*V*l/mu", Source: formula.Schlichting, Where: "chapter I",
 	})
 	laminarFriction = formula.Must(formula.Formula{

@@ -20,11 +20,17 @@ var (
 		In:   []formula.Symbol{formula.Sym("f", "drag area, or flat-plate area", units.DragArea), formula.Sym("S", "wing area", units.Area)},
 		Expr: "f/S", Source: formula.Hoerner, Where: "chapter 1, drag area D/q, from memory",
 	})
-	liftCoefficient = formula.Must(formula.Formula{
-		ID: "polar.lift-coefficient", Out: formula.Sym("CL", "lift coefficient in level flight", units.Coefficient),
-		In: []formula.Symbol{formula.Sym("m", "mass", units.Mass), formula.Sym("g", "standard gravity", units.Acceleration), formula.Sym("rho0", "sea-level density", units.Density),
-			formula.Sym("V", "equivalent airspeed", units.Speed), formula.Sym("S", "wing area", units.Area)},
+	glideLift = formula.Must(formula.Formula{
+		ID: "polar.glide-lift", Out: formula.Sym("CLb", "lift coefficient of the best ratio", units.Coefficient),
+		In: []formula.Symbol{formula.Sym("m", "mass of the best glide", units.Mass), formula.Sym("g", "standard gravity", units.Acceleration), formula.Sym("rho0", "sea-level density", units.Density),
+			formula.Sym("V", "equivalent airspeed of the best glide", units.Speed), formula.Sym("S", "wing area", units.Area)},
 		Expr: "2*m*g/(rho0*V*V*S)", Source: formula.Anderson, Where: "lift equals weight, chapter 5, with the equivalent airspeed by its definition",
+	})
+	stallLift = formula.Must(formula.Formula{
+		ID: "polar.stall-lift", Out: formula.Sym("CLmax", "maximum lift coefficient", units.Coefficient),
+		In: []formula.Symbol{formula.Sym("m", "mass of the stall speed given", units.Mass), formula.Sym("g", "standard gravity", units.Acceleration), formula.Sym("rho0", "sea-level density", units.Density),
+			formula.Sym("V", "stall speed given", units.Speed), formula.Sym("S", "wing area", units.Area)},
+		Expr: "2*m*g/(rho0*V*V*S)", Source: formula.Anderson, Where: "stalling speed, section 5.4.1, solved for the lift coefficient; calibrated airspeed at sea level is equivalent airspeed",
 	})
 	glideFactor = formula.Must(formula.Formula{
 		ID: "polar.best-glide-factor", Out: formula.Sym("K", "lift-dependent drag factor", units.Coefficient),
@@ -43,10 +49,20 @@ var (
 // FlatPlate is CDmin of the drag area f referred to the wing area s, both in m².
 func FlatPlate(f, s float64, w *formula.Working) float64 { return w.Step(flatPlate, f/s, f, s) }
 
-// LiftCoefficient is CL in unaccelerated level flight: mass m in kg, gravity g in
-// m/s², sea-level density rho0 in kg/m³, equivalent airspeed v in m/s, wing area s in m².
-func LiftCoefficient(m, g, rho0, v, s float64, w *formula.Working) float64 {
-	return w.Step(liftCoefficient, 2*m*g/(rho0*v*v*s), m, g, rho0, v, s)
+// level is CL in level flight: mass m in kg, gravity g in m/s², sea-level density
+// rho0 in kg/m³, equivalent airspeed v in m/s, wing area s in m².
+func level(m, g, rho0, v, s float64) float64 { return 2 * m * g / (rho0 * v * v * s) }
+
+// GlideLift is CL of level flight at the equivalent airspeed v in m/s of the best
+// glide: mass m in kg, gravity g in m/s², sea-level density rho0 in kg/m³, wing area s in m².
+func GlideLift(m, g, rho0, v, s float64, w *formula.Working) float64 {
+	return w.Step(glideLift, level(m, g, rho0, v, s), m, g, rho0, v, s)
+}
+
+// StallLift is CLmax of an aircraft that stalls at the equivalent airspeed v in
+// m/s: mass m in kg, gravity g in m/s², sea-level density rho0 in kg/m³, wing area s in m².
+func StallLift(m, g, rho0, v, s float64, w *formula.Working) float64 {
+	return w.Step(stallLift, level(m, g, rho0, v, s), m, g, rho0, v, s)
 }
 
 // OfBestGlide is the parabola whose best ratio of lift to drag is e, at the lift

@@ -120,7 +120,9 @@ func TestNoFit(t *testing.T) {
 func givenWorking(t *rapid.T, record formulatest.Record) {
 	var w formula.Working
 	polar.FlatPlate(rapid.Float64Range(0.001, 10).Draw(t, "f"), rapid.Float64Range(0.02, 500).Draw(t, "s"), &w)
-	cl := polar.LiftCoefficient(rapid.Float64Range(1, 1e4).Draw(t, "m"), 9.80665, 1.225, rapid.Float64Range(5, 100).Draw(t, "v"), rapid.Float64Range(0.1, 100).Draw(t, "area"), &w)
+	m, v, s := rapid.Float64Range(1, 1e4).Draw(t, "m"), rapid.Float64Range(5, 100).Draw(t, "v"), rapid.Float64Range(0.1, 100).Draw(t, "area")
+	cl := polar.GlideLift(m, 9.80665, 1.225, v, s, &w)
+	polar.StallLift(m, 9.80665, 1.225, v, s, &w)
 	polar.OfBestGlide(rapid.Float64Range(1, 60).Draw(t, "ratio"), cl, cl-rapid.Float64Range(0.01, 2).Draw(t, "above"), &w)
 	record.Check(t, w)
 }

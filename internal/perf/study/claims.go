@@ -18,6 +18,7 @@ const (
 	prop   = "aircraft.powerplant.values.propeller."
 	frame  = "aircraft.airframe."
 	limit  = "aircraft.limits."
+	part   = frame + "components[{component}]."
 )
 
 // claims are the possible origins of each symbol by its meaning, the surest
@@ -59,18 +60,51 @@ var claims = map[string][]claim{
 	"wing area":                           {given(frame + "wing_area")},
 	"wing span":                           {given(frame + "span")},
 	"height of the wing above the ground": {given(frame + "wing_height")},
-	"maximum lift coefficient":            {given(frame + "{config}.cl_max")},
-	"minimum drag coefficient":            {given(frame + "cd_min")},
-	"increment of the configuration":      {given(frame + "{config}.delta_cd")},
-	"least CD of the table":               {read("least of the table", frame+"polar")},
-	"CD read from the table at this CL":   {read("read from the table", frame+"polar")},
-	"span efficiency":                     {given(frame + "efficiency")},
-	"aspect ratio":                        {made("b²/S", aspect, frame+"span", frame+"wing_area")},
-	"ground-effect factor":                {result("polar.ground-effect"), exactly(1, "away from the ground")},
-	"lift coefficient":                    {result("lift.coefficient")},
-	"drag coefficient":                    {result("polar.parabolic", "polar.tabulated")},
-	"lift coefficient of minimum drag":    {made("with the shift of the configuration", func(v []float64) float64 { return v[0] + v[1] }, frame+"cl_min_drag", frame+"{config}.delta_clm")},
-	"lift-dependent drag factor":          {result("polar.induced-factor"), made("1/(π A e) with A = b²/S", func(v []float64) float64 { return 1 / (math.Pi * aspect(v) * v[2]) }, frame+"span", frame+"wing_area", frame+"efficiency")},
+	"maximum lift coefficient": {given(frame + "{config}.cl_max"), result("polar.stall-lift"), made("2 m g/(ρ₀ V² S)", func(v []float64) float64 {
+		return 2 * v[0] * atmos.Gravity / (atmos.SeaLevelDensity * v[1] * v[1] * v[2])
+	}, frame+"{config}.stall_mass", frame+"{config}.stall_speed", frame+"wing_area")},
+	"minimum drag coefficient":              {given(frame + "cd_min"), result("polar.drag-area", "polar.best-glide-minimum")},
+	"increment of the configuration":        {given(frame + "{config}.delta_cd")},
+	"least CD of the table":                 {read("least of the table", frame+"polar")},
+	"CD read from the table at this CL":     {read("read from the table", frame+"polar")},
+	"span efficiency":                       {given(frame + "efficiency")},
+	"aspect ratio":                          {made("b²/S", aspect, frame+"span", frame+"wing_area")},
+	"ground-effect factor":                  {result("polar.ground-effect"), exactly(1, "away from the ground")},
+	"lift coefficient":                      {result("lift.coefficient")},
+	"drag coefficient":                      {result("polar.parabolic", "polar.tabulated")},
+	"lift coefficient of minimum drag":      {made("with the shift of the configuration", func(v []float64) float64 { return v[0] + v[1] }, frame+"cl_min_drag", frame+"{config}.delta_clm"), given(frame + "cl_min_drag")},
+	"lift-dependent drag factor":            {result("polar.induced-factor", "polar.best-glide-factor"), made("1/(π A e) with A = b²/S", func(v []float64) float64 { return 1 / (math.Pi * aspect(v) * v[2]) }, frame+"span", frame+"wing_area", frame+"efficiency")},
+	"sea-level density":                     {said("constant of the standard atmosphere")},
+	"mass of the stall speed given":         {given(frame + "{config}.stall_mass")},
+	"stall speed given":                     {given(frame + "{config}.stall_speed")},
+	"mass of the best glide":                {given(frame + "glide_mass")},
+	"equivalent airspeed of the best glide": {given(frame + "glide_speed")},
+	"best ratio of lift to drag":            {given(frame + "glide_ratio")},
+	"lift coefficient of the best ratio":    {result("polar.glide-lift")},
+
+	// The drag build-up.
+	"drag area, or flat-plate area":                      {given(frame + "drag_area"), result("drag.whole")},
+	"air density where friction is taken":                {made("standard day", func(v []float64) float64 { return standardAir(v[0]).Density }, frame+"friction_alt")},
+	"viscosity where friction is taken":                  {made("standard day", func(v []float64) float64 { return standardAir(v[0]).Viscosity }, frame+"friction_alt")},
+	"true airspeed where friction is taken":              {given(frame + "friction_tas")},
+	"Mach number where friction is taken":                {made("over the speed of sound of the standard day", func(v []float64) float64 { return v[0] / standardAir(v[1]).SoundSpeed }, frame+"friction_tas", frame+"friction_alt")},
+	"length along the flow":                              {given(part + "length")},
+	"Reynolds number":                                    {result("drag.reynolds"), said("of the laminar run, x Re")},
+	"Reynolds number of the laminar run":                 {said("x Re")},
+	"laminar share of the length":                        {given(part + "laminar")},
+	"turbulent friction coefficient of the whole length": {result("drag.friction-turbulent")},
+	"turbulent friction coefficient of the laminar run":  {result("drag.friction-turbulent")},
+	"laminar friction coefficient of the laminar run":    {result("drag.friction-laminar")},
+	"friction coefficient":                               {result("drag.friction", "drag.friction-turbulent")},
+	"thickness over chord":                               {given(part + "thickness_ratio")},
+	"place of the greatest thickness on the chord":       {given(part + "thickness_at")},
+	"length over diameter":                               {given(part + "fineness")},
+	"form factor":                                        {result("drag.form-surface", "drag.form-body", "drag.form-nacelle", "drag.form-streamlined")},
+	"interference factor":                                {given(part + "interference")},
+	"wetted area":                                        {given(part + "wetted_area")},
+	"sum of the parts":                                   {said("the drag areas above together")},
+	"leakage and protuberances":                          {given(frame + "leakage")},
+	"drag area not in the list":                          {given(frame + "unlisted")},
 
 	// Forces and the climb.
 	"drag":                           {result("drag.force")},
@@ -125,6 +159,12 @@ var claims = map[string][]claim{
 	"disc area":                                   {made("π D²/4", func(v []float64) float64 { return propeller.Area(v[0]) }, prop+"diameter")},
 	"loss factor":                                 {given(prop + "loss_factor")},
 	"induced speed at the disc":                   {result("disc.induced-speed"), said("found so that k P = T (V + v)")},
+}
+
+// standardAir is the air of the standard day at a pressure altitude in m; zero outside the atmosphere.
+func standardAir(hp float64) atmos.Air {
+	air, _ := atmos.Day{}.At(hp, nil)
+	return air
 }
 
 // aspect is the aspect ratio of span and wing area.

@@ -5,6 +5,7 @@ import (
 	"strings"
 	"testing"
 
+	"legwright/internal/perf/dragbuild"
 	"legwright/internal/perf/formula/formulatest"
 	"legwright/internal/perf/input"
 	"legwright/internal/perf/project"
@@ -13,6 +14,7 @@ import (
 // TestClaimsNameWhatExists: a path or formula that was renamed would silently never be claimed.
 func TestClaimsNameWhatExists(t *testing.T) {
 	spec := project.Demo()
+	spec.Variants[0].Aircraft.Airframe.Components = []dragbuild.Component{dragbuild.New(dragbuild.Surface, "Wing")}
 	places := map[string]string{"aircraft": "variants[0].aircraft", "departure": "strips[0]", "arrival": "strips[0]"}
 	var paths, formulas, meanings []string
 	for _, e := range input.Walk(spec) {

@@ -1,6 +1,7 @@
 package study_test
 
 import (
+	"fmt"
 	"math"
 	"slices"
 	"strings"
@@ -13,20 +14,27 @@ import (
 	"legwright/internal/perf/study"
 )
 
-// said gives the drag and the lift of the demo's first variant in other ways.
+// sayOtherwise gives the drag and the lift of every variant in other ways, as the page does.
+func sayOtherwise(s *project.Spec, way, lift string) {
+	for i := range s.Variants {
+		f := &s.Variants[i].Aircraft.Airframe
+		at := fmt.Sprintf("variants[%d].aircraft.airframe.", i)
+		from := f.DragGiven
+		f.DragGiven = way
+		input.Convert(s, at+"drag_given", from)
+		for path, c := range map[string]*aircraft.Configuration{"clean": &f.Clean, "take_off": &f.TakeOff, "landing": &f.Landing} {
+			from := c.LiftGiven
+			c.LiftGiven = lift
+			input.Convert(s, at+path+".lift_given", from)
+		}
+	}
+}
+
+// said is the demo with its drag and lift given in other ways.
 func said(t *testing.T, way, lift string) *project.Spec {
 	t.Helper()
 	s := project.Demo()
-	f := &s.Variants[0].Aircraft.Airframe
-	const at = "variants[0].aircraft.airframe."
-	from := f.DragGiven
-	f.DragGiven = way
-	input.Convert(s, at+"drag_given", from)
-	for path, c := range map[string]*aircraft.Configuration{"clean": &f.Clean, "take_off": &f.TakeOff, "landing": &f.Landing} {
-		from := c.LiftGiven
-		c.LiftGiven = lift
-		input.Convert(s, at+path+".lift_given", from)
-	}
+	sayOtherwise(s, way, lift)
 	return s
 }
 
@@ -112,7 +120,7 @@ func TestDragIsWorkedOut(t *testing.T) {
 	for way, ids := range map[string][]string{
 		aircraft.ByParabola:  {"polar.induced-factor"},
 		aircraft.ByDragArea:  {"polar.drag-area", "polar.induced-factor"},
-		aircraft.ByBestGlide: {"polar.lift-coefficient", "polar.best-glide-factor", "polar.best-glide-minimum", "aircraft.span-efficiency"},
+		aircraft.ByBestGlide: {"polar.glide-lift", "polar.best-glide-factor", "polar.best-glide-minimum", "aircraft.span-efficiency"},
 		aircraft.ByBuildUp:   {"drag.whole", "polar.drag-area", "polar.induced-factor"},
 		aircraft.ByTable:     {},
 	} {
@@ -126,8 +134,20 @@ func TestDragIsWorkedOut(t *testing.T) {
 				got = append(got, step.Formula.ID)
 			}
 		}
-		if want := append(ids, "polar.lift-coefficient", "polar.lift-coefficient", "polar.lift-coefficient"); !strings.HasPrefix(w.Steps[0].Note, "Drag polar") || !slices.Equal(got, want) {
+		if want := ids; !strings.HasPrefix(w.Steps[0].Note, "The clean drag polar") || !slices.Equal(got, want) {
 			t.Errorf("%s: %q, %v, want %v", way, w.Steps[0].Note, got, want)
+		}
+		part, lifts := "", ""
+		for _, step := range w.Steps {
+			if step.Heading {
+				part = step.Note
+			}
+			if step.Formula != nil && step.Formula.ID == "polar.stall-lift" {
+				lifts += part + ", "
+			}
+		}
+		if lifts != "Stall, Take-off, Landing, " {
+			t.Errorf("%s: CLmax is worked out in %s", way, lifts)
 		}
 	}
 }

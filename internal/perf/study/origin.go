@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strconv"
 	"strings"
 
 	"legwright/internal/perf/aircraft"
@@ -25,7 +26,7 @@ func (o Origin) Known() bool { return len(o.Inputs) > 0 || o.Step >= 0 || o.Word
 // A claim is one possible origin of a symbol. It is shown only where it holds:
 // the inputs or the step named must give the very number that the step used.
 type claim struct {
-	paths []string                  // of inputs; an element of places may stand first, {config} is the configuration of the part
+	paths []string                  // of inputs; an element of places may stand first, {config} is the configuration of the part, {component} that of the drag build-up
 	steps []string                  // identifiers of formulas
 	of    func(v []float64) float64 // of the inputs' or the step's values; nil for the value itself
 	read  bool                      // from the inputs by interpolation or search, which is not done again here
@@ -76,9 +77,12 @@ func (s *Study) Origins(w *formula.Working) [][]Origin {
 	list := make([][]Origin, len(w.Steps))
 	for i, step := range w.Steps {
 		if step.Heading && IsPart(step.Note) {
-			t.config = s.partConfig(step.Note)
+			t.config, t.component = s.partConfig(step.Note), -1
 		}
 		if step.Formula == nil {
+			if !step.Heading {
+				t.component++ // in a build-up each begins with its name
+			}
 			continue
 		}
 		for j, sym := range step.Formula.In {
@@ -119,6 +123,8 @@ type tracer struct {
 	tables  map[string]bool
 	places  map[string]string // parts of the document that claims name, with their paths
 	config  string            // of the part
+
+	component int // of the drag build-up that is being worked out; -1 before the first
 }
 
 // origin is the first claim about the meaning that holds for the value in step i.
@@ -162,7 +168,7 @@ func (t *tracer) holds(c claim, i int, value float64) (Origin, bool) {
 
 // path completes the path of a claim.
 func (t *tracer) path(path string) string {
-	path = strings.Replace(path, "{config}", t.config, 1)
+	path = strings.NewReplacer("{config}", t.config, "{component}", strconv.Itoa(t.component)).Replace(path)
 	if first, rest, ok := strings.Cut(path, "."); ok && t.places[first] != "" {
 		return t.places[first] + "." + rest
 	}

@@ -5,6 +5,8 @@ import (
 	"strings"
 	"testing"
 
+	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/dragbuild"
 	"legwright/internal/perf/input"
 	"legwright/internal/perf/mission"
 	"legwright/internal/perf/powerplant"
@@ -40,6 +42,19 @@ var origins = map[string]func(*project.Spec){
 			r.MassGiven, r.AltitudeGiven, r.Altitude, r.DayGiven, r.Deviation = project.AtGreatest, project.AtAltitude, 800, mission.OwnDay, 10
 			s.Requirements = append(s.Requirements, r)
 		}
+	},
+	"by drag area, lift by stall speed":  func(s *project.Spec) { sayOtherwise(s, aircraft.ByDragArea, aircraft.ByStall) },
+	"by best glide, lift by stall speed": func(s *project.Spec) { sayOtherwise(s, aircraft.ByBestGlide, aircraft.ByStall) },
+	"by build-up": func(s *project.Spec) {
+		for i := range s.Variants {
+			f := &s.Variants[i].Aircraft.Airframe
+			for _, k := range dragbuild.Kinds {
+				f.Components = append(f.Components, dragbuild.New(k.Value, k.Label), dragbuild.New(k.Value, "other"))
+				c := &f.Components[len(f.Components)-1]
+				c.Length, c.WettedArea, c.Fineness, c.ThicknessRatio, c.ThicknessAt, c.Laminar, c.Interference = 0.8, 0.7, 4, 0.1, 0.4, 0.2, 1.2
+			}
+		}
+		sayOtherwise(s, aircraft.ByBuildUp, aircraft.ByCLMax)
 	},
 	"high": func(s *project.Spec) { s.Strips[0].Elevation = 1500 },
 }

@@ -16,7 +16,7 @@ import (
 
 // The parts of the working, by their headings.
 const (
-	partDrag     = "Drag polar and greatest lift"
+	partDrag     = "The clean drag polar"
 	partAir      = "Air"
 	partStall    = "Stall"
 	partRate     = "Best rate of climb"
@@ -52,7 +52,7 @@ var parts = map[string]string{
 // IsPart reports whether a heading of the working begins one of its parts; other headings stand within a part.
 func IsPart(heading string) bool {
 	switch heading {
-	case partAir, partStall, partRate, partMaximum, partRest, partTakeOff, partLanding, partCeiling, partTightest, partMission, partLoading, partAsked, StructurePart:
+	case partDrag, partAir, partStall, partRate, partMaximum, partRest, partTakeOff, partLanding, partCeiling, partTightest, partMission, partLoading, partAsked, StructurePart:
 		return true
 	}
 	return strings.HasPrefix(heading, requirement)
@@ -86,21 +86,16 @@ func (s *Study) Working() *formula.Working {
 // in writes a number of a remark as the project shows it; formulas stand in SI.
 func (s *Study) in(q units.Quantity, si float64) string { return s.Project.Spec.System().Format(q, si) }
 
-// dragWorking derives the clean polar and the greatest lift from what they are given by.
+// dragWorking derives the clean polar from what it is given by.
 func (s *Study) dragWorking(w *formula.Working) error {
 	w.Heading(partDrag)
-	f := &s.Variant().Aircraft.Airframe
-	f.DragWorking(w)
-	for _, c := range []struct {
-		name aircraft.Config
-		of   *aircraft.Configuration
-	}{{aircraft.Clean, &f.Clean}, {aircraft.TakeOff, &f.TakeOff}, {aircraft.Landing, &f.Landing}} {
-		if c.of.LiftGiven == aircraft.ByStall {
-			w.Note("CLmax, %s, from the stall speed given:", c.name)
-			c.of.LiftWorking(f.WingArea, w)
-		}
-	}
+	s.Variant().Aircraft.Airframe.DragWorking(w)
 	return nil
+}
+
+// liftWorking derives the greatest lift in a configuration where it is given by a stall speed.
+func (s *Study) liftWorking(c aircraft.Config, w *formula.Working) {
+	s.Variant().Aircraft.Airframe.LiftWorking(c, w)
 }
 
 // viewWorking derives the speeds of note under the view.
@@ -113,6 +108,7 @@ func (s *Study) viewWorking(w *formula.Working) error {
 	}
 	p := &pointperf.Point{Air: air, Mass: v.Mass, Config: v.Config, Lever: 1 - v.Setting}
 	w.Heading(partStall)
+	s.liftWorking(v.Config, w)
 	pointperf.Stall(a, p, w)
 	w.Heading(partRate)
 	b := s.Speeds.BestRate
@@ -169,6 +165,7 @@ func (s *Study) takeOffWorking(w *formula.Working) error {
 	if err := s.air(t.Place.Air, w); err != nil {
 		return err
 	}
+	s.liftWorking(aircraft.TakeOff, w)
 	pointperf.Stall(a, &pointperf.Point{Air: s.Project.Departure.Air, Mass: a.StartMass(), Config: aircraft.TakeOff}, w)
 	w.Note("%s, %s.", t.Place.Strip.Name, s.in(units.Mass, t.Mass))
 	stall := pointperf.Stall(a, p, w)
@@ -199,6 +196,7 @@ func (s *Study) landingWorking(w *formula.Working) error {
 	if err := s.air(start.Air, w); err != nil {
 		return err
 	}
+	s.liftWorking(aircraft.Landing, w)
 	pointperf.Stall(a, start, w)
 	l := &s.Landing
 	w.Note("%s, %s.", l.Place.Strip.Name, s.in(units.Mass, l.Mass))
