@@ -57,9 +57,8 @@ func (p *tab) fitsAt(name string) {
 }
 
 func TestLayout(t *testing.T) {
-	p, s := bench(t)
+	p, _ := bench(t)
 	p.expect(422)
-	p.expect(404)
 	p.shot("bench-1280-light")
 	p.media("", "dark")
 	p.shot("bench-1280-dark")
@@ -78,8 +77,15 @@ func TestLayout(t *testing.T) {
 	p.swapped(func() { p.press(tabKey) })
 	p.shot("failing-1280-light")
 	p.fitsAt("failing bench")
+}
+
+// TestLayoutOtherPages has a tab for each page, so that each has the time of a whole test.
+func TestLayoutOtherPages(t *testing.T) {
+	s := newSite(t, project.Demo())
 	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
 		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
+		p := newTab(t)
+		p.expect(404)
 		p.open(s.url + path)
 		p.shot(name + "-1280-light")
 		p.fitsAt(name)

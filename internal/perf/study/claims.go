@@ -60,9 +60,8 @@ var claims = map[string][]claim{
 	"wing area":                           {given(frame + "wing_area")},
 	"wing span":                           {given(frame + "span")},
 	"height of the wing above the ground": {given(frame + "wing_height")},
-	"maximum lift coefficient": {given(frame + "{config}.cl_max"), result("polar.stall-lift"), made("2 m g/(ρ₀ V² S)", func(v []float64) float64 {
-		return 2 * v[0] * atmos.Gravity / (atmos.SeaLevelDensity * v[1] * v[1] * v[2])
-	}, frame+"{config}.stall_mass", frame+"{config}.stall_speed", frame+"wing_area")},
+	"maximum lift coefficient": {given(frame + "{config}.cl_max"), result("polar.stall-lift"),
+		made("2 m g/(ρ₀ V² S)", liftAtStall, frame+"{config}.stall_mass", frame+"{config}.stall_speed", frame+"wing_area")},
 	"minimum drag coefficient":              {given(frame + "cd_min"), result("polar.drag-area", "polar.best-glide-minimum")},
 	"increment of the configuration":        {given(frame + "{config}.delta_cd")},
 	"least CD of the table":                 {read("least of the table", frame+"polar")},
@@ -118,28 +117,29 @@ var claims = map[string][]claim{
 	// Manoeuvre and gust envelope.
 	"span":         {given(frame + "span")},
 	"wing loading": {result("loads.wing-loading")},
-	"wing loading at the greatest take-off mass":      {result("loads.wing-loading")},
-	"greatest take-off weight":                        {made("m g", func(v []float64) float64 { return v[0] * atmos.Gravity }, "aircraft.weights.max_take_off")},
-	"greatest lift coefficient, upwards or downwards": {given(frame + "clean.cl_max"), made("its size", size, limit+"negative_cl")},
-	"positive limit load factor":                      {given(limit + "positive"), result("loads.limit-factor"), said("the least of the rule")},
-	"share of the positive one":                       {said("of the rule and category")},
-	"limit load factor":                               {given(limit + "positive"), result("loads.limit-factor"), made("its size", size, limit+"negative"), after("its size", size, "loads.negative-factor"), said("the least of the rule")},
-	"stall speed":                                     {result("loads.stall")},
-	"factor of the category":                          {said("of the rule and category")},
-	"factor of the category, kt over root of lb/ft²":  {said("of the rule and category")},
-	"one pound-force":                                 {said("exact, by definition")},
-	"one pound-force per square foot":                 {said("exact, by definition")},
-	"one knot":                                        {said("exact, by definition")},
-	"least design cruising speed":                     {result("loads.least-cruise", "loads.least-cruise-vla")},
-	"design cruising speed":                           {given(limit + "cruise"), result("loads.least-cruise", "loads.least-cruise-vla")},
-	"mean geometric chord":                            {result("loads.chord"), given(limit + "chord")},
-	"lift-curve slope per radian":                     {result("loads.lift-slope"), given(limit + "slope")},
-	"aeroplane mass ratio":                            {result("loads.mass-ratio")},
-	"gust alleviation factor":                         {result("loads.gust-alleviation")},
-	"standard air density at sea level":               {said("constant of the standard atmosphere")},
-	"derived gust velocity up to 20 000 ft":           {said("of the rule")},
-	"derived gust velocity":                           {result("loads.gust-aloft"), given(limit + "gust_cruise"), given(limit + "gust_dive"), said("of the rule, upwards or downwards")},
-	"equivalent airspeed":                             {given(limit + "cruise"), given(limit + "dive"), result("loads.least-cruise", "loads.least-cruise-vla", "loads.least-dive", "loads.least-dive-vla"), said("speed of this condition")},
+	"wing loading at the greatest take-off mass": {result("loads.wing-loading")},
+	"greatest take-off weight":                   {made("m g", func(v []float64) float64 { return v[0] * atmos.Gravity }, "aircraft.weights.max_take_off")},
+	"greatest lift coefficient, upwards or downwards": {given(frame + "clean.cl_max"), made("its size", size, limit+"negative_cl"),
+		made("2 m g/(ρ₀ V² S)", liftAtStall, frame+"clean.stall_mass", frame+"clean.stall_speed", frame+"wing_area")},
+	"positive limit load factor":                     {given(limit + "positive"), result("loads.limit-factor"), said("the least of the rule")},
+	"share of the positive one":                      {said("of the rule and category")},
+	"limit load factor":                              {given(limit + "positive"), result("loads.limit-factor"), made("its size", size, limit+"negative"), after("its size", size, "loads.negative-factor"), said("the least of the rule")},
+	"stall speed":                                    {result("loads.stall")},
+	"factor of the category":                         {said("of the rule and category")},
+	"factor of the category, kt over root of lb/ft²": {said("of the rule and category")},
+	"one pound-force":                                {said("exact, by definition")},
+	"one pound-force per square foot":                {said("exact, by definition")},
+	"one knot":                                       {said("exact, by definition")},
+	"least design cruising speed":                    {result("loads.least-cruise", "loads.least-cruise-vla")},
+	"design cruising speed":                          {given(limit + "cruise"), result("loads.least-cruise", "loads.least-cruise-vla")},
+	"mean geometric chord":                           {result("loads.chord"), given(limit + "chord")},
+	"lift-curve slope per radian":                    {result("loads.lift-slope"), given(limit + "slope")},
+	"aeroplane mass ratio":                           {result("loads.mass-ratio")},
+	"gust alleviation factor":                        {result("loads.gust-alleviation")},
+	"standard air density at sea level":              {said("constant of the standard atmosphere")},
+	"derived gust velocity up to 20 000 ft":          {said("of the rule")},
+	"derived gust velocity":                          {result("loads.gust-aloft"), given(limit + "gust_cruise"), given(limit + "gust_dive"), said("of the rule, upwards or downwards")},
+	"equivalent airspeed":                            {given(limit + "cruise"), given(limit + "dive"), result("loads.least-cruise", "loads.least-cruise-vla", "loads.least-dive", "loads.least-dive-vla"), said("speed of this condition")},
 
 	// Piston engines and propellers.
 	"throttle":                      {exactly(1, "full throttle"), said("setting of this condition")},
@@ -175,3 +175,8 @@ func pressureAltitude(v []float64) float64 { return atmos.PressureAltitude(v[0],
 
 // size is a number without its sign.
 func size(v []float64) float64 { return math.Abs(v[0]) }
+
+// liftAtStall is the lift coefficient of a stall with the mass, the equivalent airspeed and the wing area.
+func liftAtStall(v []float64) float64 {
+	return 2 * v[0] * atmos.Gravity / (atmos.SeaLevelDensity * v[1] * v[1] * v[2])
+}
