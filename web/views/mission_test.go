@@ -49,7 +49,7 @@ func TestMissionPage(t *testing.T) {
 		"overweight":      {add(mission.PickUp, func(l *mission.Leg) { l.Payload = 400 }), []string{"above the designer&#39;s greatest take-off mass"}},
 		"alternate":       {add(mission.Alternate, nil), []string{"100.0\u00a0km at 1000\u00a0m"}},
 		"short alternate": {add(mission.Alternate, func(l *mission.Leg) { l.Altitude, l.Distance = 3000, 5e3 }), []string{"the altitude is too high for so short a way"}},
-		"turns":           {add(mission.Turns, nil), []string{"is flown at a load factor of 1.15; what the structure bears is not checked here"}},
+		"turns":           {add(mission.Turns, func(l *mission.Leg) { l.Path, l.Load, l.Turns = mission.ByLoad, 7, 0 }), []string{"is flown at a load factor of 7, beyond the limit of"}},
 		"aviation":        {func(s *project.Spec) { s.Display = string(units.Aviation) }, []string{"lbf", "NM"}},
 	} {
 		m, text := missionText(t, c.change)

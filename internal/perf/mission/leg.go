@@ -99,7 +99,7 @@ var (
 	turns   = input.Spec{Name: "turns", Label: "Full turns", Quantity: units.Coefficient, Min: 0, Max: 1000}
 	heading = input.Spec{Name: "heading", Label: "Change of heading", Quantity: units.Angle, Min: 0, Max: 2 * math.Pi}
 	bank    = input.Spec{Name: "bank", Label: "Bank", Quantity: units.Angle, Min: 0.05, Max: 1.4}
-	load    = input.Spec{Name: "load_factor", Label: "Load factor", Quantity: units.Coefficient, Min: 1.01, Max: 9, Note: "The structure's limit is not checked here."}
+	load    = input.Spec{Name: "load_factor", Label: "Load factor", Quantity: units.Coefficient, Min: 1.01, Max: 9, Note: "Held against the structural limits, where they are entered."}
 	payload = input.Spec{Name: "payload", Label: "Mass", Quantity: units.Mass, Min: 0, Max: 20000}
 	share   = input.Spec{Name: "share", Label: "Share of the trip's fuel or energy", Quantity: units.Fraction, Min: 0, Max: 1, Note: "Without taxi and reserves.",
 		Typical: &input.Typical{Low: 0.05, High: 0.1, Source: input.CommonPractice}}

@@ -7,6 +7,7 @@ import (
 	"testing"
 
 	"legwright/internal/perf/formula/formulatest"
+	"legwright/internal/perf/loads"
 	"legwright/internal/perf/mission"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/study"
@@ -60,8 +61,28 @@ func TestTightestWorkingOfATurn(t *testing.T) {
 	if !turning || math.Abs(hand-(tight.Available-tight.Required)) > 1e-9*math.Abs(hand) {
 		t.Errorf("turn in the working %v, thrust in hand %g N, flown with %g N", turning, hand, tight.Available-tight.Required)
 	}
-	if text := codes(s)["turn-load"]; !strings.Contains(text, "load factor of 1.52") {
-		t.Errorf("warnings %q", codes(s))
+}
+
+// The load factor of turns is held against the structural limits, and where there are none that is said.
+func TestTurnsAgainstTheStructure(t *testing.T) {
+	turn := func(load float64, change func(*project.Spec)) string {
+		s := project.Demo()
+		s.Legs = slices.Insert(s.Legs, 6, changed(mission.Turns, func(l *mission.Leg) { l.Path, l.Load, l.Turns = mission.ByLoad, load, 0 }))
+		change(s)
+		p := built(t, s)
+		return codes(study.Run(p, 0, study.DefaultView(p, 0)))["turn-load"]
+	}
+	asIs := func(*project.Spec) {}
+	without := func(s *project.Spec) { s.Variants[0].Aircraft.Limits.Rule = loads.NoRule }
+	a, _ := built(t, project.Demo()).Aircraft[0].Structure(nil)
+	if text := turn(a.Positive-0.01, asIs); text != "" {
+		t.Errorf("within the limit: %q", text)
+	}
+	if text := turn(a.Positive+0.01, asIs); !strings.Contains(text, "beyond the limit of") {
+		t.Errorf("beyond the limit: %q", text)
+	}
+	if text := turn(1.5, without); !strings.Contains(text, "load factor of 1.5, and no structural limits are entered") {
+		t.Errorf("without limits: %q", text)
 	}
 }
 

@@ -142,16 +142,25 @@ func (s *Study) warnMission(a *aircraft.Aircraft) {
 
 const addReserve = "Add a reserve leg: rules ask for 30 minutes by day, 45 by night (14 CFR 91.151)."
 
-// warnLeg warns of what a leg does to the structure.
+// warnLeg warns of what a leg asks of the structure.
 func (s *Study) warnLeg(l *mission.LegResult, i int) {
 	if l.Leg.Kind == mission.PickUp && l.End.Mass > s.Masses.MaxTakeOff {
 		s.add("overweight", Stop, "mission", "Pick up less, or later, or show that the structure bears more.",
 			units.Say("after {} it is {}, {} above the designer's greatest take-off mass; structural margin is not checked here",
 				units.Text("“"+s.legName(i)+"”"), units.Of(units.Mass, l.End.Mass), units.Of(units.Mass, l.End.Mass-s.Masses.MaxTakeOff)))
 	}
-	if n := l.Leg.LoadFactor(); n > 1 {
-		s.add("turn-load", Caution, "mission", "Hold it against the designer's limit load factor, with gusts on top.",
-			units.Say("{} is flown at a load factor of {}; what the structure bears is not checked here", units.Text("“"+s.legName(i)+"”"), units.Of(units.Coefficient, roundTo(n, 100))))
+	n := l.Leg.LoadFactor()
+	if n <= 1 {
+		return
+	}
+	leg := units.Text("“" + s.legName(i) + "”")
+	switch d, given := s.Aircraft().Structure(nil); {
+	case !given:
+		s.add("turn-load", Caution, "mission", "Enter the structural limits, and leave room for gusts on top.",
+			units.Say("{} is flown at a load factor of {}, and no structural limits are entered to hold it against", leg, hundredth(n)))
+	case n > d.Positive*(1+1e-9):
+		s.add("turn-load", Stop, "mission", "Less bank.",
+			units.Say("{} is flown at a load factor of {}, beyond the limit of {} that was given", leg, hundredth(n), hundredth(d.Positive)))
 	}
 }
 
