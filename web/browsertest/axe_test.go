@@ -66,10 +66,10 @@ func TestAxeBench(t *testing.T) {
 
 func TestAxeOtherPages(t *testing.T) {
 	s := newSite(t, project.Demo())
-	p := newTab(t)
-	p.expect(404)
 	for name, path := range map[string]string{"shelf": "/projects", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "import": "/projects/1/variants/a/import", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
+		p := newTab(t) // each has its own time
+		p.expect(404)
 		p.open(s.url + path)
 		p.audits(name, looks)
 	}
