@@ -15,6 +15,7 @@
 //	runway      take-off and landing distances
 //	envelope    sweeps over speed and altitude
 //	mission     legs flown one after another; fuel, time, reserves
+//	sheet       tables as spreadsheets write them, turned into rows of a table of the document
 //	project     the whole document: mission, days, strips, requirements, variants
 //	study       everything about one variant of a project, computed once
 //

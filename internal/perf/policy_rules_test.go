@@ -35,6 +35,7 @@ var allowed = map[string]string{
 	"internal/perf/runway":     "units input formula numeric atmos polar powerplant aircraft pointperf",
 	"internal/perf/envelope":   "units formula numeric atmos polar powerplant aircraft pointperf",
 	"internal/perf/mission":    "units input formula numeric atmos polar powerplant aircraft pointperf runway",
+	"internal/perf/sheet":      "units input",
 	"internal/perf/project":    "units input atmos dragbuild powerplant loads aircraft runway mission",
 	"internal/perf/study":      engine,
 
@@ -57,7 +58,7 @@ var allowed = map[string]string{
 }
 
 // engine is every package of the engine that the program itself may use.
-const engine = "units input formula numeric atmos polar dragbuild propeller powerplant loads aircraft pointperf runway envelope mission project study"
+const engine = "units input formula numeric atmos polar dragbuild propeller powerplant loads aircraft pointperf runway envelope mission sheet project study"
 
 // support are the packages that only tests import; they may read files.
 var support = []string{"internal/perf/reference", "internal/perf/formula/formulatest", "internal/perf/powerplant/powerplanttest", "internal/perf/aircraft/aircrafttest"}

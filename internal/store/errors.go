@@ -13,6 +13,7 @@ var (
 	ErrNoName        = errors.New("a project needs a name")
 	ErrNotJSON       = errors.New("the project document is not JSON")
 	ErrTooLarge      = errors.New("the project is too large to be saved")
+	ErrFileUsed      = errors.New("a table was filled from this file, so it stays")
 	ErrInUse         = errors.New("data folder in use")
 	ErrNewer         = errors.New("database of a newer program")
 )

@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"database/sql"
 	"errors"
+	"fmt"
 	"io/fs"
 	"os"
 	"path/filepath"
@@ -76,7 +77,7 @@ func TestSettingsReadBack(t *testing.T) {
 func TestNewerDatabase(t *testing.T) {
 	dir := t.TempDir()
 	db := openAt(t, dir)
-	if _, err := db.sql.Exec("INSERT INTO goose_db_version (version_id, is_applied) VALUES (9, 1)"); err != nil {
+	if _, err := db.sql.Exec("INSERT INTO goose_db_version (version_id, is_applied) VALUES (99, 1)"); err != nil {
 		t.Fatal(err)
 	}
 	db.Close()
@@ -85,7 +86,7 @@ func TestNewerDatabase(t *testing.T) {
 	if !errors.Is(err, ErrNewer) {
 		t.Fatalf("newer database: %v", err)
 	}
-	for _, part := range []string{filepath.Join(dir, FileName), "schema 9", "up to 1", "Use the newer program"} {
+	for _, part := range []string{filepath.Join(dir, FileName), "schema 99", fmt.Sprintf("up to %d", newest(t)), "Use the newer program"} {
 		if !strings.Contains(err.Error(), part) {
 			t.Errorf("%q lacks %q", err, part)
 		}
@@ -167,6 +168,61 @@ func read(t *testing.T, path string) []byte {
 	return b
 }
 
+// newest is the number of the present schema.
+func newest(t *testing.T) int {
+	t.Helper()
+	names, err := fs.Glob(migrations.Files, "*.sql")
+	if err != nil || len(names) == 0 {
+		t.Fatal(names, err)
+	}
+	return len(names)
+}
+
+// firstSteps are the first n of the real migrations: the program of that day.
+func firstSteps(t *testing.T, n int) fs.FS {
+	t.Helper()
+	names, err := fs.Glob(migrations.Files, "*.sql")
+	if err != nil || len(names) < n {
+		t.Fatal(names, err)
+	}
+	steps := fstest.MapFS{}
+	for _, name := range names[:n] {
+		b, err := migrations.Files.ReadFile(name)
+		if err != nil {
+			t.Fatal(err)
+		}
+		steps[name] = &fstest.MapFile{Data: b}
+	}
+	return steps
+}
+
+// TestEarlierSchemas: what a program of each earlier schema saved is there after the steps since.
+func TestEarlierSchemas(t *testing.T) {
+	for n := 1; n < newest(t); n++ {
+		dir := t.TempDir()
+		db, err := open(t.Context(), dir, "test-0", firstSteps(t, n), clock())
+		if err != nil {
+			t.Fatal(err)
+		}
+		rev := save(t, db, create(t, db, "A", `{"n":1}`), `{"n":2}`)
+		step(t, db.Undo, rev.Project)
+		if err := db.Close(); err != nil {
+			t.Fatal(err)
+		}
+		db = openAt(t, dir)
+		if r, err := db.Head(t.Context(), rev.Project); err != nil || string(r.Doc) != `{"n":1}` || !r.CanRedo || r.Engine != "test-0" {
+			t.Errorf("from schema %d: %+v, %v", n, r, err)
+		}
+		save(t, db, Revision{Project: rev.Project, Number: 1, Name: "A"}, `{"n":3}`)
+		if got, want := schema(t, db), string(read(t, "testdata/schema.sql")); got != want {
+			t.Errorf("from schema %d the schema is\n%s", n, got)
+		}
+		if found, _ := filepath.Glob(filepath.Join(dir, fmt.Sprintf("backup-%d-*.db", n))); len(found) != 1 {
+			t.Errorf("from schema %d backups %q", n, found)
+		}
+	}
+}
+
 // withStep is the real migrations and one more.
 func withStep(t *testing.T, text string) fs.FS {
 	t.Helper()
@@ -199,7 +255,7 @@ func TestMigrationMakesBackup(t *testing.T) {
 	if _, err := db.sql.Exec("INSERT INTO more VALUES (1)"); err != nil {
 		t.Error(err)
 	}
-	backup := filepath.Join(dir, "backup-1-20300102T020406.000Z.db")
+	backup := filepath.Join(dir, fmt.Sprintf("backup-%d-20300102T020406.000Z.db", newest(t)))
 	old := t.TempDir()
 	if err := os.WriteFile(filepath.Join(old, FileName), read(t, backup), 0o600); err != nil {
 		t.Fatal(err)
@@ -222,7 +278,7 @@ func TestFailedMigration(t *testing.T) {
 	if err == nil {
 		t.Fatal("a failing step was taken")
 	}
-	for _, part := range []string{filepath.Join(dir, FileName), "from schema 1 to 999", "no such table: nowhere", "a backup was made as " + dir} {
+	for _, part := range []string{filepath.Join(dir, FileName), fmt.Sprintf("from schema %d to 999", newest(t)), "no such table: nowhere", "a backup was made as " + dir} {
 		if !strings.Contains(err.Error(), part) {
 			t.Errorf("%q lacks %q", err, part)
 		}

@@ -67,15 +67,8 @@ func (db *DB) Save(ctx context.Context, id, base int64, name string, doc []byte,
 		return Revision{}, err
 	}
 	var rev Revision
-	err := db.inTx(ctx, func(tx *sql.Tx) error {
-		number, err := headNumber(ctx, tx, id)
-		if err != nil {
-			return err
-		}
-		if number != base {
-			return &ConflictError{Base: base, Head: number}
-		}
-		rev, err = db.addRevision(ctx, tx, Revision{Project: id, Parent: base, Name: name, Doc: doc, Summary: summary})
+	err := db.inTx(ctx, func(tx *sql.Tx) (err error) {
+		rev, err = db.saveOn(ctx, tx, id, base, name, doc, summary)
 		return err
 	})
 	return rev, err

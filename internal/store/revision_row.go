@@ -42,6 +42,26 @@ func head(ctx context.Context, tx *sql.Tx, id int64) (Revision, error) {
 	return revision(ctx, tx, id, number)
 }
 
+// headAt is the head, which must be the revision base.
+func headAt(ctx context.Context, tx *sql.Tx, id, base int64) (Revision, error) {
+	number, err := headNumber(ctx, tx, id)
+	if err != nil {
+		return Revision{}, err
+	}
+	if number != base {
+		return Revision{}, &ConflictError{Base: base, Head: number}
+	}
+	return revision(ctx, tx, id, number)
+}
+
+// saveOn adds a revision after base, which must be the head.
+func (db *DB) saveOn(ctx context.Context, tx *sql.Tx, id, base int64, name string, doc []byte, summary string) (Revision, error) {
+	if _, err := headAt(ctx, tx, id, base); err != nil {
+		return Revision{}, err
+	}
+	return db.addRevision(ctx, tx, Revision{Project: id, Parent: base, Name: name, Doc: doc, Summary: summary})
+}
+
 func revision(ctx context.Context, tx *sql.Tx, id, number int64) (Revision, error) {
 	row := tx.QueryRowContext(ctx, "SELECT "+columns+", r.doc FROM revision r WHERE r.project_id = ? AND r.number = ?", id, number)
 	var doc []byte

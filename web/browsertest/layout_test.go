@@ -21,7 +21,7 @@ const tooWide = `(() => {
 		const r = e.getBoundingClientRect();
 		if ((r.right > room + 1 || r.left < -1) && !scrolls(e)) bad.push("beyond the page: " + seen(e) + " " + Math.round(r.left) + ".." + Math.round(r.right));
 	}
-	for (const e of document.querySelectorAll(".tile, .tile *, .field > label, .verdict, .verdict-text *, .crumbs, .crumbs a, .message, .field .error, .field .hint, .group > summary, .group > summary *, legend, .rows th, .rows td, h1, h2, h3, .shelf li, .shelf-name, .warning > *, .lead, .note, button, .saved")) {
+	for (const e of document.querySelectorAll(".tile, .tile *, .field > label, .verdict, .verdict-text *, .crumbs, .crumbs a, .message, .field .error, .field .hint, .group > summary, .group > summary *, legend, .rows th, .rows td, h1, h2, h3, .shelf li, .shelf-name, .warning > *, .lead, .note, button, .saved, .import-field, .import-target, .import-tables a")) {
 		if (hidden(e) || e.closest(".visually-hidden, .first-submit") || getComputedStyle(e).display === "inline" || getComputedStyle(e).display === "contents") continue;
 		if (e.scrollWidth > e.clientWidth + 1) bad.push("cut or overflowing: " + seen(e) + " " + e.scrollWidth + " in " + e.clientWidth + ": " + e.innerText.slice(0, 40));
 	}
@@ -79,14 +79,10 @@ func TestLayout(t *testing.T) {
 	p.fitsAt("failing bench")
 }
 
-// TestLayoutOtherPages has a tab for each page, so that each has the time of a whole test.
 func TestLayoutOtherPages(t *testing.T) {
 	s := newSite(t, project.Demo())
-	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
-		p := newTab(t)
-		p.expect(404)
-		p.open(s.url + path)
+	for name := range pages {
+		p := s.openPage(name)
 		p.shot(name + "-1280-light")
 		p.fitsAt(name)
 	}
@@ -141,9 +137,8 @@ func TestUgly(t *testing.T) {
 	p.shot("ugly-1280-light")
 	p.openAll()
 	p.fitsAt("ugly bench")
-	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history"} {
-		p.open(s.url + path)
+	for name := range pages {
+		p := s.openPage(name)
 		p.fitsAt("ugly " + name)
 	}
 }

@@ -68,10 +68,8 @@ func TestPrint(t *testing.T) {
 
 func TestPrintOtherPages(t *testing.T) {
 	s := newSite(t, project.Demo())
-	p := newTab(t)
-	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history"} {
-		p.open(s.url + path)
+	for name := range pages {
+		p := s.openPage(name)
 		p.openAll()
 		p.printed(name + ", all open")
 	}

@@ -11,6 +11,7 @@ import (
 	"legwright/internal/perf/aircraft"
 	"legwright/internal/perf/dragbuild"
 	"legwright/internal/perf/project"
+	"legwright/internal/store"
 )
 
 // A crawler follows every link and sends every form of the site as it stands,
@@ -31,6 +32,7 @@ func TestCrawl(t *testing.T) {
 	c := &crawler{visitor: visit(t), known: map[string]bool{}}
 	c.keep(project.New("Second"))
 	c.keep(builtUp())
+	c.files()
 	c.add("/")
 	for len(c.waiting) > 0 && c.pages+c.sent < most {
 		next := c.waiting[0]
@@ -41,12 +43,13 @@ func TestCrawl(t *testing.T) {
 		t.Errorf("stopped after %d pages and %d forms, %d addresses left", c.pages, c.sent, len(c.waiting))
 	}
 	for _, path := range []string{"/projects/1/variants/a", "/projects/1/variants/b", "/projects/2/variants/a", "/projects/1/variants/a/working", "/projects/1/variants/a/climb", "/projects/1/variants/a/drag",
-		"/projects/1/variants/a/strip", "/projects/1/variants/a/mission", "/projects/1/variants/a/powerplant", "/projects/1/variants/a/requirements", "/projects/1/history", "/static/htmx.min.js"} {
+		"/projects/1/variants/a/strip", "/projects/1/variants/a/mission", "/projects/1/variants/a/powerplant", "/projects/1/variants/a/requirements", "/projects/1/history", "/static/htmx.min.js",
+		"/projects/1/variants/a/import?table=powerplant.values.engine.power_curve", "/projects/1/variants/a/import/2?table=powerplant.values.engine.power_curve", "/projects/1/originals/2"} {
 		if !c.known[path] {
 			t.Errorf("never reached %s", path)
 		}
 	}
-	for _, form := range []string{"form-weights remove-item #", "form-airframe remove-component #", "form-mission move-leg-up #", "form-legs move-leg-down #", "form-legs duplicate-leg #", "form-legs add-leg contingency", "form-legs add-leg turns", "form-requirements add-requirement", "form-requirement-# remove-requirement #", "add-form", "presets-form add-preset vla", "view-form", "undo-form", "redo-form", "units-form"} {
+	for _, form := range []string{"form-weights remove-item #", "form-airframe remove-component #", "form-mission move-leg-up #", "form-legs move-leg-down #", "form-legs duplicate-leg #", "form-legs add-leg contingency", "form-legs add-leg turns", "form-requirements add-requirement", "form-requirement-# remove-requirement #", "add-form", "presets-form add-preset vla", "view-form", "undo-form", "redo-form", "units-form", "import-upload", "import-mapping", "import-confirm"} {
 		if !c.known[form] {
 			t.Errorf("never sent %s", form)
 		}
@@ -62,6 +65,21 @@ func builtUp() *project.Spec {
 	f.Components = []dragbuild.Component{dragbuild.New(dragbuild.Surface, "Wing"), dragbuild.New(dragbuild.ByDragArea, "Gear")}
 	f.Clean.LiftGiven, f.Clean.StallSpeed, f.Clean.StallMass = aircraft.ByStall, 24, 600
 	return s
+}
+
+// files keeps a file that was used, so that it stays, and one that can be discarded.
+func (c *crawler) files() {
+	var used store.Original
+	for _, name := range []string{"unused.csv", "curve.csv"} {
+		var err error
+		if used, err = c.db.Keep(c.t.Context(), 1, name, []byte("rpm;P [kW]\n1800;40\n2800;62\n")); err != nil {
+			c.t.Fatal(err)
+		}
+	}
+	in := store.Import{Original: used.ID, Variant: "a", Path: "powerplant.values.engine.power_curve", Mapping: []byte("{}")}
+	if _, err := c.db.SaveImport(c.t.Context(), 1, 1, "Used", nil, "", in); err != nil {
+		c.t.Fatal(err)
+	}
 }
 
 func (c *crawler) add(address string) {
@@ -111,6 +129,7 @@ func (c *crawler) sound(what string) {
 	switch code := c.reply.Code; {
 	case code == 422 && c.page != nil && one(c.page, ".error") != nil: // it explains
 	case code == 404 && c.page != nil && strings.Contains(text(one(c.page, ".lead")), "no such variant; it may have been undone"): // the crawler undid it
+	case code == 404 && c.page != nil && strings.Contains(text(one(c.page, ".lead")), "it may have been discarded"): // the crawler did that
 	case code < 200 || code > 299:
 		c.t.Errorf("%s: status %d", what, code)
 	}

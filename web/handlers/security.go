@@ -19,10 +19,12 @@ import (
 const policy = "default-src 'none'; script-src 'self'; style-src 'self'; img-src 'self' data:; font-src 'self'; " +
 	"connect-src 'self'; form-action 'self'; base-uri 'none'; frame-ancestors 'none'"
 
-// Largest bodies in bytes: forms, and what carries whole projects: the JSON interface and imports.
+// Largest bodies in bytes: forms; what carries whole projects, which is the JSON
+// interface and imports; and sheets, of which more is let in than is read, so that the page can say so.
 const (
 	maxForm    = 1 << 20
 	maxProject = 8 << 20
+	maxUpload  = 8 << 20
 )
 
 // guards returns the checks in the order in which they must run. The log comes
@@ -120,6 +122,9 @@ func limitBody(next http.Handler) http.Handler {
 		limit := int64(maxForm)
 		if r.URL.Path == "/api" || strings.HasPrefix(r.URL.Path, "/api/") || r.URL.Path == "/projects/import" {
 			limit = maxProject
+		}
+		if strings.Contains(r.URL.Path, "/variants/") && strings.HasSuffix(r.URL.Path, "/import") {
+			limit = maxUpload
 		}
 		if r.ContentLength > limit {
 			http.Error(w, "This is too large to be taken.", http.StatusRequestEntityTooLarge)

@@ -116,7 +116,8 @@ func (v *visitor) submit(form *html.Node, changes url.Values, action string, hea
 	v.t.Helper()
 	values := controls(form)
 	for name, list := range changes {
-		if !values.Has(name) {
+		box := func(n *html.Node) bool { return attr(n, "name") == name }
+		if !values.Has(name) && !slices.ContainsFunc(all(form, "input[type=checkbox]"), box) {
 			v.t.Errorf("%s: form %s has no field %s", v.at, attr(form, "id"), name)
 		}
 		values[name] = list
@@ -172,6 +173,9 @@ func controls(form *html.Node) url.Values {
 		}
 		switch n.Data {
 		case "input":
+			if attr(n, "type") == "file" || attr(n, "type") == "checkbox" && !has(n, "checked") {
+				continue
+			}
 			values.Add(attr(n, "name"), strings.NewReplacer("\r", "", "\n", "").Replace(value(n)))
 		case "select":
 			values.Add(attr(n, "name"), value(n))

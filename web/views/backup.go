@@ -22,6 +22,9 @@ func NewBackup(name string, at time.Time, size int64) Backup {
 }
 
 func bytesWords(n int64) string {
+	if n < 1000 {
+		return fmt.Sprintf("%d\u00a0bytes", n)
+	}
 	if n < 1e6 {
 		return fmt.Sprintf("%.0f\u00a0kB", float64(n)/1e3)
 	}

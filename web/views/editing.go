@@ -42,6 +42,7 @@ type Editing struct {
 	RefusedText string
 	Loose       []string // what was refused and has no field on the page to stand beside
 	Groups      []Group
+	here        string // address of the variant
 }
 
 // newEditing makes the editing of a page that shows no inputs yet.
@@ -49,7 +50,7 @@ func newEditing(s *study.Study, st State) Editing {
 	sys := s.Project.Spec.System()
 	here := fmt.Sprintf("/projects/%d/variants/%s", st.ProjectID, s.Variant().ID)
 	e := Editing{
-		Page: st.Page, Action: here + st.Query, UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query,
+		here: here, Page: st.Page, Action: here + st.Query, UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query,
 		System: string(sys), Revision: strconv.FormatInt(st.Revision, 10), Saved: st.Saved.Local().Format("15:04:05"),
 		CanUndo: st.CanUndo, CanRedo: st.CanRedo, Message: st.Message, Refused: len(st.Refusals),
 	}
@@ -61,6 +62,7 @@ func newEditing(s *study.Study, st State) Editing {
 
 // form shows groups of inputs and what was refused in them.
 func (e *Editing) form(groups []Group, refusals []Refusal) {
+	offerImports(groups, e.here)
 	e.Groups = groups
 	e.Loose = loose(refusals, groups)
 	e.RefusedText = refusedText(len(refusals), len(e.Loose))

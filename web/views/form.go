@@ -32,6 +32,7 @@ type Field struct {
 	Basis   []Option // nil when the input has no basis
 	Weak    bool     // placeholder
 	Remark  string   // note of the basis
+	Import  string   // address of the page that fills a table from a file
 }
 
 // long reports whether what stands in the entry of a number needs more room than its column has.

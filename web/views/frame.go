@@ -3,6 +3,7 @@ package views
 import (
 	"fmt"
 
+	"legwright/internal/perf/project"
 	"legwright/internal/perf/study"
 )
 
@@ -34,12 +35,19 @@ var tabs = []struct{ Path, Label string }{
 // variant; query is that of the view, with its question mark, or empty; mistaken
 // are the settings in it that were not understood.
 func NewFrame(s *study.Study, projectID int64, path, query string, mistaken []Refusal) Frame {
-	spec, v := s.Project.Spec, s.Variant()
+	f := frameOf(s.Project.Spec, s.Index, projectID, path, query)
+	f.Mistaken = mistaken
+	return f
+}
+
+// frameOf is the frame of a page that needs no study.
+func frameOf(spec *project.Spec, index int, projectID int64, path, query string) Frame {
+	v := &spec.Variants[index]
 	base := fmt.Sprintf("/projects/%d", projectID)
-	f := Frame{ProjectURL: base, Project: spec.Name, Variant: v.Name, URL: base + "/variants/" + v.ID + path, Mistaken: mistaken}
+	f := Frame{ProjectURL: base, Project: spec.Name, Variant: v.Name, URL: base + "/variants/" + v.ID + path}
 	for i := range spec.Variants {
 		o := &spec.Variants[i]
-		f.Variants = append(f.Variants, Link{o.Name, base + "/variants/" + o.ID + path + query, i == s.Index})
+		f.Variants = append(f.Variants, Link{o.Name, base + "/variants/" + o.ID + path + query, i == index})
 	}
 	for _, t := range tabs {
 		f.Tabs = append(f.Tabs, Link{t.Label, base + "/variants/" + v.ID + t.Path + query, t.Path == path})

@@ -40,8 +40,10 @@ var (
 	unlisted    = input.Spec{Name: "unlisted", Label: "Drag area not in the list", Quantity: units.DragArea, Min: -50, Max: 250, Note: "0 once the list is whole; negative where it counts too much."}
 	frictionTAS = input.Spec{Name: "friction_tas", Label: "Friction taken at, TAS", Quantity: units.Speed, Min: 2, Max: 250, Note: "True airspeed of the Reynolds numbers: that of the cruise."}
 	frictionAlt = input.Spec{Name: "friction_alt", Label: "Friction taken at altitude", Quantity: units.Altitude, Min: -500, Max: 25000, Note: "Pressure altitude, standard day."}
-	columnCL    = input.Spec{Name: "cl", Label: "CL", Quantity: units.Coefficient, Min: -3, Max: 5}
-	columnCD    = input.Spec{Name: "cd", Label: "CD", Quantity: units.Coefficient, Min: 0.001, Max: 3}
+	columnCL    = input.Spec{Name: "cl", Label: "CL", Quantity: units.Coefficient, Min: -3, Max: 5, Note: "Of the whole aircraft, on the wing area above.",
+		Also: []string{"lift coefficient", "lift coeff", "CA"}}
+	columnCD = input.Spec{Name: "cd", Label: "CD", Quantity: units.Coefficient, Min: 0.001, Max: 3, Note: "Of the whole aircraft, clean, trimmed, on the same wing area; an airfoil's alone is far less.",
+		Also: []string{"drag coefficient", "drag coeff", "CW"}}
 )
 
 // DragWays lists the ways to give the drag polar, with their words.

@@ -39,7 +39,15 @@ type Table struct {
 	Note    string
 	Columns []*Spec
 	MinRows int
+	Derived []Derived    // what sheets often state beside the columns
 	Value   *[][]float64 // rows; each as long as Columns, in SI
+}
+
+// A Derived is a number that follows from a row of a table. A sheet that states it too
+// shows whether its columns are read in the units and definitions that they are written in.
+type Derived struct {
+	*Spec
+	Of func(row []float64) float64 // from a row in SI to the SI unit of Spec.Quantity; NaN where it has no meaning
 }
 
 // A Choice is one of a few named options.

@@ -12,7 +12,7 @@ import (
 var (
 	ErrSyntax    = errors.New("not understood as a number")
 	ErrUnit      = errors.New("unit not known here")
-	ErrAmbiguous = errors.New("could mean two numbers")
+	ErrAmbiguous = errors.New("not clear, for it could mean two numbers")
 	ErrRange     = errors.New("outside what is accepted")
 	ErrRequired  = errors.New("required")
 	ErrChoice    = errors.New("not one of the choices")

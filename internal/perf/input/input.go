@@ -20,6 +20,7 @@ type Spec struct {
 	Max      float64        // largest accepted, in the quantity's SI unit, inclusive
 	Note     string         // what it is, or why the range is what it is
 	Typical  *Typical       // nil when the class of aircraft decides
+	Also     []string       // what the heads of a sheet may call it beside Name and Label
 }
 
 // Typical is the range that a reader would expect, shown beside the field; values outside it are accepted.

@@ -66,6 +66,16 @@ func (s *Spec) Parse(text string, sys units.System) (float64, error) {
 	return s.snap(total), nil
 }
 
+// Take is the value in SI of a number written in the unit u, checked against the
+// range of s. What only the last digits of a conversion put outside is the bound.
+func (s *Spec) Take(written float64, u units.Unit) (float64, error) {
+	v := u.ToSI(written)
+	if s.Check(v) != nil {
+		v = s.snap(v)
+	}
+	return v, s.Check(v)
+}
+
 // snap returns the bound that v, in SI, differs from by no more than the
 // rounding of units.Plain and the last bits of a conversion, else v.
 func (s *Spec) snap(v float64) float64 {
@@ -124,25 +134,12 @@ func cutUnit(s string) (symbol, rest string) {
 	return s, ""
 }
 
-// find looks a unit symbol up among those of q, exactly first, then without regard to case.
+// find looks a unit symbol up among those of q; no symbol is the unit of sys.
 func find(q units.Quantity, symbol string, sys units.System) (units.Unit, bool) {
 	if symbol == "" {
 		return sys.Unit(q), true
 	}
-	list := q.Units()
-	for _, equal := range []func(a, b string) bool{func(a, b string) bool { return a == b }, strings.EqualFold} {
-		for _, u := range list {
-			if equal(u.Symbol, symbol) {
-				return u, true
-			}
-			for _, a := range u.Aliases {
-				if equal(a, symbol) {
-					return u, true
-				}
-			}
-		}
-	}
-	return units.Unit{}, false
+	return q.Find(symbol)
 }
 
 func symbols(q units.Quantity) string {
@@ -163,14 +160,18 @@ func symbols(q units.Quantity) string {
 func (t *Table) ParseRows(text string, sys units.System) ([][]float64, error) {
 	rows := [][]float64{}
 	line := 0
-	for raw := range strings.Lines(text) {
+	for raw := range strings.Lines(strings.TrimPrefix(text, "\ufeff")) {
 		raw = strings.TrimSpace(raw)
 		if raw == "" || strings.HasPrefix(raw, "#") {
 			continue
 		}
 		line++
 		fail := func(err error) ([][]float64, error) {
-			return nil, &Error{Path: t.Name, Text: "row " + strconv.Itoa(line) + ", " + raw, Accepts: t.accepted(sys), Err: err}
+			accepts := t.accepted(sys)
+			if line == 1 && !strings.ContainsAny(raw, "0123456789") {
+				accepts += "; heads and their units are read by an import, not here"
+			}
+			return nil, &Error{Path: t.Name, Text: "row " + strconv.Itoa(line) + ", " + raw, Accepts: accepts, Err: err}
 		}
 		cells := columns(raw)
 		if len(cells) != len(t.Columns) {
@@ -189,10 +190,11 @@ func (t *Table) ParseRows(text string, sys units.System) ([][]float64, error) {
 	return rows, nil
 }
 
+// columns parts a line. Empty cells at its end, which spreadsheets copy along, are none.
 func columns(line string) []string {
 	for _, sep := range []string{"\t", ";"} {
 		if strings.Contains(line, sep) {
-			return strings.Split(line, sep)
+			return strings.Split(strings.TrimRight(line, sep+" "), sep)
 		}
 	}
 	return strings.Fields(strings.ReplaceAll(line, ", ", " "))

@@ -139,3 +139,28 @@ func FuzzParse(f *testing.F) {
 		}
 	})
 }
+
+// TestTake: a number written in a unit is converted to the last bit, unless only rounding puts it outside a bound.
+func TestTake(t *testing.T) {
+	s := &input.Spec{Name: "power", Label: "Power", Quantity: units.Power, Min: 100, Max: 3e6}
+	hp, _ := units.Power.Find("hp")
+	kW, _ := units.Power.Find("kW")
+	for _, c := range []struct {
+		written float64
+		u       units.Unit
+		want    float64
+		ok      bool
+	}{
+		{80, hp, 80 * 745.69987158227022, true}, // 550 ft·lbf/s
+		{3000, kW, 3e6, true}, {3000.0001, kW, 3e6, true}, {3000.01, kW, 3000010, false}, {0.1, kW, 100, true}, {-1, kW, -1000, false},
+		{math.NaN(), kW, 0, false}, {math.Inf(1), kW, 0, false},
+	} {
+		got, err := s.Take(c.written, c.u)
+		if (err == nil) != c.ok || c.ok && math.Abs(got-c.want) > 1e-15*c.want {
+			t.Errorf("%v %s: %v, %v", c.written, c.u.Symbol, got, err)
+		}
+	}
+	if got, err := s.Take(2999.9999, kW); err != nil || got != 2999999.9 {
+		t.Errorf("a value inside is moved to the bound: %v, %v", got, err)
+	}
+}

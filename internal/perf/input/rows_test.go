@@ -24,6 +24,7 @@ func TestParseRows(t *testing.T) {
 	want := [][]float64{{30, 50e3}, {46, 76.5e3}}
 	for _, text := range []string{
 		"1800 50\n2760 76.5", "1800\t50\n2760\t76.5\n", "1800; 50\n\n# a remark\n2760; 76,5\n", "  1800   50 \r\n2760 76.5\r\n", "1800 rpm; 50 kW\n46 rev/s; 76500 W", "1800, 50\n2760, 76.5", "1 800\t50\n2 760\t76.5",
+		"1800\t50\t\t\n2760\t76.5\t\n\t\n", "\ufeff1800;50;\n2760;76,5;;\n",
 	} {
 		got, err := curve(&[][]float64{}).ParseRows(text, units.Metric)
 		if err != nil || len(got) != 2 {
@@ -45,7 +46,7 @@ func TestParseRows(t *testing.T) {
 
 func TestParseRowsRefuses(t *testing.T) {
 	for _, c := range []struct{ text, says string }{
-		{"1800 50\n2760", "row 2, 2760"}, {"1800 50 3", "row 1, 1800 50 3"}, {"1800 fifty", "row 1"}, {"1800;1,234", "row 1"}, {"1800;", "row 1"}, {"# nothing\n\nx y", "row 1, x y"}, {"1800; 50 m", "row 1"},
+		{"1800 50\n2760", "row 2, 2760"}, {"1800 50 3", "row 1, 1800 50 3"}, {"1800 fifty", "row 1"}, {"1800;1,234", "row 1"}, {"1800;", "row 1"}, {"# nothing\n\nx y", "row 1, x y"}, {"1800; 50 m", "row 1"}, {"1800\t\t50", "row 1"}, {"rpm\tkW\n1800\t50", "heads and their units are read by an import, not here"},
 	} {
 		rows, err := curve(&[][]float64{}).ParseRows(c.text, units.Aviation)
 		var e *input.Error

@@ -45,12 +45,22 @@ var (
 	accessory   = input.Spec{Name: "accessory_power", Label: "Accessory power", Quantity: units.Power, Min: 0, Max: 1e5, Note: "Generator, vacuum and hydraulic pumps."}
 	consumption = input.Spec{Name: "consumption", Label: "Fuel consumption", Quantity: units.Consumption, Min: 1e-8, Max: 1e-6,
 		Note:    "Fuel per brake work.",
+		Also:    []string{"BSFC", "SFC", "specific fuel consumption", "specific consumption", "be"},
 		Typical: &input.Typical{Low: 0.38 * 1.68966e-7, High: 0.60 * 1.68966e-7, Source: "0.38 to 0.60 lb/hp·h for four-stroke engines, common practice, no source"}}
-	idleFlow      = input.Spec{Name: "idle_flow", Label: "Idle fuel flow", Quantity: units.FuelFlow, Min: 0, Max: 0.05, Note: "Fuel flow with the throttle closed; the flow never falls below it."}
-	curveSpeed    = input.Spec{Name: "speed", Label: "Engine speed", Quantity: units.Rotation, Min: 1, Max: 500}
-	curvePower    = input.Spec{Name: "power", Label: "Full-throttle power", Quantity: units.Power, Min: 1, Max: 3e6}
-	curveFraction = input.Spec{Name: "fraction", Label: "Share of rated power", Quantity: units.Fraction, Min: 0, Max: 1.2}
+	idleFlow   = input.Spec{Name: "idle_flow", Label: "Idle fuel flow", Quantity: units.FuelFlow, Min: 0, Max: 0.05, Note: "Fuel flow with the throttle closed; the flow never falls below it."}
+	curveSpeed = input.Spec{Name: "speed", Label: "Engine speed", Quantity: units.Rotation, Min: 1, Max: 500, Note: "Of the crankshaft, before any gearing.",
+		Also: []string{"rpm", "n", "revs", "rotational speed", "crankshaft speed"}}
+	curvePower = input.Spec{Name: "power", Label: "Full-throttle power", Quantity: units.Power, Min: 1, Max: 3e6, Note: "Brake power at sea level, standard day.",
+		Also: []string{"P", "brake power", "shaft power", "rated power", "max power", "kW", "hp", "bhp", "PS"}}
+	curveFraction = input.Spec{Name: "fraction", Label: "Share of rated power", Quantity: units.Fraction, Min: 0, Max: 1.2, Note: "Not a share of the lever's travel.",
+		Also: []string{"load", "% power", "percent power", "power setting", "power", "share of power"}}
 )
+
+// rowTorque is P/(2π n).
+var rowTorque = []input.Derived{{
+	Spec: &input.Spec{Name: "torque", Label: "Torque", Quantity: units.Torque, Min: -1e9, Max: 1e9, Also: []string{"M", "Q", "T", "Md"}},
+	Of:   func(row []float64) float64 { return row[1] / (2 * math.Pi * row[0]) },
+}}
 
 // Inputs describes the engine's inputs.
 func (e *PistonEngine) Inputs() []input.Entry {
@@ -60,7 +70,7 @@ func (e *PistonEngine) Inputs() []input.Entry {
 			input.Option{Value: ByRating, Label: "rated power"}, input.Option{Value: ByTable, Label: "table against speed"}),
 		input.Num(&ratedPower, &e.RatedPower).If(!table),
 		input.Num(&ratedSpeed, &e.RatedSpeed).If(!table),
-		input.Rows(input.Table{Name: "power_curve", Label: "Full-throttle power", MinRows: 2, Columns: []*input.Spec{&curveSpeed, &curvePower},
+		input.Rows(input.Table{Name: "power_curve", Label: "Full-throttle power", MinRows: 2, Columns: []*input.Spec{&curveSpeed, &curvePower}, Derived: rowTorque,
 			Note: "Sea level, standard day; one row a line."}, &e.PowerCurve).If(table),
 		input.Num(&redline, &e.Redline),
 		input.Num(&critical, &e.CriticalAltitude),

@@ -3,6 +3,7 @@ package powerplant
 import (
 	"encoding/json"
 	"errors"
+	"math"
 
 	"legwright/internal/perf/input"
 	"legwright/internal/perf/propeller"
@@ -46,9 +47,9 @@ var (
 	propSpeed  = input.Spec{Name: "speed", Label: "Governed propeller speed", Quantity: units.Rotation, Min: 3, Max: 500}
 	lossFactor = input.Spec{Name: "loss_factor", Label: "Loss factor of the disc", Quantity: units.Coefficient, Min: 0.6, Max: 0.95,
 		Note: "Share of the shaft power that reaches the slipstream.", Typical: &input.Typical{Low: 0.78, High: 0.9, Source: input.CommonPractice}}
-	columnJ      = input.Spec{Name: "j", Label: "Advance ratio", Quantity: units.Coefficient, Min: 0, Max: 10}
-	columnCT     = input.Spec{Name: "ct", Label: "CT", Quantity: units.Coefficient, Min: -1, Max: 1}
-	columnCP     = input.Spec{Name: "cp", Label: "CP", Quantity: units.Coefficient, Min: -1, Max: 1}
+	columnJ      = input.Spec{Name: "j", Label: "Advance ratio", Quantity: units.Coefficient, Min: 0, Max: 10, Note: "V/(n D) with n in turns per second.", Also: []string{"V/nD", "V/(n D)", "adv ratio"}}
+	columnCT     = input.Spec{Name: "ct", Label: "CT", Quantity: units.Coefficient, Min: -1, Max: 1, Note: "T/(ρ n² D⁴) with n in turns per second.", Also: []string{"thrust coefficient", "thrust coeff"}}
+	columnCP     = input.Spec{Name: "cp", Label: "CP", Quantity: units.Coefficient, Min: -1, Max: 1, Note: "P/(ρ n³ D⁵) with n in turns per second; 2π times a torque coefficient.", Also: []string{"power coefficient", "power coeff"}}
 	fuelVolume   = input.Spec{Name: "volume", Label: "Fuel aboard", Quantity: units.Volume, Min: 0, Max: 20}
 	tankCapacity = input.Spec{Name: "capacity", Label: "Tank capacity", Quantity: units.Volume, Min: 1e-5, Max: 20}
 	unusable     = input.Spec{Name: "unusable", Label: "Unusable fuel", Quantity: units.Volume, Min: 0, Max: 2}
@@ -61,6 +62,17 @@ func (p *PistonPropeller) Inputs() []input.Entry {
 	return []input.Entry{input.Num(&plantMass, &p.Mass)}
 }
 
+// rowEfficiency is J CT/CP, by the definitions of the three; nothing where the propeller does not pull.
+var rowEfficiency = []input.Derived{{
+	Spec: &input.Spec{Name: "eta", Label: "Efficiency", Quantity: units.Fraction, Min: -1e3, Max: 1e3, Also: []string{"η", "efficiency", "propeller efficiency", "eff"}},
+	Of: func(row []float64) float64 {
+		if row[1] <= 0 || row[2] <= 0 {
+			return math.NaN()
+		}
+		return row[0] * row[1] / row[2]
+	},
+}}
+
 // Inputs describes the propeller.
 func (p *Propeller) Inputs() []input.Entry {
 	fixed := p.Kind != ConstantSpeed
@@ -68,7 +80,7 @@ func (p *Propeller) Inputs() []input.Entry {
 		input.Pick("kind", "Propeller", &p.Kind,
 			input.Option{Value: FixedPitch, Label: "fixed pitch, measured coefficients"}, input.Option{Value: ConstantSpeed, Label: "constant speed, loaded disc"}),
 		input.Num(&diameter, &p.Diameter),
-		input.Rows(input.Table{Name: "coefficients", Label: "Coefficients", MinRows: 3, Columns: []*input.Spec{&columnJ, &columnCT, &columnCP},
+		input.Rows(input.Table{Name: "coefficients", Label: "Coefficients", MinRows: 3, Columns: []*input.Spec{&columnJ, &columnCT, &columnCP}, Derived: rowEfficiency,
 			Note: "Advance ratio, CT, CP; one row a line; J from 0 (at rest) to where the thrust has gone."}, &p.Coefficients).If(fixed),
 		input.Num(&propSpeed, &p.Speed).If(!fixed),
 		input.Num(&lossFactor, &p.LossFactor).If(!fixed),

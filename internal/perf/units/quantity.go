@@ -1,5 +1,7 @@
 package units
 
+import "strings"
+
 // A Quantity names what a number measures and so which units it may be written in.
 // Quantities of one dimension that people read in different units (an altitude
 // and a wing span, a speed and a rate of climb) are told apart.
@@ -69,7 +71,7 @@ var (
 	kilonewton = Unit{Symbol: "kN", Scale: 1e3}
 	lbf        = Unit{Symbol: "lbf", Scale: poundForce}
 	kgf        = Unit{Symbol: "kgf", Scale: gravity}
-	rpm        = Unit{Symbol: "rpm", Scale: 1.0 / 60, Aliases: []string{"1/min", "rev/min"}}
+	rpm        = Unit{Symbol: "rpm", Scale: 1.0 / 60, Aliases: []string{"1/min", "rev/min", "r/min", "U/min", "min-1", "min^-1", "min⁻¹"}}
 	revSec     = Unit{Symbol: "rev/s", Scale: 1}
 	pascal     = Unit{Symbol: "Pa", Scale: 1}
 	hectopasc  = Unit{Symbol: "hPa", Scale: 100, Aliases: []string{"mbar", "mb"}}
@@ -91,8 +93,8 @@ var (
 	lbGallon   = Unit{Symbol: "lb/US gal", Scale: pound / usGallon, Aliases: []string{"lb/gal"}}
 	deg        = Unit{Symbol: "°", Scale: degree, Aliases: []string{"deg"}}
 	radian     = Unit{Symbol: "rad", Scale: 1}
-	gramKWh    = Unit{Symbol: "g/kWh", Scale: 1e-3 / (1e3 * hour), Aliases: []string{"g/(kW h)", "g/kW/h"}}
-	lbHpHour   = Unit{Symbol: "lb/hp·h", Scale: pound / (horsepower * hour), Aliases: []string{"lb/(hp h)", "lb/hp/h", "lb/hph", "lb/hp h"}}
+	gramKWh    = Unit{Symbol: "g/kWh", Scale: 1e-3 / (1e3 * hour), Aliases: []string{"g/(kW h)", "g/kW/h", "g/kW h", "g/kW·h", "g/(kW·h)", "g/kW-h"}}
+	lbHpHour   = Unit{Symbol: "lb/hp·h", Scale: pound / (horsepower * hour), Aliases: []string{"lb/(hp h)", "lb/hp/h", "lb/hph", "lb/hp h", "lb/(hp·h)", "lb/hp-h", "lb/hp/hr", "lb/hp hr", "lb/hp·hr", "lb/(hp·hr)", "lb/hp-hr"}}
 	kgHour     = Unit{Symbol: "kg/h", Scale: 1 / hour}
 	lbHour     = Unit{Symbol: "lb/h", Scale: pound / hour, Aliases: []string{"lb/hr", "pph"}}
 	gramMin    = Unit{Symbol: "g/min", Scale: 1e-3 / 60}
@@ -117,7 +119,7 @@ var (
 
 var table = [quantities]row{
 	Coefficient:     {"number", "", shown{one, 4}, shown{one, 4}, shown{one, 4}, nil},
-	Fraction:        {"fraction", "", shown{percent, 1}, shown{percent, 1}, shown{percent, 1}, nil},
+	Fraction:        {"fraction", "", shown{percent, 1}, shown{percent, 1}, shown{percent, 1}, []Unit{ofOne}},
 	Length:          {"length", "m", shown{feet, 2}, shown{metre, 2}, shown{metre, 3}, []Unit{inches, millimetre, centimetre}},
 	Altitude:        {"altitude", "m", shown{feet, 0}, shown{metre, 0}, shown{metre, 0}, []Unit{kilometre}},
 	Height:          {"height", "m", shown{feet, 0}, shown{metre, 1}, shown{metre, 1}, nil},
@@ -185,4 +187,23 @@ func contains(list []Unit, u Unit) bool {
 		}
 	}
 	return false
+}
+
+// Find looks a unit up among those of q by its symbol or another way of writing
+// it, exactly first, then without regard to case.
+func (q Quantity) Find(symbol string) (Unit, bool) {
+	list := q.Units()
+	for _, equal := range []func(a, b string) bool{func(a, b string) bool { return a == b }, strings.EqualFold} {
+		for _, u := range list {
+			if equal(u.Symbol, symbol) {
+				return u, true
+			}
+			for _, a := range u.Aliases {
+				if equal(a, symbol) {
+					return u, true
+				}
+			}
+		}
+	}
+	return Unit{}, false
 }

@@ -62,4 +62,5 @@ var (
 	hours      = Unit{Symbol: "h", Scale: hour, Aliases: []string{"hr", "hour", "hours"}}
 	one        = Unit{Symbol: "", Scale: 1}
 	percent    = Unit{Symbol: "%", Scale: 1e-2}
+	ofOne      = Unit{Symbol: "fraction", Scale: 1}
 )

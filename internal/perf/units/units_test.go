@@ -73,3 +73,21 @@ func ExampleSystem_Format() {
 	// 5.8_lb
 	// 0.0335 72
 }
+
+// TestFind: the exact sign wins over one that differs in case, and a sign of another quantity is none.
+func TestFind(t *testing.T) {
+	for _, c := range []struct {
+		q            Quantity
+		text, symbol string
+		ok           bool
+	}{
+		{Rotation, "1/min", "rpm", true}, {Rotation, "U/min", "rpm", true}, {Rotation, "RPM", "rpm", true}, {Power, "KW", "kW", true}, {Power, "w", "W", true},
+		{Fraction, "%", "%", true}, {Fraction, "fraction", "fraction", true}, {Coefficient, "", "", true}, {Speed, "rpm", "", false}, {Power, "", "", false},
+		{Consumption, "lb/hp/hr", "lb/hp·h", true}, {Consumption, "g/kW·h", "g/kWh", true},
+	} {
+		u, ok := c.q.Find(c.text)
+		if ok != c.ok || u.Symbol != c.symbol {
+			t.Errorf("%s %q: %q, %v", c.q.Name(), c.text, u.Symbol, ok)
+		}
+	}
+}
