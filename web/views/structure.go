@@ -115,7 +115,7 @@ func structureFacts(t *study.Structure, sys units.System) []Row {
 	rows := []Row{
 		{Label: "Limit load factors", Value: factor(d.Positive) + " / " + factor(d.Negative), Remark: "up to VC; downwards " + factor(d.NegativeDive) + " at VD"},
 		{Label: "Gusts", Value: sys.Format(units.Speed, g.CruiseGust.Velocity), Remark: "at VC, up and down; " + sys.Format(units.Speed, g.DiveGust.Velocity) + " at VD"},
-		{Label: "Wing loading", Value: sys.Format(units.WingLoading, g.Mass/d.Airframe.Area), Remark: "at the mass set"},
+		{Label: "Wing loading", Value: sys.Format(units.WingLoading, g.Loading), Remark: "at the mass set"},
 		{Label: "Mean chord", Value: sys.Format(units.Length, d.Chord)},
 		{Label: "Lift-curve slope", Value: factor(d.Slope), Remark: "per radian"},
 		{Label: "Gust alleviation", Value: factor(g.Alleviation), Remark: "mass ratio " + units.Fixed(g.MassRatio, 1)},

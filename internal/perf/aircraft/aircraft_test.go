@@ -183,7 +183,10 @@ func TestLimits(t *testing.T) {
 	s := sample()
 	s.Limits.Rule = "normal"
 	s.Limits.SpeedsGiven = loads.ByValue
-	input.Convert(s, "limits.speeds_given", loads.ByRule)
+	filled := s.Switch("limits.speeds_given", loads.ByRule)
+	if len(filled) != 2 || filled[0].Path != "limits.cruise" || filled[1].Path != "limits.dive" || !aircraft.DerivedNote(filled[0].Note) {
+		t.Errorf("filled %+v", filled)
+	}
 	a, err := s.Build()
 	if err != nil {
 		t.Fatal(err)

@@ -25,6 +25,9 @@ func (s *Spec) Switch(choice, from string) []Derived {
 	if choice == "airframe.drag_given" {
 		return s.switchDrag(from)
 	}
+	if name, ok := strings.CutPrefix(choice, "limits."); ok {
+		return s.switchLimits(name, from)
+	}
 	for i, c := range s.Airframe.configurations() {
 		if path := "airframe." + configPaths[i]; choice == path+".lift_given" {
 			return s.switchLift(c, path, from)
@@ -40,6 +43,8 @@ const (
 	noteCLMax = "from CLmax"
 	noteFit   = "fitted to the table, CD within "
 	noteRows  = "rows "
+	noteRule  = "the rule's least"
+	noteWing  = "from wing area and span"
 )
 
 // DerivedNote reports whether a note is one of Switch.
@@ -50,7 +55,7 @@ func DerivedNote(note string) bool {
 			return true
 		}
 	}
-	return note == noteStart || note == noteStall || note == noteCLMax || strings.HasPrefix(note, noteFit)
+	return note == noteStart || note == noteStall || note == noteCLMax || note == noteRule || note == noteWing || strings.HasPrefix(note, noteFit)
 }
 
 // dragInputs are the inputs of each way to give the drag polar, and what the way is called in a note.

@@ -39,7 +39,7 @@ func (g *Diagram) corners() []float64 {
 	d := &g.Design
 	list := []float64{0, d.Cruise, d.Dive, g.Stall, g.NegativeStall}
 	mu, md, gu, gd := g.spans()
-	q := 0.5 * atmos.SeaLevelDensity / g.Loading
+	q := 0.5 * atmos.SeaLevelDensity / (g.Loading * atmos.Gravity)
 	for i := range 2 {
 		list = append(list, mu[i].crosses(gu[i])...)
 		list = append(list, md[i].crosses(gd[i])...)

@@ -101,7 +101,7 @@ func TestRules(t *testing.T) {
 		t.Errorf("CS-VLA at 400 N/m²: %+v", d)
 	}
 	// The wing loading of the FAR formula in SI is near that of CS-VLA, which rounds it.
-	if k := rules[1].leastCruise(400, nil) / d.Cruise; k < 1 || k > 1.03 {
+	if k := rules[1].leastCruise(400/9.80665, nil) / d.Cruise; k < 1 || k > 1.03 {
 		t.Errorf("14 CFR 23 asks for %g times the VC of CS-VLA", k)
 	}
 	// Dive speed follows the cruise speed once that is chosen faster than the least.

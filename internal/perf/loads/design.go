@@ -47,12 +47,12 @@ type Least struct {
 var (
 	meanChord = formula.Must(formula.Formula{
 		ID: "loads.chord", Out: formula.Sym("C", "mean geometric chord", units.Length),
-		In:   []formula.Symbol{formula.Sym("S", "wing area", units.Area), formula.Sym("b", "span", units.Length)},
+		In:   []formula.Symbol{formula.Sym("S", "wing area", units.Area), formula.Sym("b", "wing span", units.Length)},
 		Expr: "S/b", Source: formula.Definition,
 	})
 	aspectRatio = formula.Must(formula.Formula{
 		ID: "loads.aspect-ratio", Out: formula.Sym("A", "aspect ratio", units.Coefficient),
-		In:   []formula.Symbol{formula.Sym("b", "span", units.Length), formula.Sym("S", "wing area", units.Area)},
+		In:   []formula.Symbol{formula.Sym("b", "wing span", units.Length), formula.Sym("S", "wing area", units.Area)},
 		Expr: "b*b/S", Source: formula.Definition,
 	})
 	liftSlope = formula.Must(formula.Formula{
@@ -96,10 +96,10 @@ func (l *Limits) Design(a Airframe, w *formula.Working) (d Design, ok bool) {
 // least fills factors and speeds from the rule, and takes what is entered instead of it.
 func (d *Design) least(l *Limits, w *formula.Working) {
 	r, a := d.rule, &d.Airframe
-	w.Note("%s, at the greatest take-off mass, %s.", r.label, units.Metric.Format(units.Mass, a.MaxTakeOff))
+	w.Note("%s, at the greatest take-off mass.", r.label)
 	d.Least.Mass = r.heaviest
 	d.Least.Positive, d.Least.Negative = r.factors(a.MaxTakeOff*atmos.Gravity, w)
-	loading := w.Step(wingLoading, a.MaxTakeOff*atmos.Gravity/a.Area, a.MaxTakeOff, atmos.Gravity, a.Area)
+	loading := w.Step(wingLoading, a.MaxTakeOff/a.Area, a.MaxTakeOff, a.Area)
 	d.Least.Cruise = r.leastCruise(loading, w)
 	d.Positive, d.Negative = d.Least.Positive, d.Least.Negative
 	if l.FactorsGiven == ByValue {
@@ -114,7 +114,7 @@ func (d *Design) least(l *Limits, w *formula.Working) {
 	d.Dive = d.Least.Dive
 	if l.SpeedsGiven == ByValue {
 		d.Dive = l.Dive
-		w.Note("VC %s and VD %s are entered.", units.Metric.Format(units.Speed, d.Cruise), units.Metric.Format(units.Speed, d.Dive))
+		w.Note("VC and VD used are those entered.")
 	}
 }
 
@@ -123,7 +123,7 @@ func (d *Design) LeastDive(leastCruise float64) float64 {
 	if d.rule.name == Own {
 		return 0
 	}
-	return d.rule.leastDive(d.Cruise, leastCruise, d.Airframe.MaxTakeOff*atmos.Gravity/d.Airframe.Area, nil)
+	return d.rule.leastDive(d.Cruise, leastCruise, d.Airframe.MaxTakeOff/d.Airframe.Area, nil)
 }
 
 // Convert keeps the meaning of the limits when the choice of that name has changed from

@@ -13,7 +13,7 @@ import (
 type Diagram struct {
 	Design        Design
 	Mass          float64 // in kg
-	Loading       float64 // weight over wing area in Pa
+	Loading       float64 // mass over wing area, in the unit kg/m²
 	Stall         float64 // stall at load factor 1 in m/s
 	NegativeStall float64 // stall at load factor -1 in m/s
 	Maneuver      float64 // VA, where lift reaches the positive limit load factor, in m/s
@@ -59,9 +59,9 @@ type Extreme struct {
 var (
 	stall = formula.Must(formula.Formula{
 		ID: "loads.stall", Out: formula.Sym("VS", "stall speed, equivalent, of upward or downward lift", units.Speed),
-		In: []formula.Symbol{formula.Sym("w", "wing loading", units.Pressure), formula.Sym("rho0", "standard air density at sea level", units.Density),
-			formula.Sym("CLmax", "greatest lift coefficient, upwards or downwards", units.Coefficient)},
-		Expr: "sqrt(2*w/(rho0*CLmax))", Source: formula.Anderson, Where: "section 5.9",
+		In: []formula.Symbol{formula.Sym("w", "wing loading", units.WingLoading), formula.Sym("rho0", "standard air density at sea level", units.Density),
+			formula.Sym("CLmax", "greatest lift coefficient, upwards or downwards", units.Coefficient), formula.Sym("g", "standard gravity", units.Acceleration)},
+		Expr: "sqrt(2*w*g/(rho0*CLmax))", Source: formula.Anderson, Where: "section 5.9",
 	})
 	maneuver = formula.Must(formula.Formula{
 		ID: "loads.maneuvering-speed", Out: formula.Sym("VA", "design manoeuvring speed, equivalent; downwards, where lift reaches the negative limit", units.Speed),
@@ -70,9 +70,9 @@ var (
 	})
 	massRatio = formula.Must(formula.Formula{
 		ID: "loads.mass-ratio", Out: formula.Sym("mu", "aeroplane mass ratio", units.Coefficient),
-		In: []formula.Symbol{formula.Sym("w", "wing loading", units.Pressure), formula.Sym("rho", "air density", units.Density), formula.Sym("C", "mean geometric chord", units.Length),
-			formula.Sym("a", "lift-curve slope per radian", units.Coefficient), formula.Sym("g", "standard gravity", units.Acceleration)},
-		Expr: "2*w/(rho*C*a*g)", Source: formula.FAR23, Where: "23.341(c), as CS-VLA 341",
+		In: []formula.Symbol{formula.Sym("w", "wing loading", units.WingLoading), formula.Sym("rho", "air density", units.Density), formula.Sym("C", "mean geometric chord", units.Length),
+			formula.Sym("a", "lift-curve slope per radian", units.Coefficient)},
+		Expr: "2*w/(rho*C*a)", Source: formula.FAR23, Where: "23.341(c) with mass for weight, as CS-VLA 341",
 	})
 	alleviation = formula.Must(formula.Formula{
 		ID: "loads.gust-alleviation", Out: formula.Sym("Kg", "gust alleviation factor", units.Coefficient),
@@ -82,8 +82,8 @@ var (
 	gustFactor = formula.Must(formula.Formula{
 		ID: "loads.gust-factor", Out: formula.Sym("n", "load factor in a gust, down with U below 0", units.Coefficient),
 		In: []formula.Symbol{formula.Sym("Kg", "gust alleviation factor", units.Coefficient), formula.Sym("rho0", "standard air density at sea level", units.Density), formula.Sym("U", "derived gust velocity", units.Speed),
-			formula.Sym("V", "equivalent airspeed", units.Speed), formula.Sym("a", "lift-curve slope per radian", units.Coefficient), formula.Sym("w", "wing loading", units.Pressure)},
-		Expr: "1 + Kg*rho0*U*V*a/(2*w)", Source: formula.FAR23, Where: "23.341(c) in SI units: its 498 is 2/ρ0 in knots, feet and pounds; as CS-VLA 341",
+			formula.Sym("V", "equivalent airspeed", units.Speed), formula.Sym("a", "lift-curve slope per radian", units.Coefficient), formula.Sym("w", "wing loading", units.WingLoading), formula.Sym("g", "standard gravity", units.Acceleration)},
+		Expr: "1 + Kg*rho0*U*V*a/(2*w*g)", Source: formula.FAR23, Where: "23.341(c) in SI units: its 498 is 2/ρ0 in knots, feet and pounds; as CS-VLA 341",
 	})
 )
 
@@ -91,17 +91,17 @@ var (
 func (d *Design) At(air atmos.Air, mass float64, w *formula.Working) (*Diagram, error) {
 	const rho0 = atmos.SeaLevelDensity
 	g := &Diagram{Design: *d, Mass: mass}
-	w.Note("At %s and a pressure altitude of %s.", units.Metric.Format(units.Mass, mass), units.Metric.Format(units.Altitude, air.PressureAltitude))
-	g.Loading = w.Step(wingLoading, mass*atmos.Gravity/d.Airframe.Area, mass, atmos.Gravity, d.Airframe.Area)
-	g.Stall = w.Step(stall, math.Sqrt(2*g.Loading/(rho0*d.Airframe.CLMax)), g.Loading, rho0, d.Airframe.CLMax)
+	w.Note("At the mass and in the air of the envelope.")
+	g.Loading = w.Step(wingLoading, mass/d.Airframe.Area, mass, d.Airframe.Area)
+	g.Stall = w.Step(stall, math.Sqrt(2*g.Loading*atmos.Gravity/(rho0*d.Airframe.CLMax)), g.Loading, rho0, d.Airframe.CLMax, atmos.Gravity)
 	if g.Stall >= d.Cruise {
 		return nil, units.Errorf(nil, "the stall at {}, {}, is not below the design cruising speed, {}",
 			units.Of(units.Mass, mass), units.Of(units.Speed, g.Stall), units.Of(units.Speed, d.Cruise))
 	}
-	g.NegativeStall = w.Step(stall, math.Sqrt(2*g.Loading/(rho0*-d.NegativeCL)), g.Loading, rho0, -d.NegativeCL)
+	g.NegativeStall = w.Step(stall, math.Sqrt(2*g.Loading*atmos.Gravity/(rho0*-d.NegativeCL)), g.Loading, rho0, -d.NegativeCL, atmos.Gravity)
 	g.Maneuver = w.Step(maneuver, g.Stall*math.Sqrt(d.Positive), g.Stall, d.Positive)
 	g.NegativeReach = w.Step(maneuver, g.NegativeStall*math.Sqrt(-d.Negative), g.NegativeStall, -d.Negative)
-	g.MassRatio = w.Step(massRatio, 2*g.Loading/(air.Density*d.Chord*d.Slope*atmos.Gravity), g.Loading, air.Density, d.Chord, d.Slope, atmos.Gravity)
+	g.MassRatio = w.Step(massRatio, 2*g.Loading/(air.Density*d.Chord*d.Slope), g.Loading, air.Density, d.Chord, d.Slope)
 	g.Alleviation = w.Step(alleviation, 0.88*g.MassRatio/(5.3+g.MassRatio), g.MassRatio)
 	g.CruiseGust = g.gust(d.rule.gust(d.gustC, air.PressureAltitude, w), d.Cruise, w)
 	g.DiveGust = g.gust(d.rule.gust(d.gustD, air.PressureAltitude, w), d.Dive, w)
@@ -114,14 +114,14 @@ func (g *Diagram) gust(u, v float64, w *formula.Working) Gust {
 	const rho0 = atmos.SeaLevelDensity
 	n := func(u float64) float64 {
 		a := g.Design.Slope
-		return w.Step(gustFactor, 1+g.Alleviation*rho0*u*v*a/(2*g.Loading), g.Alleviation, rho0, u, v, a, g.Loading)
+		return w.Step(gustFactor, 1+g.Alleviation*rho0*u*v*a/(2*g.Loading*atmos.Gravity), g.Alleviation, rho0, u, v, a, g.Loading, atmos.Gravity)
 	}
 	return Gust{Velocity: u, Up: n(u), Down: n(-u)}
 }
 
 // lift is the load factors at the stalls at the equivalent airspeed v in m/s.
 func (g *Diagram) lift(v float64) Pair {
-	q := 0.5 * atmos.SeaLevelDensity * v * v / g.Loading
+	q := 0.5 * atmos.SeaLevelDensity * v * v / (g.Loading * atmos.Gravity)
 	return Pair{q * g.Design.Airframe.CLMax, q * g.Design.NegativeCL}
 }
 

@@ -67,23 +67,23 @@ func (l *Limits) Inputs() []input.Entry {
 		options = append(options, input.Option{Value: rules[i].name, Label: rules[i].label})
 	}
 	return []input.Entry{
-		input.Pick("rule", "Structure designed to", &l.Rule, options...),
-		input.Pick("factors_given", "Limit load factors", &l.FactorsGiven,
+		input.Ways("rule", "Structure designed to", &l.Rule, options...),
+		input.Ways("factors_given", "Limit load factors", &l.FactorsGiven,
 			input.Option{Value: ByRule, Label: "the rule's least"}, input.Option{Value: ByValue, Label: "own values"}).If(given && !ownRule),
 		input.Num(&positive, &l.Positive).If(factors),
 		input.Num(&negative, &l.Negative).If(factors),
 		input.Num(&negativeDive, &l.NegativeDive).If(ownRule),
-		input.Pick("speeds_given", "VC and VD", &l.SpeedsGiven,
+		input.Ways("speeds_given", "VC and VD", &l.SpeedsGiven,
 			input.Option{Value: ByRule, Label: "the rule's least"}, input.Option{Value: ByValue, Label: "own values"}).If(given && !ownRule),
 		input.Num(&cruise, &l.Cruise).If(speeds),
 		input.Num(&dive, &l.Dive).If(speeds),
 		input.Num(&gustC, &l.GustCruise).If(ownRule),
 		input.Num(&gustD, &l.GustDive).If(ownRule),
 		input.Num(&negativeCL, &l.NegativeCL).If(given),
-		input.Pick("chord_given", "Mean chord", &l.ChordGiven,
+		input.Ways("chord_given", "Mean chord", &l.ChordGiven,
 			input.Option{Value: ByArea, Label: "wing area over span"}, input.Option{Value: ByValue, Label: "own value"}).If(given),
 		input.Num(&chord, &l.Chord).If(given && l.ChordGiven == ByValue),
-		input.Pick("slope_given", "Lift-curve slope", &l.SlopeGiven,
+		input.Ways("slope_given", "Lift-curve slope", &l.SlopeGiven,
 			input.Option{Value: ByEstimate, Label: "from the aspect ratio"}, input.Option{Value: ByValue, Label: "own value"}).If(given),
 		input.Num(&slope, &l.Slope).If(given && l.SlopeGiven == ByValue),
 	}

@@ -3,6 +3,7 @@ package loads
 import (
 	"math"
 
+	"legwright/internal/perf/atmos"
 	"legwright/internal/perf/formula"
 	"legwright/internal/perf/units"
 )
@@ -56,16 +57,16 @@ const (
 
 // Customary units in which 14 CFR 23 states its formulas, exact.
 const (
-	knot         = 1852.0 / 3600             // in m/s
-	pound        = 0.45359237 * 9.80665      // of force, in N
-	poundPerFoot = pound / (0.3048 * 0.3048) // per square foot, in Pa
+	knot         = 1852.0 / 3600                  // in m/s
+	pound        = 0.45359237 * 9.80665           // of force, in N
+	poundPerFoot = 0.45359237 / (0.3048 * 0.3048) // of mass per square foot, in kg/m²
 )
 
 var (
 	wingLoading = formula.Must(formula.Formula{
-		ID: "loads.wing-loading", Out: formula.Sym("w", "wing loading, weight over area", units.Pressure),
-		In:   []formula.Symbol{formula.Sym("m", "mass", units.Mass), formula.Sym("g", "standard gravity", units.Acceleration), formula.Sym("S", "wing area", units.Area)},
-		Expr: "m*g/S", Source: formula.Definition,
+		ID: "loads.wing-loading", Out: formula.Sym("w", "wing loading, mass over area", units.WingLoading),
+		In:   []formula.Symbol{formula.Sym("m", "mass", units.Mass), formula.Sym("S", "wing area", units.Area)},
+		Expr: "m/S", Source: formula.Definition,
 	})
 	limitFactor = formula.Must(formula.Formula{
 		ID: "loads.limit-factor", Out: formula.Sym("n1", "positive limit load factor", units.Coefficient),
@@ -79,19 +80,19 @@ var (
 	})
 	leastCruise = formula.Must(formula.Formula{
 		ID: "loads.least-cruise", Out: formula.Sym("VCmin", "least design cruising speed, equivalent", units.Speed),
-		In: []formula.Symbol{formula.Sym("k", "factor of the category, kt over root of lb/ft²", units.Coefficient), formula.Sym("w", "wing loading at the greatest take-off mass", units.Pressure),
-			formula.Sym("p", "one pound-force per square foot", units.Pressure), formula.Sym("kt", "one knot", units.Speed)},
+		In: []formula.Symbol{formula.Sym("k", "factor of the category, kt over root of lb/ft²", units.Coefficient), formula.Sym("w", "wing loading at the greatest take-off mass", units.WingLoading),
+			formula.Sym("p", "one pound per square foot", units.WingLoading), formula.Sym("kt", "one knot", units.Speed)},
 		Expr: "(k - (k - 28.6)*max(0, min(1, (w/p - 20)/80)))*sqrt(w/p)*kt", Source: formula.FAR23, Where: "23.335(a)(1) and (2)",
 	})
 	leastCruiseVLA = formula.Must(formula.Formula{
 		ID: "loads.least-cruise-vla", Out: formula.Sym("VCmin", "least design cruising speed, equivalent", units.Speed),
-		In:   []formula.Symbol{formula.Sym("w", "wing loading at the greatest take-off mass", units.Pressure)},
-		Expr: "2.4*sqrt(w)", Source: formula.CSVLA, Where: "335(a)",
+		In:   []formula.Symbol{formula.Sym("w", "wing loading at the greatest take-off mass", units.WingLoading), formula.Sym("g", "standard gravity", units.Acceleration)},
+		Expr: "2.4*sqrt(w*g)", Source: formula.CSVLA, Where: "335(a)",
 	})
 	leastDive = formula.Must(formula.Formula{
 		ID: "loads.least-dive", Out: formula.Sym("VDmin", "least design dive speed, equivalent", units.Speed),
 		In: []formula.Symbol{formula.Sym("VC", "design cruising speed", units.Speed), formula.Sym("k", "factor of the category", units.Coefficient), formula.Sym("VCmin", "least design cruising speed", units.Speed),
-			formula.Sym("w", "wing loading at the greatest take-off mass", units.Pressure), formula.Sym("p", "one pound-force per square foot", units.Pressure)},
+			formula.Sym("w", "wing loading at the greatest take-off mass", units.WingLoading), formula.Sym("p", "one pound per square foot", units.WingLoading)},
 		Expr: "max(1.25*VC, (k - (k - 1.35)*max(0, min(1, (w/p - 20)/80)))*VCmin)", Source: formula.FAR23, Where: "23.335(b)(1) to (3)",
 	})
 	leastDiveVLA = formula.Must(formula.Formula{
@@ -106,7 +107,7 @@ var (
 	})
 )
 
-// above is how far a wing loading in Pa is from 20 to 100 lb/ft², 0 to 1.
+// above is how far a wing loading in kg/m² is from 20 to 100 lb/ft², 0 to 1.
 func above(loading float64) float64 { return math.Max(0, math.Min(1, (loading/poundPerFoot-20)/80)) }
 
 // factors are the least limit load factors, dimensionless, at the greatest take-off weight in N.
@@ -121,16 +122,16 @@ func (r *rule) factors(weight float64, w *formula.Working) (positive, negative f
 	return positive, negative
 }
 
-// leastCruise is the least VC in m/s at the wing loading in Pa of the greatest take-off mass.
+// leastCruise is the least VC in m/s at the wing loading in kg/m² of the greatest take-off mass.
 func (r *rule) leastCruise(loading float64, w *formula.Working) float64 {
 	if !r.thin {
-		return w.Step(leastCruiseVLA, 2.4*math.Sqrt(loading), loading)
+		return w.Step(leastCruiseVLA, 2.4*math.Sqrt(loading*atmos.Gravity), loading, atmos.Gravity)
 	}
 	k := r.cruise - (r.cruise-28.6)*above(loading)
 	return w.Step(leastCruise, k*math.Sqrt(loading/poundPerFoot)*knot, r.cruise, loading, poundPerFoot, knot)
 }
 
-// leastDive is the least VD in m/s for VC and the least VC in m/s, at the wing loading in Pa.
+// leastDive is the least VD in m/s for VC and the least VC in m/s, at the wing loading in kg/m².
 func (r *rule) leastDive(vc, least, loading float64, w *formula.Working) float64 {
 	if !r.thin {
 		return w.Step(leastDiveVLA, math.Max(1.25*vc, 1.4*least), vc, least)

@@ -115,7 +115,6 @@ var claims = map[string][]claim{
 	"climb angle":                    {result("climb.angle"), said("of a path straight up or down")},
 
 	// Manoeuvre and gust envelope.
-	"span":         {given(frame + "span")},
 	"wing loading": {result("loads.wing-loading")},
 	"wing loading at the greatest take-off mass": {result("loads.wing-loading")},
 	"greatest take-off weight":                   {made("m g", func(v []float64) float64 { return v[0] * atmos.Gravity }, "aircraft.weights.max_take_off")},
@@ -128,7 +127,7 @@ var claims = map[string][]claim{
 	"factor of the category":                         {said("of the rule and category")},
 	"factor of the category, kt over root of lb/ft²": {said("of the rule and category")},
 	"one pound-force":                                {said("exact, by definition")},
-	"one pound-force per square foot":                {said("exact, by definition")},
+	"one pound per square foot":                      {said("exact, by definition")},
 	"one knot":                                       {said("exact, by definition")},
 	"least design cruising speed":                    {result("loads.least-cruise", "loads.least-cruise-vla")},
 	"design cruising speed":                          {given(limit + "cruise"), result("loads.least-cruise", "loads.least-cruise-vla")},
@@ -138,8 +137,9 @@ var claims = map[string][]claim{
 	"gust alleviation factor":                        {result("loads.gust-alleviation")},
 	"standard air density at sea level":              {said("constant of the standard atmosphere")},
 	"derived gust velocity up to 20 000 ft":          {said("of the rule")},
-	"derived gust velocity":                          {result("loads.gust-aloft"), given(limit + "gust_cruise"), given(limit + "gust_dive"), said("of the rule, upwards or downwards")},
-	"equivalent airspeed":                            {given(limit + "cruise"), given(limit + "dive"), result("loads.least-cruise", "loads.least-cruise-vla", "loads.least-dive", "loads.least-dive-vla"), said("speed of this condition")},
+	"derived gust velocity": {result("loads.gust-aloft"), given(limit + "gust_cruise"), given(limit + "gust_dive"),
+		made("downwards", negated, limit+"gust_cruise"), made("downwards", negated, limit+"gust_dive"), after("downwards", negated, "loads.gust-aloft"), said("of the rule, upwards or downwards")},
+	"equivalent airspeed": {given(limit + "cruise"), given(limit + "dive"), result("loads.least-cruise", "loads.least-cruise-vla", "loads.least-dive", "loads.least-dive-vla"), said("speed of this condition")},
 
 	// Piston engines and propellers.
 	"throttle":                      {exactly(1, "full throttle"), said("setting of this condition")},
@@ -180,3 +180,6 @@ func size(v []float64) float64 { return math.Abs(v[0]) }
 func liftAtStall(v []float64) float64 {
 	return 2 * v[0] * atmos.Gravity / (atmos.SeaLevelDensity * v[1] * v[1] * v[2])
 }
+
+// negated is a value with the other sign.
+func negated(v []float64) float64 { return -v[0] }

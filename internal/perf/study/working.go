@@ -248,6 +248,7 @@ func (s *Study) structureWorking(w *formula.Working) error {
 	if err != nil {
 		return err
 	}
+	w.Note("At %s and a pressure altitude of %s, flaps and gear up; speeds are equivalent airspeeds.", s.in(units.Mass, v.Mass), s.in(units.Altitude, v.Altitude))
 	_, err = s.loadsAt(&pointperf.Point{Air: air, Mass: v.Mass}, w)
 	return err
 }
