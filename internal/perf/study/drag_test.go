@@ -90,6 +90,12 @@ func TestStallRestsOnTheSpeedGiven(t *testing.T) {
 	if got := st.Unsure(st.Figure("stall_landing")); !slices.Contains(got, "airframe.landing.stall_speed") {
 		t.Errorf("the landing stall rests on %v", got)
 	}
+	s.Variants[0].Basis["airframe.clean.stall_speed"] = project.Basis{Kind: project.Placeholder}
+	s.Requirements = []project.Requirement{project.Require("maneuvering_speed", project.AtLeast, 0)}
+	loaded := run(t, s)
+	if got := loaded.Unsure(loaded.Requirements[0].Figure); !slices.Contains(got, "airframe.clean.stall_speed") {
+		t.Errorf("the manoeuvring speed rests on %v", got)
+	}
 	if got := st.Unsure(st.Figure("stall_clean")); slices.Contains(got, "airframe.landing.stall_speed") {
 		t.Errorf("the clean stall rests on %v", got)
 	}

@@ -31,6 +31,7 @@ var (
 		"airframe.components", "airframe.leakage", "airframe.unlisted", "airframe.friction_tas", "airframe.friction_alt"}
 	massInputs  = []string{"weights.empty", "weights.items"}
 	plantInputs = []string{"powerplant"}
+	cleanLift   = []string{"airframe.wing_area", "airframe.clean.cl_max", "airframe.clean.stall_speed", "airframe.clean.stall_mass"}
 	clean       = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.clean", "airframe.never_exceed"})
 	off         = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off"})
 	flapped     = slices.Concat(clean, []string{"airframe.take_off", "airframe.landing"})
@@ -43,7 +44,7 @@ var rests = map[string][]string{
 	"take_off_distance": off, "take_off_roll": off, "climb_gradient": off,
 	"climb_rate": flapped, "steepest_gradient": flapped, "glide_ratio": flapped, "turn_load": flapped,
 	"balked_gradient":   slices.Concat(clean, []string{"airframe.landing"}),
-	"maneuvering_speed": slices.Concat(structural, []string{"airframe.wing_area", "airframe.clean.cl_max"}), "gust_load": slices.Concat(structural, []string{"airframe.wing_area", "airframe.span", "airframe.clean.cl_max"}),
+	"maneuvering_speed": slices.Concat(structural, cleanLift), "gust_load": slices.Concat(structural, cleanLift, []string{"airframe.span"}),
 	"service_ceiling": clean, "absolute_ceiling": clean, "level_max": clean, "cruise_speed": clean, "time_to_climb": clean, "range": clean, "endurance": clean,
 	"static_thrust": plantInputs, "static_speed": plantInputs,
 	"static_thrust_ratio": slices.Concat(massInputs, plantInputs), "power_loading": slices.Concat(massInputs, plantInputs),
