@@ -28,7 +28,7 @@ type Field struct {
 	Typical string // the range that a reader would expect, with its source
 	Unusual string // the value lies outside the typical range
 	Error   string
-	Says    string   // what a choice of how to give something comes to in the other ways
+	Says    string   // what is given comes to in other terms, or a choice of how to give it in the other ways
 	Basis   []Option // nil when the input has no basis
 	Weak    bool     // placeholder
 	Remark  string   // note of the basis
@@ -53,6 +53,7 @@ type Group struct {
 	Summary string
 	Open    bool
 	Blocks  []Block
+	Totals  *Totals  // what the inputs add up to; nil when they add up to nothing
 	Adds    []Button // actions that add to a list
 	More    string   // where the rest of the subject is entered; empty when all of it is here
 
@@ -119,7 +120,7 @@ func FieldText(spec *project.Spec, e input.Entry, sys units.System) string {
 
 // field makes the field of one entry.
 func (f *form) field(e input.Entry) Field {
-	fd := Field{Path: e.Path, ID: elementID(e.Path), Label: e.Label(), Value: FieldText(f.spec, e, f.sys)}
+	fd := Field{Path: e.Path, ID: elementID(e.Path), Label: e.Label(), Value: FieldText(f.spec, e, f.sys), Says: e.Means.In(f.sys)}
 	switch {
 	case e.Number != nil:
 		u := f.sys.Unit(e.Number.Quantity)
@@ -153,7 +154,7 @@ func tableHead(t *input.Table, sys units.System) string {
 // basis adds the basis of an aircraft's number or table.
 func (f *form) basis(e input.Entry, fd *Field) {
 	v, path, ours := f.spec.InAircraft(e.Path)
-	if !ours || (e.Number == nil && e.Table == nil) {
+	if !ours || (e.Number == nil && e.Table == nil) || e.Number != nil && e.Number.Decided {
 		return
 	}
 	b := v.BasisOf(path)

@@ -20,6 +20,7 @@ type Spec struct {
 	Max      float64        // largest accepted, in the quantity's SI unit, inclusive
 	Note     string         // what it is, or why the range is what it is
 	Typical  *Typical       // nil when the class of aircraft decides
+	Decided  bool           // the designer decides it: it is not known from anywhere, so it has no basis
 }
 
 // Typical is the range that a reader would expect, shown beside the field; values outside it are accepted.
