@@ -4,9 +4,12 @@ import (
 	"bytes"
 	"database/sql"
 	"errors"
+	"fmt"
 	"io/fs"
 	"os"
 	"path/filepath"
+	"slices"
+	"strconv"
 	"strings"
 	"testing"
 	"testing/fstest"
@@ -76,7 +79,7 @@ func TestSettingsReadBack(t *testing.T) {
 func TestNewerDatabase(t *testing.T) {
 	dir := t.TempDir()
 	db := openAt(t, dir)
-	if _, err := db.sql.Exec("INSERT INTO goose_db_version (version_id, is_applied) VALUES (9, 1)"); err != nil {
+	if _, err := db.sql.Exec("INSERT INTO goose_db_version (version_id, is_applied) VALUES (99, 1)"); err != nil {
 		t.Fatal(err)
 	}
 	db.Close()
@@ -85,7 +88,7 @@ func TestNewerDatabase(t *testing.T) {
 	if !errors.Is(err, ErrNewer) {
 		t.Fatalf("newer database: %v", err)
 	}
-	for _, part := range []string{filepath.Join(dir, FileName), "schema 9", "up to 1", "Use the newer program"} {
+	for _, part := range []string{filepath.Join(dir, FileName), "schema 99", fmt.Sprintf("up to %d", newest(t)), "Use the newer program"} {
 		if !strings.Contains(err.Error(), part) {
 			t.Errorf("%q lacks %q", err, part)
 		}
@@ -167,6 +170,84 @@ func read(t *testing.T, path string) []byte {
 	return b
 }
 
+// numbers are those of the real migrations, by the names of the files, rising.
+func numbers(t *testing.T) []int {
+	t.Helper()
+	names, err := fs.Glob(migrations.Files, "*.sql")
+	if err != nil || len(names) == 0 {
+		t.Fatal(names, err)
+	}
+	var list []int
+	for _, name := range names {
+		n, err := strconv.Atoi(name[:5])
+		if err != nil {
+			t.Fatal(err)
+		}
+		list = append(list, n)
+	}
+	slices.Sort(list)
+	return list
+}
+
+// newest is the number of the present schema.
+func newest(t *testing.T) int { return slices.Max(numbers(t)) }
+
+// firstSteps are the real migrations up to number n: the program of that day.
+func firstSteps(t *testing.T, n int) fs.FS {
+	t.Helper()
+	names, err := fs.Glob(migrations.Files, "*.sql")
+	if err != nil {
+		t.Fatal(err)
+	}
+	steps := fstest.MapFS{}
+	for _, name := range names {
+		if number, err := strconv.Atoi(name[:5]); err != nil || number > n {
+			continue
+		}
+		b, err := migrations.Files.ReadFile(name)
+		if err != nil {
+			t.Fatal(err)
+		}
+		steps[name] = &fstest.MapFile{Data: b}
+	}
+	return steps
+}
+
+// TestEarlierSchemas: what a program of each earlier schema saved is there after the steps since.
+func TestEarlierSchemas(t *testing.T) {
+	all := numbers(t)
+	for _, n := range all[:len(all)-1] {
+		dir := t.TempDir()
+		db, err := open(t.Context(), dir, "test-0", firstSteps(t, n), clock())
+		if err != nil {
+			t.Fatal(err)
+		}
+		// The present program reads what that schema has not, so this is written as the earlier one did: two revisions, the second undone.
+		if _, err := db.sql.Exec(`BEGIN;
+			INSERT INTO project (id, name, created, updated, head) VALUES (1, 'A', '2030-01-02T02:04:07.000Z', '2030-01-02T02:04:08.000Z', 1);
+			INSERT INTO revision (project_id, number, parent, name, summary, saved, engine, doc) VALUES
+				(1, 1, NULL, 'A', 'begun', '2030-01-02T02:04:07.000Z', 'test-0', '{"n":1}'),
+				(1, 2, 1, 'A', 'changed', '2030-01-02T02:04:08.000Z', 'test-0', '{"n":2}');
+			COMMIT`); err != nil {
+			t.Fatal(err)
+		}
+		if err := db.Close(); err != nil {
+			t.Fatal(err)
+		}
+		db = openAt(t, dir)
+		if r, err := db.Head(t.Context(), 1); err != nil || string(r.Doc) != `{"n":1}` || !r.CanRedo || r.Engine != "test-0" {
+			t.Errorf("from schema %d: %+v, %v", n, r, err)
+		}
+		save(t, db, Revision{Project: 1, Number: 1, Name: "A"}, `{"n":3}`)
+		if got, want := schema(t, db), string(read(t, "testdata/schema.sql")); got != want {
+			t.Errorf("from schema %d the schema is\n%s", n, got)
+		}
+		if found, _ := filepath.Glob(filepath.Join(dir, fmt.Sprintf("backup-%d-*.db", n))); len(found) != 1 {
+			t.Errorf("from schema %d backups %q", n, found)
+		}
+	}
+}
+
 // withStep is the real migrations and one more.
 func withStep(t *testing.T, text string) fs.FS {
 	t.Helper()
@@ -199,7 +280,7 @@ func TestMigrationMakesBackup(t *testing.T) {
 	if _, err := db.sql.Exec("INSERT INTO more VALUES (1)"); err != nil {
 		t.Error(err)
 	}
-	backup := filepath.Join(dir, "backup-1-20300102T020406.000Z.db")
+	backup := filepath.Join(dir, fmt.Sprintf("backup-%d-20300102T020406.000Z.db", newest(t)))
 	old := t.TempDir()
 	if err := os.WriteFile(filepath.Join(old, FileName), read(t, backup), 0o600); err != nil {
 		t.Fatal(err)
@@ -222,7 +303,7 @@ func TestFailedMigration(t *testing.T) {
 	if err == nil {
 		t.Fatal("a failing step was taken")
 	}
-	for _, part := range []string{filepath.Join(dir, FileName), "from schema 1 to 999", "no such table: nowhere", "a backup was made as " + dir} {
+	for _, part := range []string{filepath.Join(dir, FileName), fmt.Sprintf("from schema %d to 999", newest(t)), "no such table: nowhere", "a backup was made as " + dir} {
 		if !strings.Contains(err.Error(), part) {
 			t.Errorf("%q lacks %q", err, part)
 		}

@@ -18,6 +18,7 @@ type Revision struct {
 	Summary         string // what changed against Parent, in words
 	Saved           time.Time
 	Engine          string // version of the program that saved it
+	Snapshot        string // the user's name for it; empty when it has none
 
 	// Whether undo and redo lead somewhere when this revision is the head.
 	CanUndo, CanRedo bool
@@ -53,7 +54,7 @@ func (db *DB) Revision(ctx context.Context, id, number int64) (Revision, error) 
 func (db *DB) Revisions(ctx context.Context, id int64) ([]Revision, error) {
 	var list []Revision
 	err := db.inTx(ctx, func(tx *sql.Tx) (err error) {
-		list, err = revisions(ctx, tx, id)
+		list, err = revisions(ctx, tx, id, -1, "")
 		return err
 	})
 	return list, err
