@@ -39,8 +39,8 @@ func TestSnapshots(t *testing.T) {
 	if got := names(r1.Project); got != nil {
 		t.Errorf("before any: %q", got)
 	}
-	name(1, "  As drawn ")
-	name(3, "With the bigger wing")
+	name(1, "As drawn")
+	name(3, "  With the bigger wing ")
 	name(2, "In between")
 	name(2, "")
 	name(1, "As first drawn")

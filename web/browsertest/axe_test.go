@@ -69,7 +69,7 @@ func TestAxeOtherPages(t *testing.T) {
 	p := newTab(t)
 	p.expect(404)
 	for name, path := range map[string]string{"shelf": "/projects", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "revision": "/projects/1/history/1", "problem": "/projects/99"} {
 		p.open(s.url + path)
 		p.audits(name, looks)
 	}

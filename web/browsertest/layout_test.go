@@ -83,7 +83,7 @@ func TestLayout(t *testing.T) {
 func TestLayoutOtherPages(t *testing.T) {
 	s := newSite(t, project.Demo())
 	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "problem": "/projects/99"} {
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "revision": "/projects/1/history/1", "problem": "/projects/99"} {
 		p := newTab(t)
 		p.expect(404)
 		p.open(s.url + path)
@@ -142,7 +142,7 @@ func TestUgly(t *testing.T) {
 	p.openAll()
 	p.fitsAt("ugly bench")
 	for name, path := range map[string]string{"shelf": "/projects", "working": "/projects/1/variants/a/working", "climb": "/projects/1/variants/a/climb", "drag": "/projects/1/variants/a/drag",
-		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history"} {
+		"strip": "/projects/1/variants/a/strip", "powerplant": "/projects/1/variants/a/powerplant", "requirements": "/projects/1/variants/a/requirements", "history": "/projects/1/history", "revision": "/projects/1/history/1"} {
 		p.open(s.url + path)
 		p.fitsAt("ugly " + name)
 	}

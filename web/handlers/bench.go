@@ -80,6 +80,19 @@ func (h head) study(r *http.Request, lever bool) (*study.Study, []views.Refusal,
 	return study.Run(p, i, view), mistaken, nil
 }
 
+// studyOf computes a variant at its default view; nil when the document has no such variant.
+func (h head) studyOf(id string) (*study.Study, error) {
+	i, ok := h.spec.Variant(id)
+	if !ok {
+		return nil, nil
+	}
+	p, err := h.build()
+	if err != nil {
+		return nil, err
+	}
+	return study.Run(p, i, study.DefaultView(p, i)), nil
+}
+
 // show answers with the page on which the edit was made, or with its changed part for the page's script.
 func (s *site) show(w http.ResponseWriter, r *http.Request, h head, name string, refused []views.Refusal, message string) error {
 	studied, mistaken, err := h.study(r, name == "")

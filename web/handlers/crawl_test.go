@@ -41,6 +41,7 @@ func TestCrawl(t *testing.T) {
 		t.Errorf("stopped after %d pages and %d forms, %d addresses left", c.pages, c.sent, len(c.waiting))
 	}
 	for _, path := range []string{"/projects/1/variants/a", "/projects/1/variants/b", "/projects/2/variants/a", "/projects/1/variants/a/working", "/projects/1/variants/a/climb", "/projects/1/variants/a/drag",
+		"/projects/1/history/1",
 		"/projects/1/variants/a/strip", "/projects/1/variants/a/mission", "/projects/1/variants/a/powerplant", "/projects/1/variants/a/requirements", "/projects/1/history", "/static/htmx.min.js"} {
 		if !c.known[path] {
 			t.Errorf("never reached %s", path)

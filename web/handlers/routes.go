@@ -55,6 +55,8 @@ func New(cfg Config) (http.Handler, error) {
 		r.Post("/archive", s.serve(s.archiveProject(true)))
 		r.Post("/unarchive", s.serve(s.archiveProject(false)))
 		r.Get("/history", s.serve(s.history))
+		r.Get("/history/{revision}", s.serve(s.revision))
+		r.Post("/history/{revision}", s.serve(s.nameRevision))
 		r.Post("/restore/{revision}", s.serve(s.restore))
 		r.Get("/variants/{variant}", s.serve(s.editable("")))
 		r.Post("/variants/{variant}", s.serve(s.edit))
