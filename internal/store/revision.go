@@ -29,6 +29,9 @@ type Revision struct {
 	next int64
 }
 
+// Next is the number of the revision to which redo leads when r is the head; 0 for none.
+func (r Revision) Next() int64 { return r.next }
+
 // Head returns the current revision of a project.
 func (db *DB) Head(ctx context.Context, id int64) (Revision, error) {
 	var rev Revision

@@ -165,7 +165,7 @@ func RevisionPage(r Revision) templ.Component {
 					return templ_7745c5c3_Err
 				}
 			} else {
-				templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 14, "<div class=\"scroll\" tabindex=\"0\" role=\"region\" aria-labelledby=\"differences-title\"><table class=\"apart\"><caption class=\"visually-hidden\">Inputs then and now</caption> <thead><tr><th scope=\"col\">Input</th><th scope=\"col\">Then</th><th scope=\"col\">Now</th></tr></thead> <tbody>")
+				templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 14, "<div class=\"scroll\" tabindex=\"0\" role=\"region\" aria-label=\"Inputs then and now\"><table class=\"apart\"><caption class=\"visually-hidden\">Inputs then and now</caption> <thead><tr><th scope=\"col\">Input</th><th scope=\"col\">Then</th><th scope=\"col\">Now</th></tr></thead> <tbody>")
 				if templ_7745c5c3_Err != nil {
 					return templ_7745c5c3_Err
 				}
