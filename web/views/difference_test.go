@@ -67,3 +67,20 @@ func TestDifferences(t *testing.T) {
 		}
 	}
 }
+
+// TestBasesFollowTheirItems: bases are kept by place; what is compared is the basis of the same item.
+func TestBasesFollowTheirItems(t *testing.T) {
+	basis := func(kind string) project.Basis { return project.Basis{Kind: kind} }
+	then, now := project.Demo(), project.Demo()
+	then.Variants[0].Basis["weights.items[0].mass"] = basis(project.Maker)
+	then.Variants[0].Basis["weights.items[1].mass"] = basis(project.Calculated)
+	then.Variants[0].Basis["weights.items[2].mass"] = basis(project.Measured)
+	w := &now.Variants[0].Aircraft.Weights
+	w.Items = w.Items[1:]
+	now.Variants[0].Basis["weights.items[0].mass"] = basis(project.Calculated)
+	now.Variants[0].Basis["weights.items[1].mass"] = basis(project.Estimated)
+	rows := differences(then, now, units.Metric)
+	if len(rows) != 2 || rows[1].Label != "Basis of mass" || !strings.HasSuffix(rows[1].Part, "item “Baggage”") || rows[1].Then != "measured" || rows[1].Now != "estimated" {
+		t.Errorf("%+v", rows)
+	}
+}

@@ -34,6 +34,7 @@ type Revision struct {
 // A FigurePair is a figure then and now.
 type FigurePair struct {
 	Label, Then, Now, Change string
+	Has, HasNow              bool // numbers, not words
 }
 
 // NewRevision makes the page of a revision: then is the study of one of its
@@ -73,7 +74,7 @@ func NewRevision(id int64, r Saved, program string, then, now *study.Study, pres
 }
 
 func figurePair(then *study.Figure, present *study.Study, sys units.System) FigurePair {
-	pair := FigurePair{Label: then.Label, Then: figureWords(then, sys), Now: absent, Change: absent}
+	pair := FigurePair{Label: then.Label, Then: figureWords(then, sys), Now: absent, Change: absent, Has: then.Has()}
 	if present == nil {
 		return pair
 	}
@@ -81,7 +82,7 @@ func figurePair(then *study.Figure, present *study.Study, sys units.System) Figu
 	if now == nil {
 		return pair
 	}
-	pair.Now = figureWords(now, sys)
+	pair.Now, pair.HasNow = figureWords(now, sys), now.Has()
 	switch {
 	case pair.Then == pair.Now:
 		pair.Change = "same"
