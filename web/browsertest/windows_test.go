@@ -109,8 +109,9 @@ func TestUndoKeys(t *testing.T) {
 	p.typed(field(baggage), "20")
 	p.swapped(func() { p.press("z", chromedp.ModifierCtrl) })
 	has(t, p.text("#message"), "Undone: Empty, less powerplant 298 kg → 305 kg.")
-	has(t, eval[string](p, `document.querySelector("#saved").textContent`), "revision 2", "Undone: Empty, less powerplant")
-	if got := eval[string](p, `document.querySelector("#saved").getAttribute("role")`); got != "status" {
+	has(t, p.text("#saved"), "revision 2")
+	has(t, p.text("#told"), "Undone: Empty, less powerplant")
+	if got := eval[string](p, `document.querySelector("#told").getAttribute("role")`); got != "status" {
 		t.Errorf("the line is not announced: role %q", got)
 	}
 	if got := p.value(field(emptyMass)); got != "298" {
