@@ -18,6 +18,7 @@ type Revision struct {
 	Summary         string // what changed against Parent, in words
 	Saved           time.Time
 	Engine          string // version of the program that saved it
+	Snapshot        string // the user's name for it; empty when it has none
 
 	// Whether undo and redo lead somewhere when this revision is the head.
 	CanUndo, CanRedo bool
@@ -27,6 +28,9 @@ type Revision struct {
 	// undo and redo; and redo cannot reach a child that has a newer sibling.
 	next int64
 }
+
+// Next is the number of the revision to which redo leads when r is the head; 0 for none.
+func (r Revision) Next() int64 { return r.next }
 
 // Head returns the current revision of a project.
 func (db *DB) Head(ctx context.Context, id int64) (Revision, error) {
@@ -53,7 +57,7 @@ func (db *DB) Revision(ctx context.Context, id, number int64) (Revision, error) 
 func (db *DB) Revisions(ctx context.Context, id int64) ([]Revision, error) {
 	var list []Revision
 	err := db.inTx(ctx, func(tx *sql.Tx) (err error) {
-		list, err = revisions(ctx, tx, id)
+		list, err = revisions(ctx, tx, id, -1, "")
 		return err
 	})
 	return list, err

@@ -23,7 +23,8 @@ func check(name string, doc []byte) error {
 
 // columns ends with the document, which a list leaves out.
 const columns = `r.project_id, r.number, coalesce(r.parent, 0), r.name, r.summary, r.saved, r.engine,
-	coalesce((SELECT max(c.number) FROM revision c WHERE c.project_id = r.project_id AND c.parent = r.number), 0)`
+	coalesce((SELECT max(c.number) FROM revision c WHERE c.project_id = r.project_id AND c.parent = r.number), 0),
+	coalesce((SELECT s.name FROM snapshot s WHERE s.project_id = r.project_id AND s.number = r.number), '')`
 
 func headNumber(ctx context.Context, tx *sql.Tx, id int64) (int64, error) {
 	var number int64
@@ -73,11 +74,14 @@ func revision(ctx context.Context, tx *sql.Tx, id, number int64) (Revision, erro
 	return rev, err
 }
 
-func revisions(ctx context.Context, tx *sql.Tx, id int64) ([]Revision, error) {
+// revisions lists those of a project that a further condition allows, newest
+// first, up to limit of them; a negative limit is none.
+func revisions(ctx context.Context, tx *sql.Tx, id int64, limit int, and string, args ...any) ([]Revision, error) {
 	if _, err := headNumber(ctx, tx, id); err != nil {
 		return nil, err
 	}
-	rows, err := tx.QueryContext(ctx, "SELECT "+columns+" FROM revision r WHERE r.project_id = ? ORDER BY r.number DESC", id)
+	args = append(append([]any{id}, args...), limit)
+	rows, err := tx.QueryContext(ctx, "SELECT "+columns+" FROM revision r WHERE r.project_id = ? "+and+" ORDER BY r.number DESC LIMIT ?", args...)
 	if err != nil {
 		return nil, err
 	}
@@ -96,7 +100,7 @@ func revisions(ctx context.Context, tx *sql.Tx, id int64) ([]Revision, error) {
 func scanRevision(row interface{ Scan(...any) error }, more ...any) (Revision, error) {
 	var rev Revision
 	var saved string
-	into := append([]any{&rev.Project, &rev.Number, &rev.Parent, &rev.Name, &rev.Summary, &saved, &rev.Engine, &rev.next}, more...)
+	into := append([]any{&rev.Project, &rev.Number, &rev.Parent, &rev.Name, &rev.Summary, &saved, &rev.Engine, &rev.next, &rev.Snapshot}, more...)
 	if err := row.Scan(into...); err != nil {
 		return Revision{}, err
 	}

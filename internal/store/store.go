@@ -88,6 +88,9 @@ func open(ctx context.Context, dir, engine string, steps fs.FS, now func() time.
 	return db, nil
 }
 
+// Program is the version of the program, as each revision that it saves records it.
+func (db *DB) Program() string { return db.engine }
+
 // Close closes the database and gives the data folder free.
 func (db *DB) Close() error {
 	var err error

@@ -114,7 +114,7 @@ func (p *tab) undone(heavy, first string) {
 	if got := p.results(); got != first {
 		p.t.Errorf("after three undos: %q, want %q", got, first)
 	}
-	has(p.t, p.text("#message"), "One change was undone.")
+	has(p.t, p.text("#message"), "Undone: ")
 	if got := p.value(field(baggage)); got != "12" {
 		p.t.Errorf("the baggage is %q after undo", got)
 	}

@@ -9,6 +9,7 @@ var pages = map[string]string{
 	"backups":      "/backups",
 	"problem":      "/projects/99",
 	"history":      "/projects/1/history",
+	"revision":     "/projects/1/history/1",
 	"climb":        "/projects/1/variants/a/climb",
 	"drag":         "/projects/1/variants/a/drag",
 	"strip":        "/projects/1/variants/a/strip",

@@ -80,6 +80,10 @@ func (e *edit) basisChanges(shown input.Entry, form url.Values) []change {
 	for _, f := range facets {
 		name := f.prefix + shown.Path
 		text := tidy(form.Get(name))
+		if form.Has(name) && form.Get("action") == takeTheir+name {
+			e.left(shown)
+			continue
+		}
 		if !form.Has(name) || text == f.get(was.BasisOf(path)) || f.prefix == "basis:" && text == "" {
 			continue
 		}
@@ -102,7 +106,8 @@ func (e *edit) basisChanges(shown input.Entry, form url.Values) []change {
 
 // basisClash is clash for what a basis says.
 func (e *edit) basisClash(shown input.Entry, path string, f facet, text string) error {
-	if e.base == e.head {
+	stands := e.stands(f.prefix+shown.Path, text)
+	if e.base == e.head && !stands {
 		return nil
 	}
 	if _, ok := e.now[shown.Path]; !ok {
@@ -112,10 +117,13 @@ func (e *edit) basisClash(shown input.Entry, path string, f facet, text string) 
 		return errMoved
 	}
 	before, after := f.get(e.base.Variants[e.variant].BasisOf(path)), f.get(e.head.Variants[e.variant].BasisOf(path))
-	if after == before || after == text {
+	if after == before && !stands || after == text {
 		return nil
 	}
-	return errElsewhere(clipText(basisWord(after)))
+	if after == "" {
+		return &clashError{theirs: "nothing", whole: "nothing"}
+	}
+	return &clashError{theirs: clipText(basisWord(after)), whole: basisWord(after)}
 }
 
 func basisWord(kind string) string {

@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"net/http"
 	"net/url"
+	"strings"
 
 	"github.com/go-chi/chi/v5"
 
@@ -80,16 +81,39 @@ func (h head) study(r *http.Request, lever bool) (*study.Study, []views.Refusal,
 	return study.Run(p, i, view), mistaken, nil
 }
 
+// studyOf computes a variant at its default view; nil when the document has no such variant.
+func (h head) studyOf(id string) (*study.Study, error) {
+	i, ok := h.spec.Variant(id)
+	if !ok {
+		return nil, nil
+	}
+	p, err := h.build()
+	if err != nil {
+		return nil, err
+	}
+	return study.Run(p, i, study.DefaultView(p, i)), nil
+}
+
+// An outcome is what became of an edit.
+type outcome struct {
+	refused []views.Refusal
+	message string
+	missed  span // of the history, that the window did not see
+}
+
 // show answers with the page on which the edit was made, or with its changed part for the page's script.
-func (s *site) show(w http.ResponseWriter, r *http.Request, h head, name string, refused []views.Refusal, message string) error {
+func (s *site) show(w http.ResponseWriter, r *http.Request, h head, name string, o outcome) error {
 	studied, mistaken, err := h.study(r, name == "")
 	if err != nil {
 		return err
 	}
 	st := views.State{ProjectID: h.rev.Project, Page: name, Revision: h.rev.Number, Saved: h.rev.Saved, CanUndo: h.rev.CanUndo, CanRedo: h.rev.CanRedo,
-		Query: query(r.URL.Query()), Refusals: refused, Message: message, View: mistaken}
+		Query: query(r.URL.Query()), Refusals: o.refused, Message: o.message, View: mistaken}
+	if st.Elsewhere, err = s.changedElsewhere(r.Context(), h.rev.Project, o.missed); err != nil {
+		return err
+	}
 	code := http.StatusOK
-	if len(refused) > 0 || len(mistaken) > 0 {
+	if len(o.refused) > 0 || len(mistaken) > 0 {
 		code = http.StatusUnprocessableEntity
 	}
 	page, part := editPages[name].show(studied, st)
@@ -154,6 +178,12 @@ func viewOf(q url.Values, p *project.Project, variant int) (study.View, []views.
 	return v, mistaken
 }
 
+// The steps along the history, as they are told.
+const (
+	undone = "undone"
+	redone = "done again"
+)
+
 // step undoes or redoes one revision.
 func (s *site) step(move func(context.Context, int64) (store.Revision, error), done string) page {
 	return func(w http.ResponseWriter, r *http.Request) error {
@@ -172,25 +202,45 @@ func (s *site) step(move func(context.Context, int64) (store.Revision, error), d
 		case err != nil:
 			return err
 		default:
-			message = "One change was " + done + "."
+			message = s.stepped(r.Context(), rev, done)
 		}
 		h, err := decoded(rev)
 		if err != nil {
 			return err
 		}
-		return s.settled(w, r, h, message)
+		return s.settled(w, r, h, outcome{message: message})
 	}
 }
 
+// stepped says what a step of the given name has taken back or brought back, now that rev is the head.
+func (s *site) stepped(ctx context.Context, rev store.Revision, done string) string {
+	if done == undone {
+		left, err := s.db.Revision(ctx, rev.Project, rev.Next())
+		if err != nil {
+			return "One change was undone."
+		}
+		rev = left
+	}
+	return capital(done) + ": " + strings.TrimSuffix(rev.Summary, ".") + "."
+}
+
 // settled answers an edit that was taken: the new page for the script, else a redirect to it.
-func (s *site) settled(w http.ResponseWriter, r *http.Request, h head, message string) error {
+func (s *site) settled(w http.ResponseWriter, r *http.Request, h head, o outcome) error {
 	if swaps(r) {
-		return s.show(w, r, h, pageName(r), nil, message)
+		return s.show(w, r, h, pageName(r), o)
 	}
 	id := chi.URLParam(r, "variant")
 	if _, ok := h.spec.Variant(id); !ok {
 		id = h.spec.Variants[0].ID
 	}
-	http.Redirect(w, r, fmt.Sprintf("/projects/%d/variants/%s%s%s", h.rev.Project, id, editPages[pageName(r)].path, query(r.URL.Query())), http.StatusSeeOther)
+	to := fmt.Sprintf("/projects/%d/variants/%s%s%s", h.rev.Project, id, editPages[pageName(r)].path, query(r.URL.Query()))
+	if o.missed.from != o.missed.to {
+		mark := "?"
+		if strings.Contains(to, "?") {
+			mark = "&"
+		}
+		to += mark + elsewhere + "=" + o.missed.String()
+	}
+	http.Redirect(w, r, to, http.StatusSeeOther)
 	return nil
 }

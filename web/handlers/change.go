@@ -25,8 +25,12 @@ type change struct {
 // All changes are tried together first, so that two that only fit together are
 // taken; when the document then does not build, they are tried one by one.
 func (e *edit) apply(form url.Values) {
+	e.form = form
+	if e.base != e.head || e.undecided() {
+		e.shown, e.now = byPath(e.base), byPath(e.head)
+	}
 	changes := e.differences(form)
-	if action := form.Get("action"); action != "" {
+	if action := form.Get("action"); action != "" && !decided(action) {
 		changes = append(changes, e.action(action))
 	}
 	if e.together(changes) {
@@ -79,12 +83,25 @@ func (e *edit) alone(c change) {
 		err = e.take(trial)
 	}
 	if err != nil {
-		e.refused = append(e.refused, views.Refusal{Path: c.path, Text: c.text, Why: e.why(err)})
+		e.refused = append(e.refused, e.refusal(c, err))
 		return
 	}
 	if said != "" {
 		e.changes = append(e.changes, said)
 	}
+}
+
+// refusal says why a change is not taken and, where another window stands against it, what that one saved.
+func (e *edit) refusal(c change, err error) views.Refusal {
+	r := views.Refusal{Path: c.path, Text: c.text, Why: e.why(err)}
+	var clash *clashError
+	if errors.As(err, &clash) {
+		r.Theirs = &views.Theirs{Text: clash.theirs, Whole: clash.whole}
+		if e.since != nil {
+			r.Theirs.When = e.since(c.path)
+		}
+	}
+	return r
 }
 
 func (e *edit) why(err error) string {
@@ -110,7 +127,11 @@ func capital(s string) string {
 func (e *edit) differences(form url.Values) []change {
 	var list []change
 	for _, entry := range input.Walk(e.base) {
-		if form.Has(entry.Path) && !isIdentifier(entry.Path) {
+		switch {
+		case !form.Has(entry.Path) || isIdentifier(entry.Path):
+		case form.Get("action") == takeTheir+entry.Path:
+			e.left(entry)
+		default:
 			text := tidy(form.Get(entry.Path))
 			if text != tidy(views.FieldText(e.base, entry, e.sys)) {
 				list = append(list, e.value(entry, text))

@@ -44,7 +44,7 @@ func TestCrawl(t *testing.T) {
 	}
 	for _, path := range []string{"/projects/1/variants/a", "/projects/1/variants/b", "/projects/2/variants/a", "/projects/1/variants/a/working", "/projects/1/variants/a/climb", "/projects/1/variants/a/drag",
 		"/projects/1/variants/a/strip", "/projects/1/variants/a/mission", "/projects/1/variants/a/powerplant", "/projects/1/variants/a/requirements", "/projects/1/history", "/static/htmx.min.js",
-		"/projects/1/variants/a/import?table=powerplant.values.engine.power_curve", "/projects/1/variants/a/import/2?table=powerplant.values.engine.power_curve", "/projects/1/originals/2"} {
+		"/projects/1/variants/a/import?table=powerplant.values.engine.power_curve", "/projects/1/variants/a/import/2?table=powerplant.values.engine.power_curve", "/projects/1/originals/2", "/projects/1/history/1"} {
 		if !c.known[path] {
 			t.Errorf("never reached %s", path)
 		}

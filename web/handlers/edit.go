@@ -4,6 +4,7 @@ import (
 	"errors"
 	"net/http"
 	"net/url"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -43,9 +44,11 @@ func (s *site) edit(w http.ResponseWriter, r *http.Request) error {
 			return &problem{http.StatusConflict, "Out of date", "Another window has added or removed a variant since this page was shown; nothing was saved here. Go back, reload and try again."}
 		}
 		e := newEdit(h.spec, base, i, systemOf(r.PostForm, base))
+		e.since = func(name string) string { return s.since(r.Context(), h, h.spec.System(), name) }
 		e.apply(r.PostForm)
+		missed := unseen(r, h)
 		if len(e.changes) == 0 {
-			return s.answerEdit(w, r, h, e)
+			return s.answerEdit(w, r, h, e, missed)
 		}
 		rev, err := s.db.Save(r.Context(), h.rev.Project, h.rev.Number, e.spec.Name, e.doc, e.summary())
 		if isConflict(err) {
@@ -54,7 +57,7 @@ func (s *site) edit(w http.ResponseWriter, r *http.Request) error {
 		if err != nil {
 			return err
 		}
-		return s.answerEdit(w, r, head{rev, e.spec, e.built}, e)
+		return s.answerEdit(w, r, head{rev, e.spec, e.built}, e, missed)
 	}
 	return errBusy
 }
@@ -66,11 +69,21 @@ func isConflict(err error) bool {
 	return errors.As(err, &conflict)
 }
 
-func (s *site) answerEdit(w http.ResponseWriter, r *http.Request, h head, e *edit) error {
+func (s *site) answerEdit(w http.ResponseWriter, r *http.Request, h head, e *edit, missed span) error {
+	o := outcome{refused: e.refused, message: e.message(), missed: missed}
 	if len(e.refused) > 0 {
-		return s.show(w, r, h, pageName(r), e.refused, e.summary())
+		return s.show(w, r, h, pageName(r), o)
 	}
-	return s.settled(w, r, h, e.summary())
+	return s.settled(w, r, h, o)
+}
+
+// unseen is what the window that sent the form has not seen of the history up to the head.
+func unseen(r *http.Request, h head) span {
+	n, err := strconv.ParseInt(r.PostFormValue("revision"), 10, 64)
+	if err != nil {
+		return span{}
+	}
+	return span{n, h.rev.Number}
 }
 
 // shown is the document that the form showed, by the revision it carries; the head when it carries none.
@@ -113,7 +126,7 @@ func (s *site) setUnits(w http.ResponseWriter, r *http.Request) error {
 			return err
 		}
 		if sys == h.spec.System() {
-			return s.settled(w, r, h, "")
+			return s.settled(w, r, h, outcome{})
 		}
 		spec := h.spec.Clone()
 		spec.Display = string(sys)
@@ -128,7 +141,7 @@ func (s *site) setUnits(w http.ResponseWriter, r *http.Request) error {
 		if err != nil {
 			return err
 		}
-		return s.settled(w, r, head{rev: rev, spec: spec}, "")
+		return s.settled(w, r, head{rev: rev, spec: spec}, outcome{})
 	}
 	return errBusy
 }
@@ -144,16 +157,20 @@ type edit struct {
 	now     map[string]input.Entry // of head
 	variant int
 	sys     units.System
+	form    url.Values
 	changes []string
+	said    []string // beside the changes
 	refused []views.Refusal
+	since   func(name string) string // says when the present value of a field was saved; nil where nobody asks
 }
 
 func newEdit(h, base *project.Spec, variant int, sys units.System) *edit {
-	e := &edit{head: h, base: base, spec: h, variant: variant, sys: sys}
-	if base != h {
-		e.shown, e.now = byPath(base), byPath(h)
-	}
-	return e
+	return &edit{head: h, base: base, spec: h, variant: variant, sys: sys}
+}
+
+// message is what the reader is told of the edit.
+func (e *edit) message() string {
+	return strings.Join(append(slices.Clone(e.changes), e.said...), "; ")
 }
 
 // summary says in words what changed.

@@ -39,7 +39,7 @@ func (s *site) editable(name string) page {
 		if err != nil {
 			return err
 		}
-		return s.show(w, r, h, name, nil, "")
+		return s.show(w, r, h, name, outcome{missed: spanOf(r)})
 	}
 }
 

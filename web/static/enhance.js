@@ -43,17 +43,33 @@ document.documentElement.classList.add("scripted");
     if (!isEdit(ctx.sourceElement)) return;
     body.set("revision", document.querySelector("#bench [name=revision]").value);
     if (/^(remove|move|insert|duplicate)/.test(body.get("action") || "")) return;
-    for (const f of document.querySelectorAll("#bench .field.has-error [name]:not(.basis)")) {
-      if (!body.has(f.name)) body.append(f.name, written(f));
+    for (const f of document.querySelectorAll("#bench .field.has-error [name]:not(button, .basis:not(.clashed))")) {
+      if (!body.has(f.name)) body.append(f.name, f.type === "hidden" ? f.value : written(f));
     }
+  });
+
+  // The buttons that decide between two windows go away when they have done it; the focus goes to the field.
+  const returnTo = (ctx) => {
+    const name = /^(?:keep|take) (.*)$/.exec(ctx.request.body?.get?.("action") || "")?.[1];
+    if (name && document.activeElement === document.body) document.querySelector(`#bench [name="${CSS.escape(name)}"]`)?.focus();
+  };
+
+  // A field in which something is typed that is neither saved nor on its way.
+  const typedIn = (f) => f?.matches("input, textarea") && f.value !== (lastSent(f.name) ?? written(f));
+  const resting = new WeakMap(); // request -> [the field with the focus, its text], when that was not being typed in
+  document.addEventListener("htmx:before:request", (e) => {
+    const f = document.activeElement;
+    if (f?.name && !typedIn(f)) resting.set(e.detail.ctx, [f, f.value]);
   });
 
   // After the last answer a field shows what is stored ("200 lb" became 90.72), except
   // the one being typed in. A choice made by hand does not follow its attribute by itself.
-  const settle = () => {
+  const settle = (ctx) => {
+    const [rested, text] = resting.get(ctx) || [];
+    const busy = (f) => f === document.activeElement && !(f === rested && f.value === text);
     for (const form of document.querySelectorAll("#bench form[method=post]")) {
       for (const f of fieldsOf(form)) {
-        if (f !== document.activeElement && lastSent(f.name) === undefined && f.value !== written(f)) f.value = written(f);
+        if (!busy(f) && lastSent(f.name) === undefined && f.value !== written(f)) f.value = written(f);
       }
     }
   };
@@ -62,8 +78,9 @@ document.documentElement.classList.add("scripted");
     waiting = waiting.filter((w) => w.ctx !== ctx);
     const status = ctx.response?.status;
     if (ctx.status === "swapped" && (status < 400 || status === 422)) {
-      settle();
+      settle(ctx);
       keepPlace(ctx);
+      returnTo(ctx);
       return;
     }
     const said = document.querySelector("#saved");
@@ -76,10 +93,10 @@ document.documentElement.classList.add("scripted");
     if (group) group.open = true;
   });
 
-  // Undo and redo by keyboard, except inside a field, which undoes its own typing.
+  // Undo and redo by keyboard. A field in which something is typed that is not yet sent
+  // undoes its own typing; one that holds what is saved leaves the keys to the project.
   document.addEventListener("keydown", (e) => {
-    if (!(e.ctrlKey || e.metaKey) || e.altKey) return;
-    if (/^(INPUT|TEXTAREA|SELECT)$/.test(document.activeElement?.tagName || "")) return;
+    if (!(e.ctrlKey || e.metaKey) || e.altKey || typedIn(document.activeElement)) return;
     const key = e.key.toLowerCase();
     const id = key === "z" && !e.shiftKey ? "undo-form" : key === "y" || (key === "z" && e.shiftKey) ? "redo-form" : "";
     const button = id && document.querySelector(`#${id} button:not([disabled])`);

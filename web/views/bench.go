@@ -146,6 +146,7 @@ func NewBench(s *study.Study, st State) Bench {
 	b.Top = newTop(s, sys, here, st)
 	b.form(newForm(spec, s.Index, st.Refusals).groups(), st.Refusals)
 	summarise(b.Groups, s, sys)
+	weigh(b.Groups, s, sys)
 	b.View = newViewForm(s, sys, b.Frame)
 	b.Speeds = speeds(s, sys)
 	b.Charts = newCharts(s, sys)

@@ -21,6 +21,7 @@ type State struct {
 	Query     string // of the view, with its question mark, or empty
 	Refusals  []Refusal
 	Message   string
+	Elsewhere string    // what was changed by another window that this one has not seen
 	View      []Refusal // conditions of the view that were not understood
 }
 
@@ -38,6 +39,7 @@ type Editing struct {
 	CanUndo     bool
 	CanRedo     bool
 	Message     string // about the edit just made
+	Elsewhere   string // what was changed by another window that this one has not seen
 	Refused     int
 	RefusedText string
 	Loose       []string // what was refused and has no field on the page to stand beside
@@ -51,14 +53,17 @@ func newEditing(s *study.Study, st State) Editing {
 	here := fmt.Sprintf("/projects/%d/variants/%s", st.ProjectID, s.Variant().ID)
 	e := Editing{
 		here: here, Page: st.Page, Action: here + st.Query, UndoURL: here + "/undo" + st.Query, RedoURL: here + "/redo" + st.Query, SystemURL: here + "/units" + st.Query,
-		System: string(sys), Revision: strconv.FormatInt(st.Revision, 10), Saved: st.Saved.Local().Format("15:04:05"),
-		CanUndo: st.CanUndo, CanRedo: st.CanRedo, Message: st.Message, Refused: len(st.Refusals),
+		System: string(sys), Revision: strconv.FormatInt(st.Revision, 10), Saved: Clock(st.Saved),
+		CanUndo: st.CanUndo, CanRedo: st.CanRedo, Message: st.Message, Elsewhere: st.Elsewhere, Refused: len(st.Refusals),
 	}
 	for _, o := range units.Systems {
 		e.Systems = append(e.Systems, Option{string(o), o.Label(), o == sys})
 	}
 	return e
 }
+
+// Clock is the time of day as pages show it.
+func Clock(t time.Time) string { return t.Local().Format("15:04:05") }
 
 // form shows groups of inputs and what was refused in them.
 func (e *Editing) form(groups []Group, refusals []Refusal) {

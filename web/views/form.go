@@ -2,6 +2,7 @@ package views
 
 import (
 	"fmt"
+	"slices"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -28,7 +29,8 @@ type Field struct {
 	Typical string // the range that a reader would expect, with its source
 	Unusual string // the value lies outside the typical range
 	Error   string
-	Says    string   // what a choice of how to give something comes to in the other ways
+	Clashes []Clash
+	Says    string   // what is given comes to in other terms, or a choice of how to give it in the other ways
 	Basis   []Option // nil when the input has no basis
 	Weak    bool     // placeholder
 	Remark  string   // note of the basis
@@ -54,6 +56,7 @@ type Group struct {
 	Summary string
 	Open    bool
 	Blocks  []Block
+	Totals  *Totals  // what the inputs add up to; nil when they add up to nothing
 	Adds    []Button // actions that add to a list
 	More    string   // where the rest of the subject is entered; empty when all of it is here
 
@@ -78,6 +81,24 @@ type Button struct {
 // A Refusal is an edit that was not taken: what was typed and why.
 type Refusal struct {
 	Path, Text, Why string
+	Theirs          *Theirs // nil unless another window has saved the same thing meanwhile
+}
+
+// Theirs is what another window saved in the place of what was typed here.
+type Theirs struct {
+	Text  string // with its unit, short
+	Whole string
+	When  string // revision and time; empty when nobody knows
+}
+
+// A Clash is the choice between what was typed and what another window saved.
+type Clash struct {
+	Name         string // of the form field
+	ID           string
+	Of           string // what it is the value of
+	Typed        string // what was refused
+	Mine, Theirs string // on the buttons
+	Whole        string // what the other window saved, where Theirs does not tell it all
 }
 
 // A form makes fields of the inputs of a document.
@@ -120,7 +141,7 @@ func FieldText(spec *project.Spec, e input.Entry, sys units.System) string {
 
 // field makes the field of one entry.
 func (f *form) field(e input.Entry) Field {
-	fd := Field{Path: e.Path, ID: elementID(e.Path), Label: e.Label(), Value: FieldText(f.spec, e, f.sys)}
+	fd := Field{Path: e.Path, ID: elementID(e.Path), Label: e.Label(), Value: FieldText(f.spec, e, f.sys), Says: e.Means.In(f.sys)}
 	switch {
 	case e.Number != nil:
 		u := f.sys.Unit(e.Number.Quantity)
@@ -138,6 +159,8 @@ func (f *form) field(e input.Entry) Field {
 	}
 	if r, ok := f.refusals[e.Path]; ok {
 		fd.Value, fd.Error = r.Text, r.Why
+		selectOption(fd.Options, r.Text)
+		fd.clash(e.Label(), r, fd.Options)
 	}
 	f.basis(e, &fd)
 	return fd
@@ -154,7 +177,7 @@ func tableHead(t *input.Table, sys units.System) string {
 // basis adds the basis of an aircraft's number or table.
 func (f *form) basis(e input.Entry, fd *Field) {
 	v, path, ours := f.spec.InAircraft(e.Path)
-	if !ours || (e.Number == nil && e.Table == nil) {
+	if !ours || (e.Number == nil && e.Table == nil) || e.Number != nil && e.Number.Decided {
 		return
 	}
 	b := v.BasisOf(path)
@@ -167,9 +190,48 @@ func (f *form) basis(e input.Entry, fd *Field) {
 			fd.Error = strings.TrimSpace(fd.Error + " " + part.word + ": " + lowerFirst(r.Why))
 			if part.prefix == "note:" {
 				fd.Remark = r.Text
+				fd.clash("the note on "+lowerFirst(e.Label()), r, nil)
+			} else {
+				selectOption(fd.Basis, r.Text)
+				fd.clash("the basis of "+lowerFirst(e.Label()), r, fd.Basis)
 			}
 		}
 	}
+}
+
+// selectOption makes the option of that value the one that is shown, if there is one.
+func selectOption(options []Option, value string) {
+	if !slices.ContainsFunc(options, func(o Option) bool { return o.Value == value }) {
+		return
+	}
+	for i := range options {
+		options[i].Selected = options[i].Value == value
+	}
+}
+
+// clash offers the choice between what was typed and what another window saved.
+func (fd *Field) clash(of string, r Refusal, options []Option) {
+	if r.Theirs == nil {
+		return
+	}
+	fd.Error = strings.TrimSuffix(fd.Error, ".")
+	if r.Theirs.When != "" {
+		fd.Error += " (" + r.Theirs.When + ")"
+	}
+	fd.Error += ". Yours is not saved yet."
+	c := Clash{Name: r.Path, ID: elementID(r.Path) + "-clash", Of: of, Typed: r.Text, Mine: "Keep mine: " + clipped(r.Text, 24), Theirs: "Take theirs: " + clipped(r.Theirs.Text, 24)}
+	for _, o := range options {
+		if o.Value == r.Text {
+			c.Mine = "Keep mine: " + o.Label
+		}
+	}
+	if strings.Contains(r.Text, "\n") || r.Text == "" {
+		c.Mine = "Keep mine"
+	}
+	if r.Theirs.Whole != r.Theirs.Text {
+		c.Whole = r.Theirs.Whole
+	}
+	fd.Clashes = append(fd.Clashes, c)
 }
 
 // under lists the fields directly below a path: "a.b" takes "a.b.c" and not "a.b.c.d".

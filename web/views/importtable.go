@@ -169,8 +169,6 @@ func (t ImportTarget) fileURL(id int64) string {
 	return fmt.Sprintf("/projects/%d/originals/%d", t.ProjectID, id)
 }
 
-func moment(at time.Time) string { return at.Local().Format("2 January 2006, 15:04") }
-
 // described lists the ids of the texts that explain the pasted text.
 func (p ImportStart) described() string {
 	if p.Error != "" {

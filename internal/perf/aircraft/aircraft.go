@@ -3,6 +3,7 @@ package aircraft
 import (
 	"errors"
 	"fmt"
+	"math"
 
 	"legwright/internal/perf/input"
 	"legwright/internal/perf/loads"
@@ -32,9 +33,11 @@ type Aircraft struct {
 	clMax              [configs]float64
 	groundCL           float64
 	neverExceed        float64
-	empty, payload     float64
+	empty, growth      float64
+	payload            float64
 	maxTakeOff         float64
 	limits             loads.Limits
+	maxZeroFuel        float64 // in kg, +Inf when there is no such limit
 	plant              powerplant.Powerplant
 	stores             powerplant.Stores
 }
@@ -53,9 +56,13 @@ func (s *Spec) Build() (*Aircraft, error) {
 		return nil, err
 	}
 	f, w := &s.Airframe, &s.Weights
+	empty := w.Empty + s.Powerplant.Model.InstalledMass()
 	a := &Aircraft{area: f.WingArea, span: f.Span, height: f.WingHeight, groundCL: f.GroundCL, neverExceed: f.NeverExceed,
-		empty: w.Empty + s.Powerplant.Model.InstalledMass(), payload: w.PayloadMass(), maxTakeOff: w.MaxTakeOff,
+		empty: empty, growth: w.Growth * empty, payload: w.PayloadMass(), maxTakeOff: w.MaxTakeOff, maxZeroFuel: math.Inf(1),
 		plant: plant, stores: s.Powerplant.Model.Stores()}
+	if w.ZeroFuelGiven == ByZeroFuel {
+		a.maxZeroFuel = w.MaxZeroFuel
+	}
 	for c, cfg := range f.configurations() {
 		a.polars[c] = base.Configured(cfg.DeltaCD, cfg.DeltaCLM)
 		a.clMax[c] = cfg.lift(f.WingArea, nil)
@@ -121,20 +128,28 @@ func (a *Aircraft) GroundCL() float64 { return a.groundCL }
 // NeverExceed is the never-exceed calibrated airspeed in m/s.
 func (a *Aircraft) NeverExceed() float64 { return a.neverExceed }
 
-// EmptyMass is the mass with the powerplant, without payload and fuel, in kg.
+// EmptyMass is the mass with the powerplant as stated, without growth, payload and fuel, in kg.
 func (a *Aircraft) EmptyMass() float64 { return a.empty }
+
+// Growth is the allowance for what building adds to the empty mass, in kg.
+func (a *Aircraft) Growth() float64 { return a.growth }
 
 // Payload is the mass of the items in kg.
 func (a *Aircraft) Payload() float64 { return a.payload }
 
-// DryMass is the mass with payload and unusable fuel, without usable fuel, in kg.
-func (a *Aircraft) DryMass() float64 { return a.empty + a.payload + a.stores.Trapped }
+// DryMass is the mass with growth, payload and unusable fuel, without usable fuel, in kg.
+func (a *Aircraft) DryMass() float64 { return a.empty + a.growth + a.payload + a.stores.Trapped }
 
 // StartMass is the mass with everything aboard in kg.
 func (a *Aircraft) StartMass() float64 { return a.DryMass() + a.stores.Fuel }
 
 // MaxTakeOff is the designer's greatest take-off mass in kg.
 func (a *Aircraft) MaxTakeOff() float64 { return a.maxTakeOff }
+
+// MaxZeroFuel is the designer's greatest mass without usable fuel in kg; limited is false when there is none.
+func (a *Aircraft) MaxZeroFuel() (mass float64, limited bool) {
+	return a.maxZeroFuel, !math.IsInf(a.maxZeroFuel, 1)
+}
 
 // Plant is the powerplant.
 func (a *Aircraft) Plant() powerplant.Powerplant { return a.plant }

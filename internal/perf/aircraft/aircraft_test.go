@@ -27,7 +27,7 @@ func sample() *aircraft.Spec {
 			Landing:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
 			GroundCL: 0.45, NeverExceed: 75,
 		},
-		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650},
+		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650, ZeroFuelGiven: aircraft.NoZeroFuel},
 		Limits:     loads.Unentered(),
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: kind.New()},
 	}

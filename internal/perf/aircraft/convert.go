@@ -7,6 +7,7 @@ import (
 	"legwright/internal/perf/atmos"
 	"legwright/internal/perf/input"
 	"legwright/internal/perf/polar"
+	"legwright/internal/perf/powerplant"
 )
 
 // A Derived is an input that a change of the way of giving has filled.
@@ -33,6 +34,13 @@ func (s *Spec) Switch(choice, from string) []Derived {
 			return s.switchLift(c, path, from)
 		}
 	}
+	const plant = "powerplant.values."
+	inner, ok := strings.CutPrefix(choice, plant)
+	if m, follows := s.Powerplant.Model.(powerplant.Follower); ok && follows {
+		if f, ok := m.Follows(inner); ok {
+			return []Derived{{Path: plant + f.Path, From: []string{plant + f.From}, Rate: f.Rate, Note: f.Note}}
+		}
+	}
 	return nil
 }
 
@@ -55,7 +63,7 @@ func DerivedNote(note string) bool {
 			return true
 		}
 	}
-	return note == noteStart || note == noteStall || note == noteCLMax || note == noteRule || note == noteWing || strings.HasPrefix(note, noteFit)
+	return note == powerplant.NoteFuelMass || note == powerplant.NoteFuelVolume || note == noteStart || note == noteStall || note == noteCLMax || note == noteRule || note == noteWing || strings.HasPrefix(note, noteFit)
 }
 
 // dragInputs are the inputs of each way to give the drag polar, and what the way is called in a note.

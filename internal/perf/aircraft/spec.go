@@ -56,11 +56,20 @@ type Configuration struct {
 	DeltaCLM   float64 `json:"delta_clm"`   // shift of the lift coefficient of minimum drag, dimensionless
 }
 
-// Weights are the masses without powerplant and fuel.
+// How the greatest mass without usable fuel is given.
+const (
+	NoZeroFuel = "none" // the designer sets no such limit
+	ByZeroFuel = "given"
+)
+
+// Weights are the masses without powerplant and fuel, and the limits of the whole.
 type Weights struct {
-	Empty      float64 `json:"empty"`        // empty mass without the powerplant, in kg
-	Items      []Item  `json:"items"`        // crew, payload, equipment
-	MaxTakeOff float64 `json:"max_take_off"` // greatest take-off mass in kg
+	Empty         float64 `json:"empty"`           // empty mass without the powerplant, in kg
+	Growth        float64 `json:"growth"`          // allowance for what building adds, share of the empty mass with the powerplant, 0 to 0.5
+	Items         []Item  `json:"items"`           // crew, payload, equipment
+	MaxTakeOff    float64 `json:"max_take_off"`    // greatest take-off mass in kg
+	ZeroFuelGiven string  `json:"zero_fuel_given"` // NoZeroFuel or ByZeroFuel
+	MaxZeroFuel   float64 `json:"max_zero_fuel"`   // greatest mass without usable fuel, in kg
 }
 
 // An Item is something carried.
@@ -77,14 +86,32 @@ var (
 		Note: "Lift coefficient in the attitude of the ground run.", Typical: &input.Typical{Low: 0.1, High: 1, Source: input.CommonPractice}}
 	neverExceed = input.Spec{Name: "never_exceed", Label: "Never-exceed speed, CAS", Quantity: units.Speed, Min: 5, Max: 250,
 		Note: "The designer's structural limit; it is not computed here."}
-	emptyMass  = input.Spec{Name: "empty", Label: "Empty, less powerplant", Quantity: units.Mass, Min: 0.05, Max: 50000}
-	itemMass   = input.Spec{Name: "mass", Label: "Mass", Quantity: units.Mass, Min: 0, Max: 20000}
-	maxTakeOff = input.Spec{Name: "max_take_off", Label: "Greatest take-off mass", Quantity: units.Mass, Min: 0.1, Max: 100000, Note: "The designer's limit."}
+	growth = input.Spec{Name: "growth", Label: "Growth allowance", Quantity: units.Fraction, Min: 0, Max: 0.5, Decided: true,
+		Note: "What building is expected to add to the empty mass, powerplant included. Set it to 0 once the aircraft has been weighed. Commonly 3 to 5 % while it is designed; common practice, no source."}
+	emptyMass   = input.Spec{Name: "empty", Label: "Empty, less powerplant", Quantity: units.Mass, Min: 0.05, Max: 50000}
+	itemMass    = input.Spec{Name: "mass", Label: "Mass", Quantity: units.Mass, Min: 0, Max: 20000}
+	maxTakeOff  = input.Spec{Name: "max_take_off", Label: "Greatest take-off mass", Quantity: units.Mass, Min: 0.1, Max: 100000, Note: "The designer's limit."}
+	maxZeroFuel = input.Spec{Name: "max_zero_fuel", Label: "Greatest mass without fuel", Quantity: units.Mass, Min: 0.1, Max: 100000,
+		Note: "The designer's limit on everything but usable fuel: what the fuselage carries bends the wing, fuel in the wing relieves it."}
 )
 
 // Inputs describes the weights.
 func (w *Weights) Inputs() []input.Entry {
-	return []input.Entry{input.Num(&emptyMass, &w.Empty), input.Num(&maxTakeOff, &w.MaxTakeOff)}
+	return []input.Entry{
+		input.Num(&emptyMass, &w.Empty),
+		input.Num(&growth, &w.Growth),
+		input.Num(&maxTakeOff, &w.MaxTakeOff),
+		input.Pick("zero_fuel_given", "Limit without fuel", &w.ZeroFuelGiven,
+			input.Option{Value: NoZeroFuel, Label: "none"}, input.Option{Value: ByZeroFuel, Label: "a greatest mass"}),
+		input.Num(&maxZeroFuel, &w.MaxZeroFuel).If(w.ZeroFuelGiven == ByZeroFuel),
+	}
+}
+
+// Convert lets a limit that was never given begin where it limits nothing: at the greatest take-off mass.
+func (w *Weights) Convert(choice, _ string) {
+	if choice == "zero_fuel_given" && w.ZeroFuelGiven == ByZeroFuel && maxZeroFuel.Check(w.MaxZeroFuel) != nil {
+		w.MaxZeroFuel = w.MaxTakeOff
+	}
 }
 
 // Inputs describes one item.

@@ -22,6 +22,8 @@ type Entry struct {
 	Path string
 	// Lone marks a choice on which no other input depends, so that whoever asks what depends on what need not try it.
 	Lone bool
+	// Means says what the value comes to in other terms, shown beside the field; empty where there is nothing to say.
+	Means units.Message
 	// Idle marks an input that the current choices make irrelevant: it is kept, not shown and not checked.
 	Idle bool
 }
@@ -82,6 +84,12 @@ func (e Entry) If(relevant bool) Entry {
 // Alone marks e as a choice on which no other input depends.
 func (e Entry) Alone() Entry {
 	e.Lone = true
+	return e
+}
+
+// Meaning adds what the value comes to in other terms.
+func (e Entry) Meaning(m units.Message) Entry {
+	e.Means = m
 	return e
 }
 

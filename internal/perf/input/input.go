@@ -21,6 +21,7 @@ type Spec struct {
 	Note     string         // what it is, or why the range is what it is
 	Typical  *Typical       // nil when the class of aircraft decides
 	Also     []string       // what the heads of a sheet may call it beside Name and Label
+	Decided  bool           // the designer decides it: it is not known from anywhere, so it has no basis
 }
 
 // Typical is the range that a reader would expect, shown beside the field; values outside it are accepted.

@@ -12,6 +12,7 @@ import (
 	"legwright/internal/perf/loads"
 	"legwright/internal/perf/numeric"
 	"legwright/internal/perf/pointperf"
+	"legwright/internal/perf/powerplant"
 	"legwright/internal/perf/reference"
 )
 
@@ -35,6 +36,8 @@ func samples(t testing.TB) []*aircraft.Aircraft {
 		f := &doc.Variants[i].Aircraft.Airframe
 		f.Clean.LiftGiven, f.TakeOff.LiftGiven, f.Landing.LiftGiven = aircraft.ByCLMax, aircraft.ByCLMax, aircraft.ByCLMax
 		doc.Variants[i].Aircraft.Limits = loads.Unentered()
+		doc.Variants[i].Aircraft.Weights.ZeroFuelGiven = aircraft.NoZeroFuel
+		doc.Variants[i].Aircraft.Powerplant.Model.(*powerplant.PistonPropeller).Fuel.Kind = powerplant.OwnFuel
 		a, err := doc.Variants[i].Aircraft.Build()
 		if err != nil {
 			t.Fatal(err)

@@ -116,6 +116,6 @@ func typicalPiston() *PistonPropeller {
 				{0.9, 0.0155, 0.021}, {0.96, 0.005, 0.0141}, {1, -0.0025, 0.0098}, {1.08, -0.0135, 0.0012},
 			},
 		},
-		Fuel: FuelTank{Volume: 0.09, Capacity: 0.1, Unusable: 0.002, Density: 720},
+		Fuel: FuelTank{Kind: "avgas-100ll", FuelGiven: ByVolume, Volume: 0.09, Capacity: 0.1, Unusable: 0.002, Mass: 64.8, Density: 720},
 	}
 }

@@ -33,28 +33,15 @@ type Propeller struct {
 	LossFactor   float64     `json:"loss_factor"`  // of the loaded disc, dimensionless, 0 to 1
 }
 
-// A FuelTank is the fuel aboard.
-type FuelTank struct {
-	Volume   float64 `json:"volume"`   // aboard at the start, in m³
-	Capacity float64 `json:"capacity"` // of the tanks, in m³
-	Unusable float64 `json:"unusable"` // of the volume aboard, in m³
-	Density  float64 `json:"density"`  // in kg/m³
-}
-
 var (
 	plantMass  = input.Spec{Name: "mass", Label: "Powerplant mass", Quantity: units.Mass, Min: 0, Max: 5000, Note: "Engine, propeller, mount, exhaust and oil, installed, without fuel."}
 	diameter   = input.Spec{Name: "diameter", Label: "Propeller diameter", Quantity: units.Length, Min: 0.05, Max: 6}
 	propSpeed  = input.Spec{Name: "speed", Label: "Governed propeller speed", Quantity: units.Rotation, Min: 3, Max: 500}
 	lossFactor = input.Spec{Name: "loss_factor", Label: "Loss factor of the disc", Quantity: units.Coefficient, Min: 0.6, Max: 0.95,
 		Note: "Share of the shaft power that reaches the slipstream.", Typical: &input.Typical{Low: 0.78, High: 0.9, Source: input.CommonPractice}}
-	columnJ      = input.Spec{Name: "j", Label: "Advance ratio", Quantity: units.Coefficient, Min: 0, Max: 10, Note: "V/(n D) with n in turns per second.", Also: []string{"V/nD", "V/(n D)", "adv ratio"}}
-	columnCT     = input.Spec{Name: "ct", Label: "CT", Quantity: units.Coefficient, Min: -1, Max: 1, Note: "T/(ρ n² D⁴) with n in turns per second.", Also: []string{"thrust coefficient", "thrust coeff"}}
-	columnCP     = input.Spec{Name: "cp", Label: "CP", Quantity: units.Coefficient, Min: -1, Max: 1, Note: "P/(ρ n³ D⁵) with n in turns per second; 2π times a torque coefficient.", Also: []string{"power coefficient", "power coeff"}}
-	fuelVolume   = input.Spec{Name: "volume", Label: "Fuel aboard", Quantity: units.Volume, Min: 0, Max: 20}
-	tankCapacity = input.Spec{Name: "capacity", Label: "Tank capacity", Quantity: units.Volume, Min: 1e-5, Max: 20}
-	unusable     = input.Spec{Name: "unusable", Label: "Unusable fuel", Quantity: units.Volume, Min: 0, Max: 2}
-	fuelDensity  = input.Spec{Name: "density", Label: "Fuel density", Quantity: units.Density, Min: 600, Max: 900,
-		Typical: &input.Typical{Low: 710, High: 775, Source: "aviation gasoline 0.71 to 0.72, motor gasoline (EN 228) 0.72 to 0.775 kg/L, from memory"}}
+	columnJ  = input.Spec{Name: "j", Label: "Advance ratio", Quantity: units.Coefficient, Min: 0, Max: 10, Note: "V/(n D) with n in turns per second.", Also: []string{"V/nD", "V/(n D)", "adv ratio"}}
+	columnCT = input.Spec{Name: "ct", Label: "CT", Quantity: units.Coefficient, Min: -1, Max: 1, Note: "T/(ρ n² D⁴) with n in turns per second.", Also: []string{"thrust coefficient", "thrust coeff"}}
+	columnCP = input.Spec{Name: "cp", Label: "CP", Quantity: units.Coefficient, Min: -1, Max: 1, Note: "P/(ρ n³ D⁵) with n in turns per second; 2π times a torque coefficient.", Also: []string{"power coefficient", "power coeff"}}
 )
 
 // Inputs describes what belongs to the powerplant as a whole.
@@ -87,16 +74,6 @@ func (p *Propeller) Inputs() []input.Entry {
 	}
 }
 
-// Inputs describes the fuel.
-func (t *FuelTank) Inputs() []input.Entry {
-	return []input.Entry{
-		input.Num(&fuelVolume, &t.Volume),
-		input.Num(&tankCapacity, &t.Capacity),
-		input.Num(&unusable, &t.Unusable),
-		input.Num(&fuelDensity, &t.Density),
-	}
-}
-
 // InstalledMass is the dry mass of the powerplant in kg.
 func (p *PistonPropeller) InstalledMass() float64 { return p.Mass }
 
@@ -104,22 +81,11 @@ func (p *PistonPropeller) InstalledMass() float64 { return p.Mass }
 func (p *PistonPropeller) Weighs() []string { return []string{"mass", "fuel"} }
 
 // Stores is the fuel aboard.
-func (p *PistonPropeller) Stores() Stores {
-	f := p.Fuel
-	return Stores{
-		Fuel:     max(0, f.Volume-f.Unusable) * f.Density,
-		Trapped:  min(f.Volume, f.Unusable) * f.Density,
-		Capacity: max(0, f.Capacity-f.Unusable) * f.Density,
-	}
-}
+func (p *PistonPropeller) Stores() Stores { return p.Fuel.stores() }
 
 // Build assembles the powerplant. Its errors are input errors with paths relative to p.
 func (p *PistonPropeller) Build() (Powerplant, error) {
-	var errs []error
-	if p.Fuel.Volume > p.Fuel.Capacity {
-		errs = append(errs, &input.Error{Path: "fuel.volume", Spec: &fuelVolume, Text: units.Metric.Format(units.Volume, p.Fuel.Volume),
-			Accepts: "the tanks hold " + units.Metric.Format(units.Volume, p.Fuel.Capacity), Err: input.ErrConflict})
-	}
+	errs := []error{input.Within("fuel", p.Fuel.check())}
 	e, err := p.Engine.build()
 	errs = append(errs, input.Within("engine", err))
 	if err != nil {

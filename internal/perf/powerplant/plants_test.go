@@ -29,7 +29,7 @@ func piston(change func(*powerplant.PistonPropeller)) *powerplant.PistonPropelle
 				{0.6, 0.0570, 0.0365}, {0.7, 0.0430, 0.0303}, {0.8, 0.0275, 0.0222}, {0.9, 0.0110, 0.0122}, {0.96, 0.0006, 0.0053}, {1.0, -0.0065, 0.0005},
 			},
 		},
-		Fuel: powerplant.FuelTank{Volume: 0.09, Capacity: 0.1, Unusable: 0.002, Density: 720},
+		Fuel: powerplant.FuelTank{Kind: "avgas-100ll", FuelGiven: powerplant.ByVolume, Volume: 0.09, Capacity: 0.1, Unusable: 0.002, Mass: 64.8, Density: 720},
 	}
 	if change != nil {
 		change(p)

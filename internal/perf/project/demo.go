@@ -61,7 +61,7 @@ func typicalAircraft() aircraft.Spec {
 			Landing:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
 			GroundCL: 0.45, NeverExceed: 75, Components: []dragbuild.Component{},
 		},
-		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650},
+		Weights:    aircraft.Weights{Empty: 290, Items: []aircraft.Item{{Name: "Crew", Mass: 160}, {Name: "Baggage", Mass: 15}}, MaxTakeOff: 650, ZeroFuelGiven: aircraft.NoZeroFuel, MaxZeroFuel: 650},
 		Limits:     typicalLimits(),
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: kind.New()},
 	}
@@ -112,7 +112,7 @@ func demoAircraft(rated, mass, diameter, pitch float64) aircraft.Spec {
 	a := typicalAircraft()
 	f := &a.Airframe
 	f.WingArea, f.Span, f.CDMin = 12.1, 9.4, 0.0335
-	a.Weights = aircraft.Weights{Empty: 298, MaxTakeOff: 650, Items: []aircraft.Item{{Name: "Pilot", Mass: 86}, {Name: "Passenger", Mass: 75}, {Name: "Baggage", Mass: 12}}}
+	a.Weights = aircraft.Weights{Empty: 298, MaxTakeOff: 650, ZeroFuelGiven: aircraft.NoZeroFuel, MaxZeroFuel: 650, Items: []aircraft.Item{{Name: "Pilot", Mass: 86}, {Name: "Passenger", Mass: 75}, {Name: "Baggage", Mass: 12}}}
 	p := a.Powerplant.Model.(*powerplant.PistonPropeller)
 	p.Mass = mass
 	e := &p.Engine
@@ -133,7 +133,7 @@ func demoAircraft(rated, mass, diameter, pitch float64) aircraft.Spec {
 		row[1] *= math.Pow(pitch, 0.3)
 		row[2] *= math.Pow(pitch, 1.3)
 	}
-	p.Fuel = powerplant.FuelTank{Volume: 0.088, Capacity: 0.1, Unusable: 0.002, Density: 720}
+	p.Fuel = powerplant.FuelTank{Kind: "avgas-100ll", FuelGiven: powerplant.ByVolume, Volume: 0.088, Capacity: 0.1, Unusable: 0.002, Mass: 63.36, Density: 720}
 	return a
 }
 

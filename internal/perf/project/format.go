@@ -44,6 +44,13 @@ var added = map[string]string{
 	"variants.aircraft.limits": `{"rule": "none", "factors_given": "rule", "positive": 3.8, "negative": -1.5, "negative_dive": 0, "speeds_given": "rule", "cruise": 60, "dive": 84,
 		"gust_cruise": 15.24, "gust_dive": 7.62, "negative_cl": -0.8, "chord_given": "area", "chord": 1.3, "slope_given": "estimate", "slope": 5}`,
 	"legs.turns": "1", "legs.heading": "3.141592653589793", "legs.bank": "0.5235987755982988", "legs.load_factor": "2", "legs.payload": "10", "legs.share": "0.05",
+
+	"variants.aircraft.weights.growth":                    `0`,
+	"variants.aircraft.weights.zero_fuel_given":           `"none"`,
+	"variants.aircraft.weights.max_zero_fuel":             `0`,
+	"variants.aircraft.powerplant.values.fuel.kind":       `"own"`,
+	"variants.aircraft.powerplant.values.fuel.fuel_given": `"volume"`,
+	"variants.aircraft.powerplant.values.fuel.mass":       `0`,
 }
 
 // formatOf is the number of the format that the document states, 0 where it states none that Decode reads.

@@ -2,6 +2,7 @@ package project
 
 import (
 	"encoding/json"
+	"math"
 	"os"
 	"reflect"
 	"strings"
@@ -42,6 +43,16 @@ func TestOldDocument(t *testing.T) {
 	want := Demo()
 	if s.Name != want.Name || len(s.Legs) != len(want.Legs) || len(s.Variants) != len(want.Variants) || s.Variants[1].Aircraft.Airframe.WingArea != want.Variants[1].Aircraft.Airframe.WingArea {
 		t.Error("the old document has lost something")
+	}
+	// What came later must not change what it says: 298 kg, the engine's mass, 173 kg and 88 L of 720 kg/m³.
+	built, err := s.Build()
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, engine := range []float64{78, 92} {
+		if got, want := built.Aircraft[i].StartMass(), 298+engine+173+63.36; math.Abs(got-want) > 1e-9 {
+			t.Errorf("variant %d starts at %v kg, want %v", i, got, want)
+		}
 	}
 }
 

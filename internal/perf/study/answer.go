@@ -106,12 +106,15 @@ type WarningAnswer struct {
 
 // MassesAnswer are masses in kg.
 type MassesAnswer struct {
-	Empty      float64 `json:"empty"`        // in kg
-	Payload    float64 `json:"payload"`      // in kg
-	Fuel       float64 `json:"fuel"`         // in kg
-	Start      float64 `json:"start"`        // in kg
-	MaxTakeOff float64 `json:"max_take_off"` // in kg
-	Landing    float64 `json:"landing"`      // in kg
+	Empty       float64  `json:"empty"`                   // with powerplant, in kg
+	Growth      float64  `json:"growth"`                  // allowed on top of it, in kg
+	Payload     float64  `json:"payload"`                 // in kg
+	ZeroFuel    float64  `json:"zero_fuel"`               // without usable fuel, in kg
+	Fuel        float64  `json:"fuel"`                    // in kg
+	Start       float64  `json:"start"`                   // in kg
+	MaxTakeOff  float64  `json:"max_take_off"`            // in kg
+	MaxZeroFuel *float64 `json:"max_zero_fuel,omitempty"` // in kg
+	Landing     float64  `json:"landing"`                 // in kg
 }
 
 // A SpeedAnswer is one speed of note at the default view.
@@ -184,7 +187,8 @@ func (s *Study) Answer() Answer {
 	f := &s.Flight
 	a := Answer{Variant: s.Variant().ID, Name: s.Variant().Name, Flown: f.Flown(), Placeholders: append([]string{}, s.Placeholders()...),
 		Reserve: reserveAnswer(&f.Reserve),
-		Masses:  MassesAnswer{s.Masses.Empty, s.Masses.Payload, s.Masses.Fuel, s.Masses.Start, s.Masses.MaxTakeOff, s.Masses.Landing},
+		Masses: MassesAnswer{s.Masses.Empty, s.Masses.Growth, s.Masses.Payload, s.Masses.ZeroFuel, s.Masses.Fuel, s.Masses.Start, s.Masses.MaxTakeOff,
+			finite(s.Masses.MaxZeroFuel), s.Masses.Landing},
 		TakeOff: runAnswer(s.TakeOff), Landing: runAnswer(s.Landing),
 		Requirements: []RequirementAnswer{}, Warnings: []WarningAnswer{}, Climb: []ClimbAnswer{}, Legs: []LegAnswer{}, Trace: []SampleAnswer{}}
 	if e := f.Failure; e != nil {

@@ -231,7 +231,7 @@ func (s *Study) around(list []namedMass) []namedMass {
 	const apart = 0.02
 	for _, m := range []namedMass{{"10 % lighter than set", 0.9 * s.View.Mass}, {"10 % heavier than set", 1.1 * s.View.Mass}} {
 		near := func(o namedMass) bool { return math.Abs(o.mass-m.mass) < apart*m.mass }
-		if m.mass >= s.Masses.Empty && !slices.ContainsFunc(list, near) {
+		if m.mass >= s.Masses.Empty+s.Masses.Growth && !slices.ContainsFunc(list, near) {
 			list = append(list, m)
 		}
 	}

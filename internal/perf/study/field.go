@@ -179,7 +179,7 @@ func (s *Study) alongAltitude(f *Field) {
 // alongMass varies the mass from the empty aircraft with its first load item, such as the
 // pilot, to the greatest take-off mass, or to the present mass if that is greater.
 func (s *Study) alongMass(f *Field) {
-	from, to := s.Masses.Empty, math.Max(s.Masses.MaxTakeOff, f.Present.Mass)
+	from, to := s.Masses.Empty+s.Masses.Growth, math.Max(s.Masses.MaxTakeOff, f.Present.Mass)
 	if items := s.Variant().Aircraft.Weights.Items; len(items) > 0 && from+items[0].Mass < 0.95*to {
 		from += items[0].Mass
 	}

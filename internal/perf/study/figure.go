@@ -29,7 +29,7 @@ var (
 	polarInputs = []string{"airframe.wing_area", "airframe.span", "airframe.drag_given", "airframe.cd_min", "airframe.efficiency", "airframe.cl_min_drag", "airframe.polar",
 		"airframe.drag_area", "airframe.glide_ratio", "airframe.glide_speed", "airframe.glide_mass",
 		"airframe.components", "airframe.leakage", "airframe.unlisted", "airframe.friction_tas", "airframe.friction_alt"}
-	massInputs  = []string{"weights.empty", "weights.items"}
+	massInputs  = []string{"weights.empty", "weights.growth", "weights.items"}
 	plantInputs = []string{"powerplant"}
 	cleanLift   = []string{"airframe.wing_area", "airframe.clean.cl_max", "airframe.clean.stall_speed", "airframe.clean.stall_mass"}
 	clean       = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.clean", "airframe.never_exceed"})

@@ -55,12 +55,16 @@ type Study struct {
 
 // Masses are the masses of the variant in kg.
 type Masses struct {
-	Empty      float64 // with powerplant, in kg
-	Payload    float64 // in kg
-	Fuel       float64 // all fuel aboard, in kg
-	Start      float64 // with everything aboard, in kg
-	MaxTakeOff float64 // the designer's limit, in kg
-	Landing    float64 // at the landing of the mission, or at its start when it is not reached, in kg
+	Empty       float64 // with powerplant, as stated, in kg
+	Growth      float64 // allowance for what building adds, in kg
+	Payload     float64 // in kg
+	Trapped     float64 // unusable fuel aboard, in kg
+	ZeroFuel    float64 // with everything but usable fuel, in kg
+	Fuel        float64 // all fuel aboard, in kg
+	Start       float64 // with everything aboard, in kg
+	MaxTakeOff  float64 // the designer's limit, in kg
+	MaxZeroFuel float64 // the designer's limit without usable fuel, in kg; +Inf when there is none
+	Landing     float64 // at the landing of the mission, or at its start when it is not reached, in kg
 }
 
 // An Altitude is an altitude or the reason why there is none.
@@ -94,8 +98,9 @@ func DefaultView(p *project.Project, variant int) View {
 func Run(p *project.Project, variant int, view View) *Study {
 	a := p.Aircraft[variant]
 	stores := a.Stores()
-	s := &Study{Project: p, Index: variant, View: view, Masses: Masses{Empty: a.EmptyMass(), Payload: a.Payload(), Fuel: stores.Fuel + stores.Trapped,
-		Start: a.StartMass(), MaxTakeOff: a.MaxTakeOff()}}
+	s := &Study{Project: p, Index: variant, View: view, Masses: Masses{Empty: a.EmptyMass(), Growth: a.Growth(), Payload: a.Payload(),
+		Trapped: stores.Trapped, ZeroFuel: a.DryMass(), Fuel: stores.Fuel + stores.Trapped, Start: a.StartMass(), MaxTakeOff: a.MaxTakeOff()}}
+	s.Masses.MaxZeroFuel, _ = a.MaxZeroFuel()
 	s.Flight = mission.Fly(a, &p.Plan)
 	s.Masses.Landing = s.landingMass()
 	s.point(a)

@@ -83,11 +83,11 @@ func (s *Study) asked(kind project.FigureKind, r *project.Requirement) *Figure {
 	return &f
 }
 
-// inputsOf lists the aircraft's numbers and tables that count with its present choices.
+// inputsOf lists the aircraft's numbers and tables that have a basis and count with its present choices.
 func inputsOf(a *aircraft.Spec) []input.Entry {
 	var list []input.Entry
 	for _, e := range input.Walk(a) {
-		if !e.Idle && !a.Unused(e.Path) && (e.Number != nil || e.Table != nil) {
+		if !e.Idle && !a.Unused(e.Path) && (e.Number != nil && !e.Number.Decided || e.Table != nil) {
 			list = append(list, e)
 		}
 	}

@@ -73,15 +73,6 @@ func (s *Study) warnDrag() {
 	}
 }
 
-func (s *Study) warnWeights() {
-	m := s.Masses
-	if m.Start > m.MaxTakeOff {
-		s.add("overweight", Stop, "weights", "Take something out, or show that the structure bears more.",
-			units.Say("{} at the start is {} above the designer's greatest take-off mass; structural margin is not checked here",
-				units.Of(units.Mass, m.Start), units.Of(units.Mass, m.Start-m.MaxTakeOff)))
-	}
-}
-
 func (s *Study) warnStrip(what string, strip Strip) {
 	run, length := strip.Run, strip.Place.Strip.Length
 	switch {

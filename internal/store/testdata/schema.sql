@@ -51,6 +51,14 @@ CREATE TABLE revision (
 	CHECK (parent IS NULL OR parent < number)
 ) STRICT;
 
+CREATE TABLE snapshot (
+	project_id INTEGER NOT NULL,
+	number     INTEGER NOT NULL, -- of the revision
+	name       TEXT    NOT NULL CHECK (name <> ''),
+	PRIMARY KEY (project_id, number),
+	FOREIGN KEY (project_id, number) REFERENCES revision (project_id, number)
+) STRICT, WITHOUT ROWID;
+
 CREATE INDEX imported_original ON imported (original_id);
 
 CREATE INDEX imported_table ON imported (project_id, path);

@@ -82,7 +82,7 @@ func newBook(r reference.Row) *Book {
 	} else {
 		b.Model.Plant = Jet{r.SI("thrust"), r.Num("hourly") / 3600 / atmos.Gravity}
 	}
-	b.Spec.Weights = aircraft.Weights{Empty: b.Mass - fuel, MaxTakeOff: b.Mass}
+	b.Spec.Weights = aircraft.Weights{Empty: b.Mass - fuel, MaxTakeOff: b.Mass, ZeroFuelGiven: aircraft.NoZeroFuel}
 	b.Spec.Limits = loads.Unentered()
 	b.Spec.Powerplant = powerplant.Spec{Kind: "test", Model: b.Model}
 	return b

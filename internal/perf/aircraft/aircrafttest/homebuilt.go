@@ -22,7 +22,7 @@ func Homebuilt(propeller string) aircraft.Spec {
 			Landing:  aircraft.Configuration{LiftGiven: aircraft.ByCLMax, CLMax: 1.95, DeltaCD: 0.045, DeltaCLM: 0.2},
 			GroundCL: 0.45, NeverExceed: 72,
 		},
-		Weights:    aircraft.Weights{Empty: 270, Items: []aircraft.Item{{Name: "Crew", Mass: 165}}, MaxTakeOff: 650},
+		Weights:    aircraft.Weights{Empty: 270, Items: []aircraft.Item{{Name: "Crew", Mass: 165}}, MaxTakeOff: 650, ZeroFuelGiven: aircraft.NoZeroFuel},
 		Limits:     loads.Unentered(),
 		Powerplant: powerplant.Spec{Kind: kind.Name, Model: model},
 	}
