@@ -81,6 +81,9 @@ func bestLevel(a *aircraft.Aircraft, p *Point, merit func(Level) float64) (Level
 // or thrust, 0 to 1.
 func AtFraction(a *aircraft.Aircraft, p *Point, fraction float64) (Level, error) {
 	vs, top := Stall(a, p, nil), topSpeed(a, p)
+	if top <= vs {
+		return Level{}, stallAboveLimit(vs, top)
+	}
 	_, fast := levelBounds(a, p, vs, top)
 	if fast.Err != nil {
 		return Level{}, fast.Err

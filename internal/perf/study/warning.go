@@ -65,7 +65,7 @@ func (s *Study) warn(a *aircraft.Aircraft) {
 
 // warnDrag names a build-up that leaves out what small aircraft have most of: gear,
 // turrets and the like were near half of the parasite drag of ten unmanned
-// aircraft (CEAS Aeronautical Journal, 2021, doi 10.1007/s13272-021-00522-w; its abstract was read).
+// aircraft (CEAS Aeronautical Journal, 2021, doi 10.1007/s13272-021-00522-w; known here from an excerpt).
 func (s *Study) warnDrag() {
 	if s.Variant().Aircraft.Airframe.SkinOnly() {
 		s.add("skin-only", Caution, "airframe", "Add gear, struts, cooling, aerials, gaps and the like by their drag areas, or a share for leakage and protuberances.",
