@@ -75,11 +75,12 @@ type Tile struct {
 
 // A Row is a name and a value with its remark.
 type Row struct {
-	Label  string
-	Value  string
-	Remark string
-	Why    string // says that it rests on placeholders; empty when it does not
-	URL    string // of its working; empty when it has none
+	Label   string
+	Value   string
+	Remark  string
+	Unusual string // says that it lies outside what is usual; empty when it does not
+	Why     string // says that it rests on placeholders; empty when it does not
+	URL     string // of its working; empty when it has none
 }
 
 // Speeds is the table of the speeds of note.
@@ -479,7 +480,7 @@ func figures(s *study.Study, sys units.System, page string) []Row {
 		f := &s.Figures[i]
 		list[i] = Row{Label: f.Label, Remark: f.Where.In(sys)}
 		if f.Has() {
-			list[i].Value = sys.Format(f.Quantity, f.Value)
+			list[i].Value, list[i].Unusual = sys.Format(f.Quantity, f.Value), f.Unusual(f.Value, sys.Unit(f.Quantity))
 		} else {
 			list[i].Value, list[i].Remark = "none", sentence(f.Reason.In(sys))
 		}

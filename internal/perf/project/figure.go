@@ -3,6 +3,7 @@ package project
 import (
 	"slices"
 
+	"legwright/internal/perf/input"
 	"legwright/internal/perf/units"
 )
 
@@ -78,6 +79,18 @@ var figures = []FigureKind{
 	{"reserve_time", "Reserve flown", units.Duration, AtLeast, 1800, false, 0},
 	{"fuel_left", "Fuel left after the reserve", units.Mass, AtLeast, 5, false, 0},
 	{"energy_left", "Energy left before any reserve", units.Fraction, AtLeast, 0.2, false, 0},
+}
+
+// usual are the ranges that a reader would expect of a conventional aeroplane's figures, where there is one.
+var usual = map[string]*input.Typical{
+	"static_thrust_ratio": {Low: 0.2, High: 0.4, Source: input.CommonPractice},
+	"tip_mach":            {Low: 0, High: 0.82, Source: "efficiency falls beyond; " + input.CommonPractice},
+}
+
+// Unusual says in words that a value in SI lies outside what a reader would expect, "" where it does not.
+func (k FigureKind) Unusual(value float64, u units.Unit) string {
+	s := input.Spec{Name: k.ID, Label: k.Label, Quantity: k.Quantity, Typical: usual[k.ID]}
+	return s.Unusual(value, u)
 }
 
 // FigureKinds lists every figure in the order shown.

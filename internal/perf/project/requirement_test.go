@@ -193,3 +193,21 @@ func TestOlderRequirements(t *testing.T) {
 		t.Errorf("reads %+v", old.Requirements)
 	}
 }
+
+func TestUnusualFigures(t *testing.T) {
+	k, ok := LookupFigure("static_thrust_ratio")
+	if !ok {
+		t.Fatal("no such figure")
+	}
+	u := units.Metric.Unit(k.Quantity)
+	for value, usual := range map[float64]bool{0.1: false, 0.2: true, 0.3: true, 0.4: true, 0.9: false} {
+		if got := k.Unusual(value, u); (got == "") != usual {
+			t.Errorf("%v of the weight: %q", value, got)
+		}
+	}
+	for id := range usual {
+		if _, ok := LookupFigure(id); !ok {
+			t.Errorf("%s is no figure", id)
+		}
+	}
+}
