@@ -47,7 +47,7 @@ var (
 // Handbook chooses the axes: round altitudes in the project's unit, and the masses of note.
 func (s *Study) Handbook() Handbook {
 	sys := s.Project.Spec.System()
-	h := Handbook{Deviations: slices.Clone(handbookDeviations), Shares: slices.Clone(handbookShares), HeadWind: 5,
+	h := Handbook{Deviations: slices.Clone(handbookDeviations), Shares: []float64{Full}, HeadWind: 5,
 		CruiseMass: (s.Masses.Start + s.Masses.Landing) / 2}
 	step := 500.0
 	if sys == units.Aviation {
@@ -75,7 +75,31 @@ func (s *Study) Handbook() Handbook {
 	}
 	h.Aloft = rungs(top, 12, sys)
 	h.Cruise = rungs(0.85*top, 7, sys)
+	if c := s.HandbookCruise(h.CruiseMass, h.Cruise[0], Full); c.Err == nil {
+		h.Shares = sharesBelow(c.Level.Output.Fraction)
+	}
 	return h
+}
+
+// sharesBelow are round shares of the rating below the one that full level flight makes, and Full.
+func sharesBelow(full float64) []float64 {
+	if full >= handbookShares[len(handbookShares)-2] {
+		return slices.Clone(handbookShares)
+	}
+	const n = 4
+	step := 0.1
+	if full < (n+1)*step {
+		step = math.Max(full/(n+1), 0.01)
+		step = math.Floor(step*100) / 100
+	}
+	top := math.Ceil(full/step-1e-9) - 1
+	var list []float64
+	for i := top - n + 1; i <= top; i++ {
+		if i > 0 {
+			list = append(list, math.Round(i*step*100)/100)
+		}
+	}
+	return append(list, Full)
 }
 
 // rungs are about n steps of round altitudes in m from sea level to at most top.

@@ -179,3 +179,26 @@ func TestHandbookOfWhatDoesNotFly(t *testing.T) {
 		}
 	}
 }
+
+// TestHandbookShares: round, rising, and each can be flown at the lowest altitude but for the
+// lowest, at which the aircraft may not stay up.
+func TestHandbookShares(t *testing.T) {
+	for _, loss := range []float64{0, 0.03, 0.2, 0.35} {
+		spec := project.Demo()
+		spec.Variants[0].Aircraft.Powerplant.Model.(*powerplant.PistonPropeller).Engine.InstallationLoss = loss
+		spec.Variants[0].Aircraft.Airframe.NeverExceed = 75 - 60*loss
+		s := study.All(built(t, spec))[0]
+		h := s.Handbook()
+		if n := len(h.Shares); n < 2 || h.Shares[n-1] != study.Full {
+			t.Fatalf("shares %v", h.Shares)
+		}
+		for i, share := range h.Shares {
+			if shown := share * 100; math.Abs(shown-math.Round(shown)) > 1e-9 || (i > 0 && share <= h.Shares[i-1]) {
+				t.Errorf("shares %v", h.Shares)
+			}
+		}
+		if c := s.HandbookCruise(h.CruiseMass, h.Cruise[0], h.Shares[len(h.Shares)-2]); c.Err != nil {
+			t.Errorf("loss %v, shares %v: %v", loss, h.Shares, c.Err)
+		}
+	}
+}
