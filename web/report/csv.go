@@ -27,7 +27,7 @@ func FileUnits() []Units {
 // Label says the units in words.
 func (u Units) Label() string {
 	if u == SI {
-		return "SI base units, for programs"
+		return "SI base units"
 	}
 	return units.System(u).Label()
 }

@@ -2,6 +2,7 @@ package report
 
 import (
 	"fmt"
+	"strconv"
 	"strings"
 
 	"legwright/internal/perf/input"
@@ -14,22 +15,27 @@ import (
 var partTitles = map[string]string{"": "Aircraft", "values": "Powerplant", "take_off": "Flaps and gear for take-off", "landing": "Flaps and gear for landing",
 	"clean": "Clean", "fuel": "Fuel"}
 
-// part names the part of the aircraft in which an input stands, from its path.
+// part names the part of the aircraft in which an input stands, from its path; a part that
+// is one of a list goes by the name that it was given.
 func (r *Report) part(path string) string {
 	owner := path[:max(0, strings.LastIndexByte(path, '.'))]
-	var i int
-	items := r.Study.Variant().Aircraft.Weights.Items
-	if n, _ := fmt.Sscanf(owner, "weights.items[%d]", &i); n == 1 && i < len(items) {
-		if items[i].Name != "" {
-			return "Weights: " + items[i].Name
-		}
-		return fmt.Sprintf("Weights: item %d", i+1)
-	}
 	name := owner[strings.LastIndexByte(owner, '.')+1:]
-	if t, ok := partTitles[name]; ok {
+	list, index, listed := strings.Cut(strings.TrimSuffix(name, "]"), "[")
+	if t, ok := partTitles[list]; ok && !listed {
 		return t
 	}
-	return strings.ToUpper(name[:1]) + strings.NewReplacer("_", " ", "[", " ", "]", "").Replace(name[1:])
+	title := strings.ToUpper(list[:1]) + strings.ReplaceAll(list[1:], "_", " ")
+	if !listed {
+		return title
+	}
+	if list == "items" { // of the weights
+		title = "Weights"
+	}
+	if e, ok := input.Find(&r.Study.Variant().Aircraft, owner+".name"); ok && e.Text != nil && *e.Text.Value != "" {
+		return title + ": " + *e.Text.Value
+	}
+	n, _ := strconv.Atoi(index)
+	return fmt.Sprintf("%s: number %d", title, n+1)
 }
 
 // inputName names an input by its part and its label.
