@@ -2,6 +2,7 @@ package study_test
 
 import (
 	"math"
+	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
@@ -205,5 +206,18 @@ func TestHandbookShares(t *testing.T) {
 	}
 	if least > 0.5 {
 		t.Errorf("the cases leave use for %v of the rating", least)
+	}
+}
+
+// TestHandbookAboveTheLimit: where the stall lies above the never-exceed speed the reason says that, in words.
+func TestHandbookAboveTheLimit(t *testing.T) {
+	spec := project.Demo()
+	spec.Variants[0].Aircraft.Airframe.NeverExceed = 20
+	s := study.All(built(t, spec))[0]
+	for _, share := range []float64{0.55, study.Full} {
+		c := s.HandbookCruise(600, 0, share)
+		if c.Err == nil || !strings.Contains(units.Explain(c.Err).In(units.Metric), "never-exceed") {
+			t.Errorf("share %v: %v", share, c.Err)
+		}
 	}
 }
