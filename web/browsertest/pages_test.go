@@ -17,6 +17,7 @@ var pages = map[string]string{
 	"requirements": "/projects/1/variants/a/requirements",
 	"powerplant":   "/projects/1/variants/a/powerplant",
 	"import":       "/projects/1/variants/a/import",
+	"report":       "/projects/1/variants/a/report",
 	"working":      "/projects/1/variants/a/working",
 }
 

@@ -80,6 +80,14 @@ func (w words) draw(c vg.Canvas) {
 		a.anchoredText(f, w.x, w.y, w.anchor, w.text)
 		return
 	}
+	if strings.HasPrefix(w.extra, "halo") { // a style sheet outlines the words; here a plate is drawn under them
+		plate := "panel"
+		if w.extra == "halo-hand" {
+			plate = "hand"
+		}
+		fillBox(c, w.box(), paintToken(plate, ""))
+		c.SetColor(paintToken(w.class, ""))
+	}
 	c.FillString(f, vg.Point{X: vg.Length(w.x - w.anchor*w.width()), Y: vg.Length(w.y)}, w.text)
 }
 

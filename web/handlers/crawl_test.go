@@ -43,13 +43,13 @@ func TestCrawl(t *testing.T) {
 		t.Errorf("stopped after %d pages and %d forms, %d addresses left", c.pages, c.sent, len(c.waiting))
 	}
 	for _, path := range []string{"/projects/1/variants/a", "/projects/1/variants/b", "/projects/2/variants/a", "/projects/1/variants/a/working", "/projects/1/variants/a/climb", "/projects/1/variants/a/drag",
-		"/projects/1/variants/a/strip", "/projects/1/variants/a/mission", "/projects/1/variants/a/powerplant", "/projects/1/variants/a/requirements", "/projects/1/history", "/static/htmx.min.js",
+		"/projects/1/variants/a/strip", "/projects/1/variants/a/mission", "/projects/1/variants/a/powerplant", "/projects/1/variants/a/requirements", "/projects/1/variants/a/report", "/projects/1/history", "/static/htmx.min.js",
 		"/projects/1/variants/a/import?table=powerplant.values.engine.power_curve", "/projects/1/variants/a/import/2?table=powerplant.values.engine.power_curve", "/projects/1/originals/2", "/projects/1/history/1"} {
 		if !c.known[path] {
 			t.Errorf("never reached %s", path)
 		}
 	}
-	for _, form := range []string{"form-weights remove-item #", "form-airframe remove-component #", "form-mission move-leg-up #", "form-legs move-leg-down #", "form-legs duplicate-leg #", "form-legs add-leg contingency", "form-legs add-leg turns", "form-requirements add-requirement", "form-requirement-# remove-requirement #", "add-form", "presets-form add-preset vla", "view-form", "undo-form", "redo-form", "units-form", "import-upload", "import-mapping", "import-confirm"} {
+	for _, form := range []string{"form-weights remove-item #", "form-airframe remove-component #", "form-mission move-leg-up #", "form-legs move-leg-down #", "form-legs duplicate-leg #", "form-legs add-leg contingency", "form-legs add-leg turns", "form-requirements add-requirement", "form-requirement-# remove-requirement #", "add-form", "presets-form add-preset vla", "view-form", "undo-form", "redo-form", "units-form", "report-form", "tables-form", "table mission-trace.csv?units=si", "import-upload", "import-mapping", "import-confirm"} {
 		if !c.known[form] {
 			t.Errorf("never sent %s", form)
 		}
@@ -156,6 +156,13 @@ func (c *crawler) link(address string) {
 		return
 	}
 	to.Fragment = ""
+	if _, table, ok := strings.Cut(to.Path, "/tables/"); ok { // of one variant: they are many
+		name := "table " + table + "?" + to.RawQuery
+		if c.known[name] {
+			return
+		}
+		c.known[name] = true
+	}
 	c.add(to.String())
 }
 

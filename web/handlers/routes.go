@@ -75,6 +75,10 @@ func New(cfg Config) (http.Handler, error) {
 		r.Get("/variants/{variant}/mission", s.serve(s.editable("mission")))
 		r.Get("/variants/{variant}/requirements", s.serve(s.editable("requirements")))
 		r.Get("/variants/{variant}/powerplant", s.serve(s.analysis("/powerplant", plant)))
+		r.Get("/variants/{variant}/report", s.serve(s.reportPage))
+		r.Get("/variants/{variant}/report.pdf", s.serve(s.reportFile("pdf", reportPDF)))
+		r.Get("/variants/{variant}/tables.zip", s.serve(s.reportFile("zip", reportTables)))
+		r.Get("/variants/{variant}/tables/{table}", s.serve(s.reportFile("csv", reportTable)))
 		r.Get("/variants/{variant}/working", s.serve(s.analysis("/working", working)))
 	})
 

@@ -28,6 +28,7 @@ var tabs = []struct{ Path, Label string }{
 	{"/mission", "Mission"},
 	{"/requirements", "Requirements"},
 	{"/powerplant", "Powerplant and propeller"},
+	{"/report", "Report"},
 	{"/working", "Working"},
 }
 

@@ -40,14 +40,14 @@ func layout(title string) templ.Component {
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
-		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 2, " · Legwright</title><link rel=\"icon\" href=\"/static/icon.svg\" type=\"image/svg+xml\"><link rel=\"stylesheet\" href=\"/static/tokens.css\"><link rel=\"stylesheet\" href=\"/static/page.css\"><link rel=\"stylesheet\" href=\"/static/bench.css\"><link rel=\"stylesheet\" href=\"/static/charts.css\"><link rel=\"stylesheet\" href=\"/static/climb.css\"><link rel=\"stylesheet\" href=\"/static/drag.css\"><link rel=\"stylesheet\" href=\"/static/strip.css\"><link rel=\"stylesheet\" href=\"/static/plant.css\"><link rel=\"stylesheet\" href=\"/static/requirements.css\"><link rel=\"stylesheet\" href=\"/static/history.css\"><link rel=\"stylesheet\" href=\"/static/mission.css\"><link rel=\"stylesheet\" href=\"/static/working.css\"><link rel=\"stylesheet\" href=\"/static/import.css\"><link rel=\"stylesheet\" href=\"/static/print.css\" media=\"print\"><script src=\"/static/enhance.js\" defer></script><script src=\"/static/htmx.min.js\" defer></script><script src=\"/static/charts.js\" defer></script><script src=\"/static/copy.js\" defer></script><script src=\"/static/mission.js\" defer></script></head><body><a class=\"skip\" href=\"#main\">Skip to the content</a><p class=\"paper-title\">")
+		templ_7745c5c3_Err = templruntime.WriteString(templ_7745c5c3_Buffer, 2, " · Legwright</title><link rel=\"icon\" href=\"/static/icon.svg\" type=\"image/svg+xml\"><link rel=\"stylesheet\" href=\"/static/tokens.css\"><link rel=\"stylesheet\" href=\"/static/page.css\"><link rel=\"stylesheet\" href=\"/static/bench.css\"><link rel=\"stylesheet\" href=\"/static/charts.css\"><link rel=\"stylesheet\" href=\"/static/climb.css\"><link rel=\"stylesheet\" href=\"/static/drag.css\"><link rel=\"stylesheet\" href=\"/static/strip.css\"><link rel=\"stylesheet\" href=\"/static/plant.css\"><link rel=\"stylesheet\" href=\"/static/requirements.css\"><link rel=\"stylesheet\" href=\"/static/history.css\"><link rel=\"stylesheet\" href=\"/static/mission.css\"><link rel=\"stylesheet\" href=\"/static/working.css\"><link rel=\"stylesheet\" href=\"/static/import.css\"><link rel=\"stylesheet\" href=\"/static/print.css\" media=\"print\"><link rel=\"stylesheet\" href=\"/static/report.css\"><script src=\"/static/enhance.js\" defer></script><script src=\"/static/htmx.min.js\" defer></script><script src=\"/static/charts.js\" defer></script><script src=\"/static/copy.js\" defer></script><script src=\"/static/mission.js\" defer></script></head><body><a class=\"skip\" href=\"#main\">Skip to the content</a><p class=\"paper-title\">")
 		if templ_7745c5c3_Err != nil {
 			return templ_7745c5c3_Err
 		}
 		var templ_7745c5c3_Var3 string
 		templ_7745c5c3_Var3, templ_7745c5c3_Err = templ.JoinStringErrs(title)
 		if templ_7745c5c3_Err != nil {
-			return templ.Error{Err: templ_7745c5c3_Err, FileName: `layout.templ`, Line: 34, Col: 33}
+			return templ.Error{Err: templ_7745c5c3_Err, FileName: `layout.templ`, Line: 35, Col: 33}
 		}
 		_, templ_7745c5c3_Err = templ_7745c5c3_Buffer.WriteString(templ.EscapeString(templ_7745c5c3_Var3))
 		if templ_7745c5c3_Err != nil {
