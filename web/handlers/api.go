@@ -58,6 +58,11 @@ func (s *site) document(w http.ResponseWriter, r *http.Request) error {
 	if err != nil {
 		return err
 	}
+	return writeDocument(w, h)
+}
+
+// writeDocument answers with the document in its one written form.
+func writeDocument(w http.ResponseWriter, h head) error {
 	text, err := h.spec.Encode()
 	if err != nil {
 		return err

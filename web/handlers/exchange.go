@@ -6,7 +6,6 @@ import (
 	"io"
 	"mime"
 	"net/http"
-	"net/url"
 	"strings"
 
 	"legwright/internal/perf/input"
@@ -20,36 +19,19 @@ func (s *site) export(w http.ResponseWriter, r *http.Request) error {
 	if err != nil {
 		return err
 	}
-	text, err := h.spec.Encode()
-	if err != nil {
-		return err
-	}
-	w.Header().Set("Content-Type", "application/json; charset=utf-8")
-	w.Header().Set("Cache-Control", "no-store")
 	attach(w, h.spec.Name+".json")
-	_, err = w.Write(text)
-	return err
+	return writeDocument(w, h)
 }
 
-// attach has the browser save the answer under the name. A name outside ASCII goes
-// in the form of RFC 6266 beside one that every browser takes.
+// attach has the browser save the answer under the name, in which signs that part folders and drives are replaced.
 func attach(w http.ResponseWriter, name string) {
-	plain := strings.Map(func(c rune) rune {
-		switch {
-		case c < ' ' || strings.ContainsRune(`"\/:*?<>|`, c):
-			return '_'
-		case c > '~':
-			return '-'
-		}
-		return c
-	}, name)
-	full := strings.Map(func(c rune) rune {
+	safe := strings.Map(func(c rune) rune {
 		if c < ' ' || strings.ContainsRune(`"\/:*?<>|`, c) {
 			return '_'
 		}
 		return c
 	}, name)
-	w.Header().Set("Content-Disposition", fmt.Sprintf(`attachment; filename="%s"; filename*=UTF-8''%s`, plain, url.PathEscape(full)))
+	w.Header().Set("Content-Disposition", mime.FormatMediaType("attachment", map[string]string{"filename": safe}))
 }
 
 // importProject takes a project file into the database as a new project. A file that

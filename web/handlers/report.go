@@ -2,7 +2,6 @@ package handlers
 
 import (
 	"fmt"
-	"mime"
 	"net/http"
 	"slices"
 	"strconv"
@@ -107,7 +106,7 @@ func (s *site) reportFile(ending string, build func(*http.Request, *report.Repor
 		}
 		head := w.Header()
 		head.Set("Content-Type", f.kind)
-		head.Set("Content-Disposition", mime.FormatMediaType("attachment", map[string]string{"filename": name + "." + ending}))
+		attach(w, name+"."+ending)
 		head.Set("Cache-Control", "no-store")
 		head.Set("Content-Length", strconv.Itoa(len(f.bytes)))
 		_, err = w.Write(f.bytes)
