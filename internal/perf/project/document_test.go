@@ -120,10 +120,11 @@ func shuffled(t *rapid.T) *Spec {
 	valid(func(s *Spec) {
 		s.Variants[0].Basis[rapid.String().Draw(t, "path")] = Basis{Estimated, rapid.Float64Range(0, 1e11).Draw(t, "band"), rapid.String().Draw(t, "note")}
 	})
-	for i := range input.Walk(s) {
-		if rapid.IntRange(0, 3).Draw(t, "leave") == 0 {
-			valid(func(s *Spec) { randomize(t, input.Walk(s)[i]) })
-		}
+	for range rapid.IntRange(0, 40).Draw(t, "changes") {
+		valid(func(s *Spec) {
+			list := input.Walk(s)
+			randomize(t, list[rapid.IntRange(0, len(list)-1).Draw(t, "input")])
+		})
 	}
 	return s
 }
