@@ -71,7 +71,7 @@ func TestAxeOtherPages(t *testing.T) {
 			continue
 		}
 		p := s.openPage(name)
-		p.audits(name, looks)
+		p.audits(name, some)
 	}
 }
 

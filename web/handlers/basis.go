@@ -11,14 +11,14 @@ import (
 	"legwright/internal/perf/units"
 )
 
-// setIn puts the typed text into the input. What is typed into a number of an
-// aircraft may also state its band, "0.034 ± 0.003"; a text without one states none.
+// setIn puts the typed text into the input. What is typed into a number that has
+// a basis may also state its band, "0.034 ± 0.003"; a text without one states none.
 func setIn(s *project.Spec, entry input.Entry, text string, sys units.System) (string, error) {
-	v, path, ours := s.InAircraft(entry.Path)
+	basis, ours := s.BasisAt(entry)
 	if entry.Number == nil || !ours {
 		return set(entry, text, sys)
 	}
-	n, basis := entry.Number, v.BasisOf(path)
+	n := entry.Number
 	before := n.WithBand(sys, *n.Value, basis.PlusMinus)
 	typed, band, stated := input.CutBand(text)
 	said, err := set(entry, typed, sys)
@@ -35,7 +35,7 @@ func setIn(s *project.Spec, entry input.Entry, text string, sys units.System) (s
 		return said, nil
 	}
 	basis.PlusMinus = width
-	v.SetBasis(path, basis)
+	s.SetBasisAt(entry.Path, basis)
 	return strings.TrimSpace(fmt.Sprintf("%s %s → %s %s", entry.Label(), before, n.WithBand(sys, *n.Value, width), sys.Unit(n.Quantity).Symbol)), nil
 }
 
@@ -70,10 +70,10 @@ var facets = []facet{
 // longestNote is how many characters a note of a basis may have.
 const longestNote = 500
 
-// basisChanges are the changes of where an aircraft input comes from.
+// basisChanges are the changes of where an input comes from.
 func (e *edit) basisChanges(shown input.Entry, form url.Values) []change {
-	was, path, ours := e.base.InAircraft(shown.Path)
-	if !ours || was.ID != e.base.Variants[e.variant].ID {
+	was, ok := e.base.BasisAt(shown)
+	if v, _, ofAircraft := e.base.InAircraft(shown.Path); !ok || ofAircraft && v.ID != e.base.Variants[e.variant].ID {
 		return nil
 	}
 	var list []change
@@ -84,20 +84,19 @@ func (e *edit) basisChanges(shown input.Entry, form url.Values) []change {
 			e.left(shown)
 			continue
 		}
-		if !form.Has(name) || text == f.get(was.BasisOf(path)) || f.prefix == "basis:" && text == "" {
+		if !form.Has(name) || text == f.get(was) || f.prefix == "basis:" && text == "" {
 			continue
 		}
-		clash := e.basisClash(shown, path, f, text)
+		clash := e.basisClash(shown, f, text)
 		list = append(list, change{path: name, text: text, set: func(s *project.Spec) (string, error) {
 			if clash != nil {
 				return "", clash
 			}
-			v := &s.Variants[e.variant]
-			b := v.BasisOf(path)
+			b, _ := s.BasisAt(shown)
 			if err := f.set(&b, text); err != nil {
 				return "", err
 			}
-			v.SetBasis(path, b)
+			s.SetBasisAt(shown.Path, b)
 			return f.said(shown.Label(), text), nil
 		}})
 	}
@@ -105,7 +104,7 @@ func (e *edit) basisChanges(shown input.Entry, form url.Values) []change {
 }
 
 // basisClash is clash for what a basis says.
-func (e *edit) basisClash(shown input.Entry, path string, f facet, text string) error {
+func (e *edit) basisClash(shown input.Entry, f facet, text string) error {
 	stands := e.stands(f.prefix+shown.Path, text)
 	if e.base == e.head && !stands {
 		return nil
@@ -116,7 +115,9 @@ func (e *edit) basisClash(shown input.Entry, path string, f facet, text string) 
 	if e.moved(shown.Path) {
 		return errMoved
 	}
-	before, after := f.get(e.base.Variants[e.variant].BasisOf(path)), f.get(e.head.Variants[e.variant].BasisOf(path))
+	was, _ := e.base.BasisAt(shown)
+	is, _ := e.head.BasisAt(shown)
+	before, after := f.get(was), f.get(is)
 	if after == before && !stands || after == text {
 		return nil
 	}

@@ -46,11 +46,12 @@ func (s *site) since(ctx context.Context, h head, sys units.System, name string)
 func textOf(s *project.Spec, name string, sys units.System) (string, bool) {
 	for _, f := range facets {
 		if path, ok := strings.CutPrefix(name, f.prefix); ok {
-			v, within, ours := s.InAircraft(path)
-			if !ours {
+			e, ok := input.Find(s, path)
+			if !ok {
 				return "", false
 			}
-			return f.get(v.BasisOf(within)), true
+			b, ok := s.BasisAt(e)
+			return f.get(b), ok
 		}
 	}
 	e, ok := input.Find(s, name)

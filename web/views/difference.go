@@ -91,14 +91,12 @@ func (d *differing) bases(was map[string]string) []DifferenceRow {
 	var rows []DifferenceRow
 	for i := range d.now.entries {
 		e := &d.now.entries[i]
-		now, within, ours := d.now.spec.InAircraft(e.Path)
-		old, known := was[e.Path]
-		then, before, oursThen := d.then.spec.InAircraft(old)
-		if !ours || !known || !oursThen || e.Idle || e.Number == nil && e.Table == nil {
-			continue
-		}
-		a, b := then.BasisOf(before), now.BasisOf(within)
-		if a == b {
+		old := *e
+		path, known := was[e.Path]
+		old.Path = path
+		b, has := d.now.spec.BasisAt(*e)
+		a, had := d.then.spec.BasisAt(old)
+		if !known || !has || !had || e.Idle || a == b {
 			continue
 		}
 		part, _ := d.where(&d.now, e.Path)

@@ -131,10 +131,10 @@ func EntryText(e input.Entry, sys units.System) string {
 	return *e.Text.Value
 }
 
-// FieldText is EntryText, with the stated band of an aircraft's number.
+// FieldText is EntryText, with the stated band of a number that has a basis.
 func FieldText(spec *project.Spec, e input.Entry, sys units.System) string {
-	if v, path, ours := spec.InAircraft(e.Path); ours && e.Number != nil {
-		return e.Number.WithBand(sys, *e.Number.Value, v.BasisOf(path).PlusMinus)
+	if b, ok := spec.BasisAt(e); ok && e.Number != nil {
+		return e.Number.WithBand(sys, *e.Number.Value, b.PlusMinus)
 	}
 	return EntryText(e, sys)
 }
@@ -174,13 +174,12 @@ func tableHead(t *input.Table, sys units.System) string {
 	return strings.Join(heads, " · ")
 }
 
-// basis adds the basis of an aircraft's number or table.
+// basis adds the basis of a number or table that has one.
 func (f *form) basis(e input.Entry, fd *Field) {
-	v, path, ours := f.spec.InAircraft(e.Path)
-	if !ours || (e.Number == nil && e.Table == nil) || e.Number != nil && e.Number.Decided {
+	b, ok := f.spec.BasisAt(e)
+	if !ok {
 		return
 	}
-	b := v.BasisOf(path)
 	fd.Weak, fd.Remark = b.Kind == project.Placeholder, b.Note
 	for _, o := range project.BasisKinds {
 		fd.Basis = append(fd.Basis, Option{o.Value, o.Label, o.Value == b.Kind})

@@ -6,7 +6,6 @@ import (
 	"strconv"
 	"strings"
 
-	"legwright/internal/perf/input"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/study"
 	"legwright/internal/perf/units"
@@ -183,7 +182,7 @@ func weakInputs(s *study.Study, f *study.Figure) string {
 	const most = 3
 	var names []string
 	for _, path := range paths[:min(most, len(paths))] {
-		if e, ok := input.Find(&s.Variant().Aircraft, path); ok {
+		if e, ok := s.Input(path); ok {
 			names = append(names, lowerFirst(e.Label()))
 		}
 	}

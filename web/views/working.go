@@ -168,14 +168,13 @@ func (t *teller) value(sym formula.Symbol, si float64, o study.Origin) WorkedVal
 func (t *teller) given(path string) Given {
 	e := t.entries[path]
 	g := Given{Label: e.Label(), URL: t.bench + "#" + elementID(path) + "-field"}
-	v, within, ours := t.study.Project.Spec.InAircraft(path)
 	if e.Number != nil {
 		if u := t.sys.Unit(e.Number.Quantity); u.Symbol != e.Number.Quantity.SI() {
 			g.Label += " " + t.sys.Entry(e.Number.Quantity, *e.Number.Value) + "\u00a0" + u.Symbol
 		}
 	}
-	if ours {
-		b := v.BasisOf(within)
+	e.Path = path
+	if b, ok := t.study.Project.Spec.BasisAt(e); ok {
 		g.Basis = basisWords(e, b, t.sys)
 		if b.Kind == project.Placeholder {
 			g.Basis = "placeholder: check it"

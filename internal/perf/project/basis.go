@@ -52,6 +52,42 @@ func (s *Spec) InAircraft(path string) (v *Variant, within string, ok bool) {
 	return &s.Variants[i], within, true
 }
 
+// basesFor finds where the basis of the document's input at path is kept, and its key there.
+func (s *Spec) basesFor(path string) (bases *map[string]Basis, key string, ok bool) {
+	if v, within, ours := s.InAircraft(path); ours {
+		return &v.Basis, within, true
+	}
+	if strings.HasPrefix(path, "strips[") {
+		return &s.Basis, path, true
+	}
+	return nil, "", false
+}
+
+// BasisAt is the basis of an input of the document; ok is false for one that is
+// decided and not known from anywhere, such as a leg, a day or a requirement: it has none.
+func (s *Spec) BasisAt(e input.Entry) (b Basis, ok bool) {
+	bases, key, ok := s.basesFor(e.Path)
+	if !ok || e.Number == nil && e.Table == nil || e.Number != nil && e.Number.Decided {
+		return Basis{}, false
+	}
+	if b, given := (*bases)[key]; given {
+		return b, true
+	}
+	return Basis{Kind: Placeholder}, true
+}
+
+// SetBasisAt gives the input of the document at path a basis, where one is kept for it.
+func (s *Spec) SetBasisAt(path string, b Basis) {
+	bases, key, ok := s.basesFor(path)
+	if !ok {
+		return
+	}
+	if *bases == nil {
+		*bases = map[string]Basis{}
+	}
+	(*bases)[key] = b
+}
+
 // SetBasis gives the aircraft input at path a basis.
 func (v *Variant) SetBasis(path string, b Basis) {
 	if v.Basis == nil {

@@ -77,6 +77,7 @@ func (s *Spec) references() error {
 			rest = i
 		}
 	}
+	errs = append(errs, checkBases(s.Basis, "basis."))
 	seen := map[string]bool{}
 	for i := range s.Variants {
 		v := &s.Variants[i]
@@ -85,16 +86,17 @@ func (s *Spec) references() error {
 			errs = append(errs, &input.Error{Path: path + ".id", Text: v.ID, Accepts: "an identifier of its own, without blanks and / ? # %", Err: input.ErrConflict})
 		}
 		seen[v.ID] = true
-		errs = append(errs, v.checkBasis(path))
+		errs = append(errs, checkBases(v.Basis, path+".basis."))
 	}
 	return errors.Join(errs...)
 }
 
-func (v *Variant) checkBasis(path string) error {
+// checkBases checks the bases of a part of the document; prefix is the path before their keys.
+func checkBases(bases map[string]Basis, prefix string) error {
 	var errs []error
-	for _, key := range slices.Sorted(maps.Keys(v.Basis)) {
-		b := v.Basis[key]
-		where := path + ".basis." + key
+	for _, key := range slices.Sorted(maps.Keys(bases)) {
+		b := bases[key]
+		where := prefix + key
 		if !isBasis(b.Kind) {
 			errs = append(errs, &input.Error{Path: where + ".kind", Text: b.Kind, Accepts: "measured, maker, calculated, estimated, placeholder", Err: input.ErrChoice})
 		}

@@ -22,6 +22,7 @@ func New(name string) *Spec {
 		Technique: runway.StandardTechnique(),
 		Legs:      outAndBack(0, 1500, 200e3),
 		Variants:  []Variant{{ID: "a", Name: "A", Aircraft: typicalAircraft(), Basis: map[string]Basis{}}},
+		Basis:     map[string]Basis{},
 	}
 	s.Requirements = []Requirement{Require("take_off_distance", AtMost, 600), Require("climb_rate", AtLeast, 2.5)}
 	return s
@@ -83,6 +84,7 @@ func Demo() *Spec {
 	s.Note = "An invented scenario: every number in it is made up."
 	s.Day = atmos.Spec{Given: atmos.ByDeviation, Deviation: 15, Temperature: 299.19, Humidity: 0.4, QNH: 101800}
 	s.Strips = []runway.Strip{{Name: "Sorrel Down 08", Length: 600, Elevation: 610, Slope: 0.008, Surface: "dry-grass", Obstacle: 15.24}}
+	s.Basis = map[string]Basis{"strips[0].length": {Kind: Measured, Note: "paced and taped"}, "strips[0].elevation": {Kind: Measured}, "strips[0].slope": {Kind: Measured}, "strips[0].obstacle": {Kind: Calculated, Note: "the screen of the rules"}}
 	s.Technique.ApproachAngle = 5 * math.Pi / 180
 	s.Legs = outAndBack(570, 2700, 180e3)
 	for i, wind := range map[int]float64{3: 5, 5: -3} {

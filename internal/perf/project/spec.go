@@ -29,6 +29,7 @@ type Spec struct {
 	Legs         []mission.Leg    `json:"legs"`
 	Requirements []Requirement    `json:"requirements"`
 	Variants     []Variant        `json:"variants"`
+	Basis        map[string]Basis `json:"basis"` // of the strips' inputs, by path; an input without one is a placeholder
 }
 
 // A Variant is one complete aircraft.
@@ -78,6 +79,7 @@ func (s *Spec) Clone() *Spec {
 	c.Legs = slices.Clone(s.Legs)
 	c.Requirements = slices.Clone(s.Requirements)
 	c.Variants = slices.Clone(s.Variants)
+	c.Basis = maps.Clone(s.Basis)
 	for i := range c.Variants {
 		v := &c.Variants[i]
 		v.Basis = maps.Clone(v.Basis)

@@ -42,6 +42,10 @@ var fixed = map[string]*shape{
 	"variants.basis.note": {Type: "string", Title: "Note"},
 	"variants.basis.plus_minus": {Type: "number", Title: "Plus or minus", Description: "Half width of the stated band, in the SI unit of the input; 0 when not stated.",
 		Minimum: new(float64(0)), ExclusiveMaximum: new(1e12)},
+	"basis.kind": {Type: "string", Title: "Basis", Enum: values(BasisKinds)},
+	"basis.note": {Type: "string", Title: "Note"},
+	"basis.plus_minus": {Type: "number", Title: "Plus or minus", Description: "Half width of the stated band, in the SI unit of the input; 0 when not stated.",
+		Minimum: new(float64(0)), ExclusiveMaximum: new(1e12)},
 }
 
 // A form is what a node of the document looks like in JSON.

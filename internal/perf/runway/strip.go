@@ -55,7 +55,7 @@ var (
 	elevation   = input.Spec{Name: "elevation", Label: "Elevation", Quantity: units.Altitude, Min: -450, Max: 6000}
 	slope       = input.Spec{Name: "slope", Label: "Slope, up positive", Quantity: units.Fraction, Min: -0.2, Max: 0.2,
 		Note: "In the direction of take-off; the landing is flown in the same direction.", Typical: &input.Typical{Low: -0.03, High: 0.03, Source: input.CommonPractice}}
-	headWind = input.Spec{Name: "head_wind", Label: "Head wind", Quantity: units.Speed, Min: -15, Max: 25, Note: "Negative from behind."}
+	headWind = input.Spec{Name: "head_wind", Label: "Head wind", Quantity: units.Speed, Min: -15, Max: 25, Note: "Negative from behind.", Decided: true}
 	obstacle = input.Spec{Name: "obstacle", Label: "Obstacle height", Quantity: units.Height, Min: 0, Max: 60, Note: "15.24 m (50 ft) is the screen of the published rules."}
 )
 

@@ -1,11 +1,13 @@
 package study
 
 import (
+	"fmt"
 	"math"
 	"slices"
 	"strings"
 
 	"legwright/internal/perf/aircraft"
+	"legwright/internal/perf/input"
 	"legwright/internal/perf/mission"
 	"legwright/internal/perf/pointperf"
 	"legwright/internal/perf/project"
@@ -33,10 +35,10 @@ var (
 	plantInputs = []string{"powerplant"}
 	cleanLift   = []string{"airframe.wing_area", "airframe.clean.cl_max", "airframe.clean.stall_speed", "airframe.clean.stall_mass"}
 	clean       = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.clean", "airframe.never_exceed"})
-	off         = slices.Concat(polarInputs, massInputs, plantInputs, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off"})
+	off         = slices.Concat(polarInputs, massInputs, plantInputs, []string{"strips", "airframe.wing_height", "airframe.ground_cl", "airframe.take_off"})
 	flapped     = slices.Concat(clean, []string{"airframe.take_off", "airframe.landing"})
 	structural  = slices.Concat(massInputs, plantInputs, []string{"limits", "weights.max_take_off"})
-	flown       = slices.Concat(clean, []string{"airframe.wing_height", "airframe.ground_cl", "airframe.take_off", "airframe.landing"})
+	flown       = slices.Concat(clean, []string{"strips", "airframe.wing_height", "airframe.ground_cl", "airframe.take_off", "airframe.landing"})
 )
 
 // rests gives the inputs of the figures that do not rest on all of a flown mission.
@@ -249,10 +251,10 @@ func (s *Study) Unsure(f *Figure) []string {
 	return list
 }
 
-// Placeholders lists the relevant aircraft inputs whose basis is placeholder, by path within the aircraft.
+// Placeholders lists the relevant inputs whose basis is placeholder: the aircraft's by path within it, and those of the strips.
 func (s *Study) Placeholders() []string { return s.OnBasis(project.Placeholder) }
 
-// OnBasis lists the relevant aircraft inputs whose basis is of the kind, by path within the aircraft.
+// OnBasis lists the relevant inputs whose basis is of the kind: the aircraft's by path within it, and those of the strips.
 func (s *Study) OnBasis(kind string) []string {
 	var list []string
 	v := s.Variant()
@@ -261,5 +263,21 @@ func (s *Study) OnBasis(kind string) []string {
 			list = append(list, e.Path)
 		}
 	}
+	for i := range s.Project.Spec.Strips {
+		for _, e := range s.Project.Spec.Strips[i].Inputs() {
+			e.Path = fmt.Sprintf("strips[%d].%s", i, e.Path)
+			if b, ok := s.Project.Spec.BasisAt(e); ok && b.Kind == kind {
+				list = append(list, e.Path)
+			}
+		}
+	}
 	return list
+}
+
+// Input finds an input that Placeholders or OnBasis lists.
+func (s *Study) Input(path string) (input.Entry, bool) {
+	if e, ok := input.Find(&s.Variant().Aircraft, path); ok {
+		return e, true
+	}
+	return input.Find(s.Project.Spec, path)
 }
