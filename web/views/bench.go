@@ -176,9 +176,9 @@ func firmness(s *study.Study) string {
 		}
 	}
 	if len(parts) == 0 {
-		return "Every input of the aircraft is measured, calculated or the maker's."
+		return "Every input that is known from somewhere is measured, calculated or the maker's."
 	}
-	text := "Among the aircraft's inputs: " + strings.Join(parts, " and ") + "."
+	text := "Among the inputs: " + strings.Join(parts, " and ") + "."
 	if len(s.Placeholders()) > 0 {
 		text += " A figure that rests on a placeholder is marked."
 	}

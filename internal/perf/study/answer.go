@@ -102,6 +102,26 @@ type WarningAnswer struct {
 	About string `json:"about"`
 	Text  string `json:"text"`
 	Clear string `json:"clear"`
+
+	Numbers []NumberAnswer `json:"numbers"` // that the text names, in its order
+}
+
+// A NumberAnswer is one number that a sentence names.
+type NumberAnswer struct {
+	Quantity string  `json:"quantity"`
+	Value    float64 `json:"value"` // in unit
+	Unit     string  `json:"unit"`  // SI
+}
+
+// numbers lists the quantities that a message names.
+func numbers(m units.Message) []NumberAnswer {
+	list := []NumberAnswer{}
+	for _, a := range m.Numbers() {
+		if finite(a.SI) != nil {
+			list = append(list, NumberAnswer{a.Quantity.Name(), a.SI, a.Quantity.SI()})
+		}
+	}
+	return list
 }
 
 // MassesAnswer are masses in kg.
@@ -205,7 +225,7 @@ func (s *Study) Answer() Answer {
 		a.Requirements = append(a.Requirements, requirementAnswer(&s.Requirements[i]))
 	}
 	for _, w := range s.Warnings {
-		a.Warnings = append(a.Warnings, WarningAnswer{w.Code, w.Level, w.About, w.Text.In(units.Metric), w.Clear})
+		a.Warnings = append(a.Warnings, WarningAnswer{w.Code, w.Level, w.About, w.Text.In(units.Metric), w.Clear, numbers(w.Text)})
 	}
 	a.Speeds = s.speedAnswers()
 	for _, r := range s.Climb {

@@ -71,3 +71,23 @@ func TestGrowthHasNoBasis(t *testing.T) {
 		t.Errorf("placeholders %v", list)
 	}
 }
+
+// A warning carries its numbers as data, in the order of its sentence.
+func TestWarningNumbers(t *testing.T) {
+	spec := project.Demo()
+	spec.Variants[0].Aircraft.Weights.MaxTakeOff = 600
+	p, err := spec.Build()
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, w := range study.Run(p, 0, study.DefaultView(p, 0)).Answer().Warnings {
+		if w.Code != "overweight" {
+			continue
+		}
+		if len(w.Numbers) != 2 || w.Numbers[0].Unit != "kg" || w.Numbers[0].Quantity != "mass" || w.Numbers[0].Value-600 != w.Numbers[1].Value {
+			t.Errorf("%+v", w)
+		}
+		return
+	}
+	t.Error("no warning of the mass")
+}

@@ -52,6 +52,19 @@ func (m Message) In(sys System) string {
 	return b.String()
 }
 
+// Numbers lists the quantities of the message in the order in which it names them, those of inner messages too.
+func (m Message) Numbers() []Arg {
+	var list []Arg
+	for _, a := range m.Args {
+		if a.Inner != nil {
+			list = append(list, a.Inner.Numbers()...)
+			continue
+		}
+		list = append(list, a)
+	}
+	return list
+}
+
 // Empty reports whether there is nothing to say.
 func (m Message) Empty() bool { return m.Format == "" }
 

@@ -59,3 +59,11 @@ func TestNestedMessages(t *testing.T) {
 		}
 	}
 }
+
+func TestNumbersOfAMessage(t *testing.T) {
+	m := Say("{} of {}: {}", Of(Mass, 650), Text("the limit"), Nest(Say("{} more", Of(Force, 3))))
+	got := m.Numbers()
+	if len(got) != 2 || got[0] != Of(Mass, 650) || got[1] != Of(Force, 3) {
+		t.Errorf("%+v", got)
+	}
+}
