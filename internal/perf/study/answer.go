@@ -109,7 +109,7 @@ type WarningAnswer struct {
 // A NumberAnswer is one number that a sentence names.
 type NumberAnswer struct {
 	Quantity string  `json:"quantity"`
-	Value    float64 `json:"value"` // in unit
+	Value    float64 `json:"value"` // in the SI unit of Quantity
 	Unit     string  `json:"unit"`  // SI
 }
 
