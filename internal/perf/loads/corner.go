@@ -74,9 +74,11 @@ func (s span) crossesParabola(k float64) []float64 {
 	if root < 0 {
 		return nil
 	}
+	// Both roots without the difference of two near numbers: W. H. Press et al., Numerical Recipes, 2nd edition, 1992, section 5.6.
+	half := (slope + math.Copysign(math.Sqrt(root), slope)) / 2
 	var list []float64
-	for _, sign := range []float64{-1, 1} {
-		if v := (slope + sign*math.Sqrt(root)) / (2 * k); v >= s.v0 && v <= s.v1 {
+	for _, v := range []float64{half / k, -base / half} {
+		if v >= s.v0 && v <= s.v1 {
 			list = append(list, v)
 		}
 	}
