@@ -50,7 +50,7 @@ type facet struct {
 var facets = []facet{
 	{"basis:", func(b project.Basis) string { return b.Kind },
 		func(b *project.Basis, text string) error { b.Kind = text; return nil },
-		func(label, text string) string { return fmt.Sprintf("%s is now %s", label, basisWord(text)) }},
+		func(label, text string) string { return fmt.Sprintf("%s is now %s", label, project.BasisLabel(text)) }},
 	{"note:", func(b project.Basis) string { return b.Note },
 		func(b *project.Basis, text string) error {
 			if utf8.RuneCountInString(text) > longestNote {
@@ -124,14 +124,5 @@ func (e *edit) basisClash(shown input.Entry, f facet, text string) error {
 	if after == "" {
 		return &clashError{theirs: "nothing", whole: "nothing"}
 	}
-	return &clashError{theirs: clipText(basisWord(after)), whole: basisWord(after)}
-}
-
-func basisWord(kind string) string {
-	for _, o := range project.BasisKinds {
-		if o.Value == kind {
-			return o.Label
-		}
-	}
-	return kind
+	return &clashError{theirs: clipText(project.BasisLabel(after)), whole: project.BasisLabel(after)}
 }

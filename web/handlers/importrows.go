@@ -109,7 +109,7 @@ func replaced(t views.ImportTarget, st views.ImportState) (*project.Spec, string
 	if b := v.BasisOf(t.Path); st.Basis != "" && st.Basis != b.Kind {
 		b.Kind = st.Basis
 		v.SetBasis(t.Path, b)
-		said += fmt.Sprintf("; its basis is now %s", basisWord(st.Basis))
+		said += fmt.Sprintf("; its basis is now %s", project.BasisLabel(st.Basis))
 	}
 	if _, err := trial.Build(); err != nil {
 		return nil, "", err

@@ -5,7 +5,6 @@ import (
 	"math"
 	"slices"
 
-	"legwright/internal/perf/input"
 	"legwright/internal/perf/project"
 	"legwright/internal/perf/study"
 	"legwright/internal/perf/units"
@@ -116,7 +115,7 @@ func bandWords(w *study.Swing, sys units.System) string {
 	if w.Stated {
 		return "±\u00a0" + units.Plain(w.Half/sys.Step(w.Quantity, 1)) + symbolAfter(sys, w.Quantity) + ", stated"
 	}
-	return "±\u00a0" + percent(study.AssumedShare(w.Basis)) + ", " + basisWord(w.Basis)
+	return "±\u00a0" + percent(study.AssumedShare(w.Basis)) + ", " + project.BasisLabel(w.Basis)
 }
 
 func symbolAfter(sys units.System, q units.Quantity) string {
@@ -156,12 +155,3 @@ func (r *Report) left(o *study.Outcome) (Cell, bool) {
 
 // percent writes a share in whole per cent.
 func percent(share float64) string { return units.Fixed(math.Round(100*share), 0) + "\u00a0%" }
-
-// basisWord is the word of a kind of basis.
-func basisWord(kind string) string {
-	i := slices.IndexFunc(project.BasisKinds, func(o input.Option) bool { return o.Value == kind })
-	if i < 0 {
-		return kind
-	}
-	return project.BasisKinds[i].Label
-}

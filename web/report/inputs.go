@@ -51,7 +51,7 @@ func (r *Report) inputs() Table {
 			continue
 		}
 		b := v.BasisOf(e.Path)
-		row := []Cell{say(r.part(e.Path)), say(e.Label()), dash(), dash(), {}, say(basisWord(b.Kind)), say(b.Note)}
+		row := []Cell{say(r.part(e.Path)), say(e.Label()), dash(), dash(), {}, say(project.BasisLabel(b.Kind)), say(b.Note)}
 		switch {
 		case e.Number != nil:
 			q := e.Number.Quantity

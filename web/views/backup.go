@@ -18,7 +18,7 @@ type Backup struct {
 
 // NewBackup makes the line of a backup of the size in bytes.
 func NewBackup(name string, at time.Time, size int64) Backup {
-	return Backup{Name: name, At: at.Local().Format("2 January 2006, 15:04:05"), Size: bytesWords(size), URL: "/backups/" + name}
+	return Backup{Name: name, At: moment(at), Size: bytesWords(size), URL: "/backups/" + name}
 }
 
 func bytesWords(n int64) string {

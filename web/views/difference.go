@@ -106,12 +106,7 @@ func (d *differing) bases(was map[string]string) []DifferenceRow {
 }
 
 func basisState(b project.Basis, e *input.Entry, sys units.System) string {
-	text := b.Kind
-	for _, o := range project.BasisKinds {
-		if o.Value == b.Kind {
-			text = o.Label
-		}
-	}
+	text := project.BasisLabel(b.Kind)
 	if b.PlusMinus > 0 && e.Number != nil {
 		text += " ± " + strings.TrimSpace(units.Plain(b.PlusMinus/sys.Step(e.Number.Quantity, 1))+" "+sys.Unit(e.Number.Quantity).Symbol)
 	}

@@ -3,7 +3,6 @@ package views
 import (
 	"fmt"
 	"net/url"
-	"slices"
 	"strings"
 	"time"
 
@@ -179,16 +178,9 @@ func (p ImportStart) described() string {
 
 // basisOptions lists the kinds of basis after leaving the present one as it is.
 func basisOptions(now string, chosen string) []Option {
-	list := []Option{{"", "as it is: " + basisLabel(now), chosen == ""}}
+	list := []Option{{"", "as it is: " + project.BasisLabel(now), chosen == ""}}
 	for _, o := range project.BasisKinds {
 		list = append(list, Option{o.Value, o.Label, o.Value == chosen})
 	}
 	return list
-}
-
-func basisLabel(kind string) string {
-	if i := slices.IndexFunc(project.BasisKinds, func(o input.Option) bool { return o.Value == kind }); i >= 0 {
-		return project.BasisKinds[i].Label
-	}
-	return kind
 }

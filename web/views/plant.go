@@ -249,7 +249,7 @@ func plantBasis(s *study.Study, sys units.System) ([]Row, string) {
 		} else {
 			part, _, _ := strings.Cut(strings.TrimPrefix(e.Path, prefix), ".")
 			r.Label, r.Value = plantTitles[part]+" "+lowerFirst(e.Label()), tableWords(e.Table, sys)
-			tables = append(tables, lowerFirst(r.Label)+" ("+optionLabel(b.Kind)+")")
+			tables = append(tables, lowerFirst(r.Label)+" ("+project.BasisLabel(b.Kind)+")")
 		}
 		rows = append(rows, r)
 	}
@@ -264,7 +264,7 @@ func plantBasis(s *study.Study, sys units.System) ([]Row, string) {
 }
 
 func basisWords(e input.Entry, b project.Basis, sys units.System) string {
-	text := optionLabel(b.Kind)
+	text := project.BasisLabel(b.Kind)
 	if b.PlusMinus > 0 && e.Number != nil {
 		text += ", ± " + sys.Entry(e.Number.Quantity, b.PlusMinus) + " " + sys.Unit(e.Number.Quantity).Symbol
 	}
@@ -272,15 +272,6 @@ func basisWords(e input.Entry, b project.Basis, sys units.System) string {
 		text += ", " + b.Note
 	}
 	return text
-}
-
-func optionLabel(kind string) string {
-	for _, o := range project.BasisKinds {
-		if o.Value == kind {
-			return o.Label
-		}
-	}
-	return kind
 }
 
 // tableWords says how long a table is and over what it runs.

@@ -29,6 +29,16 @@ var BasisKinds = []input.Option{
 	{Value: Estimated, Label: "estimated"}, {Value: Placeholder, Label: "placeholder"},
 }
 
+// BasisLabel is a kind of basis in words; an unknown one keeps its own.
+func BasisLabel(kind string) string {
+	for _, o := range BasisKinds {
+		if o.Value == kind {
+			return o.Label
+		}
+	}
+	return kind
+}
+
 // BasisOf is the basis of the aircraft input at path. A path inside a table or a list has the basis of the whole.
 func (v *Variant) BasisOf(path string) Basis {
 	if b, ok := v.Basis[path]; ok {
